@@ -1,0 +1,39 @@
+package rotor
+
+import "math"
+
+// Exp returns the exponential of b, cos |b| + b sin |b| / |b|. The rotor that
+// turns by angle a in the unit plane B is Exp(-B a/2).
+func Exp(b Bivector) Rotor {
+	n := b.Norm()
+	if n == 0 {
+		return One
+	}
+	sin, cos := math.Sincos(n)
+	f := sin / n
+	return Rotor{cos, f * b.E23, f * b.E31, f * b.E12}
+}
+
+// Log returns the bivector b of least area with Exp(b) = r/|r|. Its norm lies
+// in 0..pi and is half the turn that r stands for: sign counts, so that a turn
+// by more than 180 degrees keeps its length and Exp(Log(r)) is r, never -r.
+//
+// The logarithm of -1, a full turn, has no plane of its own; Log returns pi e12.
+// Of zero it returns zero.
+func (r Rotor) Log() Bivector {
+	b := r.Bivector()
+	n := b.Norm()
+	angle := math.Atan2(n, r.S)
+	if n < 0x1p-500 { // angle/n could overflow
+		return tinyLog(b, angle)
+	}
+	return b.Scale(angle / n)
+}
+
+func tinyLog(b Bivector, angle float64) Bivector {
+	u, ok := b.Axis().Unit()
+	if !ok && angle > 0 {
+		u = Vec{Z: 1}
+	}
+	return u.Plane().Scale(angle)
+}

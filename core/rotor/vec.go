@@ -1,0 +1,95 @@
+package rotor
+
+import "math"
+
+// Vec is a vector: its coordinates along e1, e2 and e3.
+type Vec struct{ X, Y, Z float64 }
+
+// Add returns v + w.
+func (v Vec) Add(w Vec) Vec { return Vec{v.X + w.X, v.Y + w.Y, v.Z + w.Z} }
+
+// Sub returns v - w.
+func (v Vec) Sub(w Vec) Vec { return Vec{v.X - w.X, v.Y - w.Y, v.Z - w.Z} }
+
+// Scale returns s v.
+func (v Vec) Scale(s float64) Vec { return Vec{s * v.X, s * v.Y, s * v.Z} }
+
+// Neg returns -v.
+func (v Vec) Neg() Vec { return Vec{-v.X, -v.Y, -v.Z} }
+
+// Dot returns the scalar product of v and w.
+func (v Vec) Dot(w Vec) float64 { return v.X*w.X + v.Y*w.Y + v.Z*w.Z }
+
+// Cross returns the axis of the plane v ^ w, so that e1 x e2 = e3.
+func (v Vec) Cross(w Vec) Vec {
+	return Vec{v.Y*w.Z - v.Z*w.Y, v.Z*w.X - v.X*w.Z, v.X*w.Y - v.Y*w.X}
+}
+
+// Wedge returns the plane v ^ w with the area of the parallelogram of v and w:
+// I (v x w), so that e1 ^ e2 = e12.
+func (v Vec) Wedge(w Vec) Bivector { return v.Cross(w).Plane() }
+
+// Norm returns the length of v. It neither overflows nor underflows before the
+// length itself does; with a NaN coordinate it is NaN.
+func (v Vec) Norm() float64 { return norm4(v.X, v.Y, v.Z, 0) }
+
+// Unit returns v at length one. It reports false, with the zero vector, when v
+// is zero or not finite.
+func (v Vec) Unit() (Vec, bool) {
+	u, ok := Rotor{0, v.X, v.Y, v.Z}.Unit()
+	return Vec{u.E23, u.E31, u.E12}, ok
+}
+
+// Finite reports whether no coordinate is NaN or infinite.
+func (v Vec) Finite() bool { return finite(v.X) && finite(v.Y) && finite(v.Z) }
+
+// Plane returns the bivector I v: the plane perpendicular to v, with the sense
+// of a right-handed turn about v and area |v|. Plane of e3 is e12.
+func (v Vec) Plane() Bivector { return Bivector{v.X, v.Y, v.Z} }
+
+// Bivector is an oriented plane with an area: E23 e2e3 + E31 e3e1 + E12 e1e2.
+type Bivector struct{ E23, E31, E12 float64 }
+
+// Axis returns the vector n with B = I n: the axis of a turn in the plane B,
+// right-handed. Axis of e12 is e3.
+func (b Bivector) Axis() Vec { return Vec{b.E23, b.E31, b.E12} }
+
+// Add returns b + c.
+func (b Bivector) Add(c Bivector) Bivector {
+	return Bivector{b.E23 + c.E23, b.E31 + c.E31, b.E12 + c.E12}
+}
+
+// Scale returns s b.
+func (b Bivector) Scale(s float64) Bivector { return Bivector{s * b.E23, s * b.E31, s * b.E12} }
+
+// Norm returns the area of b, with the care of [Vec.Norm].
+func (b Bivector) Norm() float64 { return norm4(b.E23, b.E31, b.E12, 0) }
+
+func finite(x float64) bool { return x-x == 0 }
+
+// Sums of squares between these bounds have lost nothing to underflow: a
+// square below the smallest normal number 2^-1022 is wrong by at most 2^-1075,
+// which is 2^-115 of the lower bound.
+const (
+	smallSum = 0x1p-960
+	largeSum = 0x1p+1023
+)
+
+// norm4 is the length of four numbers.
+func norm4(a, b, c, d float64) float64 {
+	if n := a*a + b*b + c*c + d*d; n >= smallSum && n <= largeSum {
+		return math.Sqrt(n)
+	}
+	return rescaledNorm(a, b, c, d)
+}
+
+// rescaledNorm divides by a power of two, which costs no accuracy.
+func rescaledNorm(a, b, c, d float64) float64 {
+	top := max(math.Abs(a), math.Abs(b), math.Abs(c), math.Abs(d)) // NaN if one is
+	if top == 0 || !finite(top) {
+		return top
+	}
+	_, e := math.Frexp(top)
+	a, b, c, d = math.Ldexp(a, -e), math.Ldexp(b, -e), math.Ldexp(c, -e), math.Ldexp(d, -e)
+	return math.Ldexp(math.Sqrt(a*a+b*b+c*c+d*d), e)
+}
