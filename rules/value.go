@@ -21,13 +21,13 @@ type Number struct {
 // An axis map is its 3x3, row by row.
 type Value struct {
 	Form    convention.Form
-	Key     string       // where it stands in the structure of the file: cameras.front.q_body_cam
-	Of      string       // the orientation it states: values of one file with equal non-empty Of state the same one
-	Place   Place        // from the first to the last number, or the whole bracket
-	KeyAt   Place        // where the key stands; zero if there is none
-	Numbers []Number     // see above
-	Rows    int          // matrices: 3 or 4
-	Cols    int          // matrices: 3 or 4
+	Key     string        // where it stands in the structure of the file: cameras.front.q_body_cam
+	Of      string        // the orientation it states: values of one file with equal non-empty Of state the same one
+	Place   Place         // from the first to the last number, or the whole bracket
+	KeyAt   Place         // where the key stands; zero if there is none
+	Numbers []Number      // see above
+	Rows    int           // matrices: 3 or 4
+	Cols    int           // matrices: 3 or 4
 	Roles   [3]angle.Role // angles: what the numbers are called, in written order
 	Claims  Claims
 	Why     string // why it is undecided; "" if it is read

@@ -1,0 +1,19 @@
+// Command dextral audits what a repository says about orientation against what
+// its numbers do. See README.md, or run dextral help.
+package main
+
+import (
+	"context"
+	"os"
+	"os/signal"
+)
+
+func main() { os.Exit(run()) }
+
+// run is main with an exit status, so that script tests can call it in their
+// own process.
+func run() int {
+	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt)
+	defer stop()
+	return execute(ctx, os.Args[1:], os.Stdin, os.Stdout, os.Stderr)
+}

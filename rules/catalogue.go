@@ -1,0 +1,94 @@
+package rules
+
+import (
+	"embed"
+	"slices"
+	"strings"
+)
+
+// Rule is one entry of the catalogue. What a rule does stands in the file of
+// its subject; what it means to a reader stands in the page of its name.
+type Rule struct {
+	Name    string // lower case, words joined by hyphens
+	Summary string // one sentence: the contradiction
+	Level   Level  // the worst level it reports
+}
+
+// The names of the rules, as constants so that a misspelling does not compile.
+const (
+	MirroredRotation      = "mirrored-rotation"
+	LeftHandedTriad       = "left-handed-triad"
+	MirroringAxisMap      = "mirroring-axis-map"
+	RotorNotUnit          = "rotor-not-unit"
+	RotorUnset            = "rotor-unset"
+	AxisNotUnit           = "axis-not-unit"
+	MatrixNotOrthonormal  = "matrix-not-orthonormal"
+	NotFinite             = "not-finite"
+	SignJump              = "sign-jump"
+	NormLoss              = "norm-loss"
+	SequenceMislabelled   = "sequence-mislabelled"
+	MovingFixedSwapped    = "moving-fixed-swapped"
+	ScalarMisplaced       = "scalar-misplaced"
+	DirectionReversed     = "direction-reversed"
+	AngleUnitWrong        = "angle-unit-wrong"
+	StorageTransposed     = "storage-transposed"
+	HalfAngle             = "half-angle"
+	AngleSignReversed     = "angle-sign-reversed"
+	AxesSwapped           = "axes-swapped"
+	RepresentationsDiffer = "representations-differ"
+	ClaimsConflict        = "claims-conflict"
+	WaiverExpired         = "waiver-expired"
+	WaiverUnused          = "waiver-unused"
+)
+
+var catalogue = []Rule{
+	{MirroredRotation, "A matrix that claims to be a rotation has determinant -1.", Error},
+	{LeftHandedTriad, "Three axes that claim to form a right-handed triad form a left-handed one.", Error},
+	{MirroringAxisMap, "A map between the axes of two right-handed frames has determinant -1.", Error},
+	{RotorNotUnit, "A quaternion that claims to be a rotation is not of unit norm.", Error},
+	{OrientationUnset, "All numbers of an orientation are zero: it looks unset.", Note},
+	{AxisNotUnit, "A vector that claims to be a unit axis is not of unit length.", Error},
+	{MatrixNotOrthonormal, "A matrix that claims to be a rotation is not orthonormal.", Error},
+	{FirstOrderAngles, "A matrix that claims to be a rotation is the identity plus small angles to first order.", Note},
+	{NotFinite, "An orientation contains a number that is not finite.", Error},
+	{SignJump, "A logged rotor jumps from R to -R while the rotation barely moves.", Warning},
+	{NormLoss, "A logged quaternion loses its unit norm.", Warning},
+	{SequenceMislabelled, "Angles and a twin value agree only if the turns are taken in another order than stated.", Error},
+	{MovingFixedSwapped, "Angles and a twin value agree only if the turns are about fixed axes instead of moving ones, or the reverse.", Error},
+	{ScalarMisplaced, "A quaternion and a twin value agree only if its scalar stands at the other end.", Error},
+	{DirectionReversed, "Two values of one orientation agree only if one of them maps the other way.", Error},
+	{AngleUnitWrong, "Angles and a twin value agree only in another unit than stated.", Error},
+	{StorageTransposed, "A flat matrix and a twin value agree only if it is stored the other way.", Error},
+	{HalfAngle, "Two values of one orientation agree only if one of them is taken at half or twice its angle.", Error},
+	{AngleSignReversed, "Angles and a twin value agree only if one angle changes its sign.", Error},
+	{AxesSwapped, "Two values of one orientation agree only after an exchange of axes.", Error},
+	{RepresentationsDiffer, "Two values that state the same orientation differ, and no customary reading reconciles them.", Error},
+	{ClaimsConflict, "Two stated claims about one value contradict each other.", Error},
+	{WaiverExpired, "A waiver has passed its last day.", Warning},
+	{WaiverUnused, "A waiver matches no finding.", Warning},
+}
+
+// Catalogue lists all rules in the order in which they are documented.
+func Catalogue() []Rule { return slices.Clone(catalogue) }
+
+// Lookup finds a rule by name.
+func Lookup(name string) (Rule, bool) {
+	i := slices.IndexFunc(catalogue, func(r Rule) bool { return r.Name == name })
+	if i < 0 {
+		return Rule{}, false
+	}
+	return catalogue[i], true
+}
+
+//go:embed pages/*.md
+var pages embed.FS
+
+// Page returns the rule's page in Markdown: the claim it tests, the evidence it
+// computes, a worked contradiction, when it stays silent, the remedy.
+func (r Rule) Page() string {
+	text, err := pages.ReadFile("pages/" + r.Name + ".md")
+	if err != nil {
+		return ""
+	}
+	return strings.TrimSpace(string(text)) + "\n"
+}

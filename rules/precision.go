@@ -1,0 +1,90 @@
+package rules
+
+import (
+	"dextral/core/convention"
+	"dextral/core/matrix"
+	"dextral/core/rotor"
+	"dextral/core/tolerance"
+)
+
+// precision is what the digits of the value, or a declaration, say about its
+// rounding.
+func (v *Value) precision() tolerance.Precision {
+	numbers := make([]tolerance.Number, 0, len(v.Numbers))
+	for _, n := range v.rotationNumbers() {
+		if read, ok := tolerance.Read(n.Text); ok {
+			numbers = append(numbers, read)
+		}
+	}
+	p := tolerance.Of(numbers...)
+	p.Double, p.Declared = v.Double, v.Uncertainty
+	return p
+}
+
+// tolerance is how far, in radians, the orientation may be from the one that
+// was meant.
+func (v *Value) tolerance() float64 {
+	p := v.precision()
+	switch v.Form {
+	case convention.Quaternion:
+		return p.Quaternion()
+	case convention.Angles:
+		return p.Angles(v.Claims.Unit())
+	case convention.RotationVector:
+		return p.RotationVector(v.Claims.Unit())
+	case convention.AxisAngle:
+		return p.Axis() + p.Angle(v.Claims.Unit())
+	default:
+		return p.Matrix()
+	}
+}
+
+// rotationNumbers are the numbers of the rotation alone: of a rigid transform
+// the 3x3, since translations have digits of their own.
+func (v *Value) rotationNumbers() []Number {
+	if v.Form != convention.Transform {
+		return v.Numbers
+	}
+	var part []Number
+	for i := range 3 {
+		for j := range 3 {
+			if at := v.entry(i, j); at < len(v.Numbers) {
+				part = append(part, v.Numbers[at])
+			}
+		}
+	}
+	return part
+}
+
+// entry is the index in Numbers of row i, column j of a matrix.
+func (v *Value) entry(i, j int) int {
+	if v.Claims.Storage() == convention.ColumnMajor {
+		return j*v.Rows + i
+	}
+	return i*v.Cols + j
+}
+
+// rotationPart is the 3x3 of a matrix, rigid transform, triad (axes as columns)
+// or axis map. It is false for other forms and for incomplete ones.
+func (v *Value) rotationPart() (matrix.Mat3, bool) {
+	x := v.Floats()
+	switch v.Form {
+	case convention.Triad:
+		if len(x) != 9 {
+			return matrix.Mat3{}, false
+		}
+		return matrix.FromColumns(rotor.Vec{X: x[0], Y: x[1], Z: x[2]}, rotor.Vec{X: x[3], Y: x[4], Z: x[5]}, rotor.Vec{X: x[6], Y: x[7], Z: x[8]}), true
+	case convention.Rotation, convention.AxisMap, convention.Transform:
+		if v.Rows < 3 || v.Cols < 3 || len(x) != v.Rows*v.Cols {
+			return matrix.Mat3{}, false
+		}
+		var m matrix.Mat3
+		for i := range 3 {
+			for j := range 3 {
+				m[i][j] = x[v.entry(i, j)]
+			}
+		}
+		return m, true
+	}
+	return matrix.Mat3{}, false
+}

@@ -1,0 +1,184 @@
+package rules
+
+import (
+	"fmt"
+	"slices"
+
+	"dextral/core/angle"
+	"dextral/core/convention"
+	"dextral/core/identify"
+)
+
+// checkTwins compares the values that state one orientation, each with the
+// first of its group, and the others among themselves only if the first agrees
+// with neither: one wrong value then gives one finding, not many.
+func checkTwins(values []*Value) []*Finding {
+	var found []*Finding
+	for _, group := range twins(values) {
+		found = append(found, checkGroup(group)...)
+	}
+	return found
+}
+
+// checkGroup chooses as reference the value with which most others agree, in
+// doubt the first, and reports the rest against it.
+func checkGroup(group []*Value) []*Finding {
+	type pair struct{ i, j int }
+	results := map[pair]identify.Result{}
+	same := func(i, j int) identify.Result {
+		p := pair{min(i, j), max(i, j)}
+		r, done := results[p]
+		if !done {
+			r = identify.Same(group[p.i].statement(), group[p.j].statement())
+			results[p] = r
+		}
+		return r
+	}
+	reference, most := 0, -1
+	for i := range group {
+		agree := 0
+		for j := range group {
+			if i != j && same(i, j).Verdict == identify.Agree {
+				agree++
+			}
+		}
+		if agree > most {
+			reference, most = i, agree
+		}
+	}
+	var found []*Finding
+	for i := range group {
+		if i != reference {
+			found = add(found, disagreement(group[reference], group[i], same(reference, i)))
+		}
+	}
+	return found
+}
+
+// statement hands a value to package identify.
+func (v *Value) statement() identify.Statement {
+	s := identify.Statement{
+		Form: v.Form, Numbers: v.Floats(), Tolerance: v.tolerance(),
+		Claim: identify.Claim{
+			Scalar: v.Claims.Scalar(), Product: v.Claims.Product(), Storage: v.Claims.Storage(), Unit: v.Claims.Unit(),
+			Direction: v.Claims.Direction(),
+		},
+	}
+	if v.Form == convention.Transform {
+		part := v.rotationNumbers() // row by row, whatever the storage
+		s.Form, s.Claim.Storage = convention.Rotation, convention.RowMajor
+		s.Numbers = make([]float64, len(part))
+		for i, n := range part {
+			s.Numbers[i] = n.Value
+		}
+	}
+	if c, ok := v.Claims.On(convention.OfSequence); ok {
+		if label, ok := c.Says.(angle.Label); ok {
+			s.Claim.Label = &label
+		}
+	}
+	return s
+}
+
+// ruleOf names the rule of each change that reconciles two values.
+var ruleOf = map[identify.Change]string{
+	identify.ScalarOrder: ScalarMisplaced,
+	identify.Inverse:     DirectionReversed,
+	identify.UnitSlip:    AngleUnitWrong,
+	identify.MovingFixed: MovingFixedSwapped,
+	identify.Transposed:  StorageTransposed,
+	identify.HalfAngle:   HalfAngle,
+	identify.AngleOrder:  SequenceMislabelled,
+	identify.AngleSign:   AngleSignReversed,
+	identify.Remap:       AxesSwapped,
+	identify.Mirror:      MirroredRotation,
+}
+
+// disagreement turns the result of a comparison into a finding, or into nothing
+// where the two values agree or nothing can be said.
+func disagreement(a, b *Value, r identify.Result) *Finding {
+	switch r.Verdict {
+	case identify.AgreeInverse:
+		return reverseOfEachOther(a, b, r)
+	case identify.Contradicted:
+		return reconciled(a, b, r)
+	case identify.Unexplained:
+		return unexplained(a, b, r)
+	}
+	return nil
+}
+
+func reverseOfEachOther(a, b *Value, r identify.Result) *Finding {
+	f := twinFinding(DirectionReversed, a, b, r,
+		"%s and %s are the reverse of each other, and neither states its direction: one is read as active and the other as passive, or they map opposite ways; taken as one rotation they differ by %s",
+		b.name(), a.name(), degrees(r.Stated.Residual))
+	f.Level = Note
+	f.Remedy = "state the direction of each as an equation, such as v_body = R v_cam"
+	return f
+}
+
+func reconciled(a, b *Value, r identify.Result) *Finding {
+	worst := slices.MaxFunc(r.Best.Changes, func(x, y identify.Change) int { return x.Cost() - y.Cost() })
+	f := twinFinding(ruleOf[worst], a, b, r, "%s and %s state one orientation, but as stated they differ by %s; they agree %s, to %s",
+		b.name(), a.name(), degrees(r.Stated.Residual), r.Best, degrees(r.Best.Residual))
+	f.Message = fmt.Sprintf("%s and %s state one orientation; they agree, to %s, only %s; as stated they differ by %s",
+		b.name(), a.name(), degrees(r.Best.Residual), r.Best, degrees(r.Stated.Residual))
+	return f
+}
+
+func unexplained(a, b *Value, r identify.Result) *Finding {
+	return twinFinding(RepresentationsDiffer, a, b, r, "%s and %s state one orientation, and no reading of their conventions reconciles them; as stated they differ by %s",
+		b.name(), a.name(), degrees(r.Stated.Residual))
+}
+
+// twinFinding places a finding at b, the value that is not the reference, with
+// the readings tried as evidence.
+func twinFinding(rule string, a, b *Value, r identify.Result, message string, args ...any) *Finding {
+	f := finding(rule, b, Claim{}, message, args...)
+	f.Level = twinLevel(a, b, r.Best.Changes)
+	f.Claim = fmt.Sprintf("one orientation with %s", a.Key)
+	f.Related = []Related{{a.Place, "the other statement, " + a.name()}}
+	f.Evidence = append(f.Evidence, Evidence{What: "as stated", Stated: Words(b.readingWords()), Residual: Degrees(r.Stated.Residual)})
+	for i, c := range r.Classes {
+		if i == maxReadings {
+			break
+		}
+		f.Evidence = append(f.Evidence, Evidence{What: c.String(), Residual: Degrees(c.Residual)})
+	}
+	return f
+}
+
+// maxReadings bounds the readings listed under a finding.
+const maxReadings = 4
+
+// subjectOf names the subject on which a change contradicts a claim.
+var subjectOf = map[identify.Change]convention.Subject{
+	identify.ScalarOrder: convention.OfScalar,
+	identify.Inverse:     convention.OfDirection,
+	identify.UnitSlip:    convention.OfUnit,
+	identify.MovingFixed: convention.OfSequence,
+	identify.AngleOrder:  convention.OfSequence,
+	identify.Transposed:  convention.OfStorage,
+}
+
+// twinLevel is Error where both values state by words what they are and the
+// subject of every change is stated too, by at least one of them.
+func twinLevel(a, b *Value, changes []identify.Change) Level {
+	formA, _ := a.FormClaim()
+	formB, _ := b.FormClaim()
+	if !formA.Source.Stated() || !formB.Source.Stated() {
+		return Warning
+	}
+	for _, c := range changes {
+		subject, ok := subjectOf[c]
+		if !ok {
+			continue
+		}
+		onA, _ := a.Claims.On(subject)
+		onB, _ := b.Claims.On(subject)
+		if !onA.Source.Stated() && !onB.Source.Stated() {
+			return Warning
+		}
+	}
+	return Error
+}
