@@ -14,17 +14,17 @@ func Exp(b Bivector) Rotor {
 	return Rotor{cos, f * b.E23, f * b.E31, f * b.E12}
 }
 
-// Log returns the bivector b of least area with Exp(b) = r/|r|. Its norm lies
-// in 0..pi and is half the turn that r stands for: sign counts, so that a turn
-// by more than 180 degrees keeps its length and Exp(Log(r)) is r, never -r.
+// Log returns the bivector b of least area with Exp(b) = r/|r|. Its norm is
+// half the turn that r stands for, 0..pi. The sign counts: a turn by more than
+// 180 degrees keeps its length, and Exp(Log(r)) is r and never -r.
 //
-// The logarithm of -1, a full turn, has no plane of its own; Log returns pi e12.
-// Of zero it returns zero.
+// The logarithm of -1, a full turn, has no plane of its own: it is pi e12. That
+// of zero is zero.
 func (r Rotor) Log() Bivector {
 	b := r.Bivector()
 	n := b.Norm()
 	angle := math.Atan2(n, r.S)
-	if n < 0x1p-500 { // angle/n could overflow
+	if n < 0x1p-1022 { // angle/n would overflow
 		return tinyLog(b, angle)
 	}
 	return b.Scale(angle / n)

@@ -1,25 +1,31 @@
 package rotor
 
-// Mean returns the rotation whose summed squared sine of half the angle to the
-// given rotations is least, whatever their signs and norms: the dominant
-// eigenvector of the sum of r r^T (F. L. Markley et al., "Averaging
-// quaternions", J. Guidance, Control, and Dynamics 30 (2007) 1193). Its sign is that of
-// the first rotor's side.
+// Mean returns the mean of rotations, whatever the signs and norms of their
+// rotors: the one for which the sum of the squared sines of half the angles to
+// them is least (F. L. Markley, Y. Cheng, J. L. Crassidis and Y. Oshman,
+// "Averaging quaternions", J. Guidance, Control, and Dynamics 30 (2007) 1193).
+// Its sign is that of the side of the first rotor.
 //
-// It reports false, with One, when the mean is undetermined: no rotors, one
-// that is zero or not finite, or several rotations equally good (two that differ by a half turn).
+// It reports false, with One, when nothing determines the mean: there are no
+// rotors, one is zero or not finite, or rotations in different places do
+// equally well up to rounding, such as between two half a turn apart.
 func Mean(rotors []Rotor) (Rotor, bool) {
-	var form Form
+	var f Form
 	for _, r := range rotors {
 		u, ok := r.Unit()
 		if !ok {
 			return One, false
 		}
-		form.AddSquare(u, 1)
+		f.AddSquare(u, 1)
 	}
-	best, _, ok := form.Maximum()
-	if ok && best.Dot(rotors[0]) < 0 {
-		best = best.Neg()
+	// A sum of n squares near one is wrong by up to n roundings of n, the
+	// eigenvalues by a few more.
+	peak, ok := f.Peak()
+	if !ok || !peak.Single(float64(len(rotors)+16)*0x1p-52) {
+		return One, false
 	}
-	return best, ok
+	if peak.At.Dot(rotors[0]) < 0 {
+		return peak.At.Neg(), true
+	}
+	return peak.At, true
 }

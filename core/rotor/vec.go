@@ -31,7 +31,7 @@ func (v Vec) Wedge(w Vec) Bivector { return v.Cross(w).Plane() }
 
 // Norm returns the length of v. It neither overflows nor underflows before the
 // length itself does; with a NaN coordinate it is NaN.
-func (v Vec) Norm() float64 { return norm4(v.X, v.Y, v.Z, 0) }
+func (v Vec) Norm() float64 { return norm(v.X, v.Y, v.Z, 0) }
 
 // Unit returns v at length one. It reports false, with the zero vector, when v
 // is zero or not finite.
@@ -42,6 +42,18 @@ func (v Vec) Unit() (Vec, bool) {
 
 // Finite reports whether no coordinate is NaN or infinite.
 func (v Vec) Finite() bool { return finite(v.X) && finite(v.Y) && finite(v.Z) }
+
+// Angle returns the angle between the directions of v and w, 0..pi, to full
+// accuracy at every angle (W. Kahan's formula, from memory). It is zero if one
+// of them is zero.
+func (v Vec) Angle(w Vec) float64 {
+	v, okV := v.Unit()
+	w, okW := w.Unit()
+	if !okV || !okW {
+		return nanUnless(v.Finite() && w.Finite())
+	}
+	return 2 * math.Atan2(v.Sub(w).Norm(), v.Add(w).Norm())
+}
 
 // Plane returns the bivector I v: the plane perpendicular to v, with the sense
 // of a right-handed turn about v and area |v|. Plane of e3 is e12.
@@ -63,33 +75,4 @@ func (b Bivector) Add(c Bivector) Bivector {
 func (b Bivector) Scale(s float64) Bivector { return Bivector{s * b.E23, s * b.E31, s * b.E12} }
 
 // Norm returns the area of b, with the care of [Vec.Norm].
-func (b Bivector) Norm() float64 { return norm4(b.E23, b.E31, b.E12, 0) }
-
-func finite(x float64) bool { return x-x == 0 }
-
-// Sums of squares between these bounds have lost nothing to underflow: a
-// square below the smallest normal number 2^-1022 is wrong by at most 2^-1075,
-// which is 2^-115 of the lower bound.
-const (
-	smallSum = 0x1p-960
-	largeSum = 0x1p+1023
-)
-
-// norm4 is the length of four numbers.
-func norm4(a, b, c, d float64) float64 {
-	if n := a*a + b*b + c*c + d*d; n >= smallSum && n <= largeSum {
-		return math.Sqrt(n)
-	}
-	return rescaledNorm(a, b, c, d)
-}
-
-// rescaledNorm divides by a power of two, which costs no accuracy.
-func rescaledNorm(a, b, c, d float64) float64 {
-	top := max(math.Abs(a), math.Abs(b), math.Abs(c), math.Abs(d)) // NaN if one is
-	if top == 0 || !finite(top) {
-		return top
-	}
-	_, e := math.Frexp(top)
-	a, b, c, d = math.Ldexp(a, -e), math.Ldexp(b, -e), math.Ldexp(c, -e), math.Ldexp(d, -e)
-	return math.Ldexp(math.Sqrt(a*a+b*b+c*c+d*d), e)
-}
+func (b Bivector) Norm() float64 { return norm(b.E23, b.E31, b.E12, 0) }

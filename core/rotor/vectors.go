@@ -4,50 +4,63 @@ import "math"
 
 // Reflections returns the rotor of two reflections, first in the plane
 // perpendicular to a, then in the one perpendicular to b: the product b a of
-// the unit vectors. It turns in the plane a ^ b by twice the angle from a to b.
-// It reports false, with One, when a vector is zero or not finite.
+// the unit vectors. It turns in the plane a ^ b by twice the angle from a to
+// b. It reports false, with One, when a vector is zero or not finite.
 func Reflections(a, b Vec) (Rotor, bool) {
 	a, okA := a.Unit()
 	b, okB := b.Unit()
 	if !okA || !okB {
 		return One, false
 	}
-	c := a.Cross(b)
-	return Rotor{a.Dot(b), -c.X, -c.Y, -c.Z}, true
+	n := crossUnits(a, b)
+	return Rotor{a.Dot(b), -n.X, -n.Y, -n.Z}, true
 }
 
-// Between returns the rotor that turns the direction of a into that of b by the
-// shorter way, in the plane a ^ b: the reflection in a followed by
-// the one in the vector half-way between a and b.
+// Between returns the rotor that turns the direction of a into that of b the
+// shorter way, in the plane a ^ b: the reflection in a followed by the one in
+// the vector half-way between a and b. It is accurate at every angle.
 //
-// Opposite directions leave the plane open. Between then turns in the plane
-// of a and that one of e1, e2, e3 to which a is most nearly perpendicular (the first
-// of equals). It reports false, with One, when a vector is zero or not finite.
+// Opposite directions leave the plane open. Between then turns in the plane of
+// a and of that one of e1, e2, e3 to which a is most nearly perpendicular, the
+// first of equals. It reports false, with One, when a vector is zero or not
+// finite.
 func Between(a, b Vec) (Rotor, bool) {
 	a, okA := a.Unit()
 	b, okB := b.Unit()
 	if !okA || !okB {
 		return One, false
 	}
-	if cos := a.Dot(b); cos >= 0 {
-		// a x b = a x (b - a), without cancellation when b is near a.
-		c := a.Cross(b.Sub(a))
-		return Rotor{1 + cos, -c.X, -c.Y, -c.Z}.Unit()
+	n := crossUnits(a, b)
+	cos := a.Dot(b)
+	if cos >= 0 {
+		// h a with h = a + b, up to its norm.
+		return Rotor{1 + cos, -n.X, -n.Y, -n.Z}.Unit()
 	}
-	h := a.Add(b) // exact where it matters, when b is near -a
-	n := a.Cross(h)
+	// Towards opposite vectors 1 + cos would cancel; the lengths of a + b and
+	// a - b, twice the cosine and sine of half the angle, do not.
 	if n.Norm() < openPlane {
 		n = a.Cross(leastAlong(a))
 	}
 	n, _ = n.Unit()
-	cos, sin := h.Norm()/2, a.Sub(b).Norm()/2
-	return Rotor{cos, -sin * n.X, -sin * n.Y, -sin * n.Z}.Unit()
+	n = n.Scale(a.Sub(b).Norm())
+	return Rotor{a.Add(b).Norm(), -n.X, -n.Y, -n.Z}.Unit()
 }
 
-// openPlane is the sine below which two opposite unit vectors span no plane:
-// each coordinate of each is rounded by up to half a unit in the last place,
-// 2^-54, and a x (a + b) by as much again.
+// openPlane is the sine of the angle below which two unit vectors span no
+// plane of their own. Each coordinate is rounded by up to 2^-54, which moves
+// each vector by up to sqrt(3) 2^-54 and their cross product by the sum, 2^-52.2.
+// A result that treats them as parallel is wrong by no more than this angle.
 const openPlane = 0x1p-51
+
+// crossUnits returns a x b of unit vectors as a x (b - a) or a x (b + a).
+// Between nearly parallel vectors one of the two is exact, and the product
+// keeps its relative accuracy.
+func crossUnits(a, b Vec) Vec {
+	if a.Dot(b) < 0 {
+		return a.Cross(b.Add(a))
+	}
+	return a.Cross(b.Sub(a))
+}
 
 // leastAlong returns the basis vector to which a is most nearly perpendicular.
 func leastAlong(a Vec) Vec {
