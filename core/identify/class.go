@@ -1,0 +1,189 @@
+package identify
+
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+
+	"dextral/core/convention"
+)
+
+// Class is a set of hypotheses that the numbers cannot tell apart.
+type Class struct {
+	Readings []Hypothesis // cheapest first
+	Changes  []Change     // of the cheapest
+	Cost     int
+	Residual float64 // rad
+	Tie      bool    // different relations of one cost fit alike: no remedy can be named
+}
+
+// result sorts what was found into classes around the best candidate.
+func (s *search) result(v Verdict, best candidate, tried int) Result {
+	r := Result{Verdict: v, Margin: math.Inf(1)}
+	r.Best = s.class(best)
+	r.Stated = r.Best
+	if v != Agree {
+		r.Stated = s.stated()
+	}
+	if v == Unexplained {
+		r.Best = r.Stated
+	}
+	if v == Agree || v == AgreeInverse || v == Contradicted {
+		r.Classes = append(r.Classes, r.Best)
+	}
+	for _, c := range s.others(best, v) {
+		class := Class{[]Hypothesis{c.Hypothesis}, c.Changes(), c.cost, c.residual, false}
+		r.Classes = append(r.Classes, class)
+		if r.Next.Readings == nil && (c.cost <= max(best.cost, 1)) {
+			r.Next, r.Margin = class, c.residual/best.open
+		}
+	}
+	r.Decided = !r.Best.Tie && v != Unexplained && s.weigh(best, tried).enough(best.cost)
+	return r
+}
+
+// class gathers what fits as cheaply as best does or shares its alias. All
+// candidates of its cost or less that are within the margin belong to it, being rivals
+// that the numbers do not exclude.
+func (s *search) class(best candidate) Class {
+	class := Class{Cost: best.cost, Residual: best.residual, Changes: best.Changes()}
+	if best.at.Norm() > 0 {
+		class.Readings = []Hypothesis{best.Hypothesis}
+	}
+	for _, c := range s.found {
+		if c.Hypothesis == best.Hypothesis || c.cost > best.cost && c.key != best.key {
+			continue
+		}
+		class.Readings = append(class.Readings, c.Hypothesis)
+		class.Tie = class.Tie || c.cost <= best.cost && c.key != best.key
+	}
+	slices.SortStableFunc(class.Readings, func(x, y Hypothesis) int { return x.cost - y.cost })
+	return class
+}
+
+// stated is the nearest reading of the claims as one rotation.
+func (s *search) stated() Class {
+	if math.IsInf(s.forward.residual, 1) { // a rotation and a mirror have none
+		return Class{Residual: math.Pi}
+	}
+	return Class{Readings: []Hypothesis{s.forward.Hypothesis}, Residual: s.forward.residual}
+}
+
+// others are the candidates outside of the class of best: those that fit at
+// a higher cost, and the nearest of the rest, one of each alias.
+func (s *search) others(best candidate, v Verdict) []candidate {
+	var list []candidate
+	seen := []Hypothesis{best.key}
+	if v == Unexplained {
+		seen = nil
+	}
+	for _, c := range append(slices.Clone(s.found), s.nearest...) {
+		if c.cost <= best.cost && c.near() && v != Unexplained || slices.Contains(seen, c.key) {
+			continue
+		}
+		seen = append(seen, c.key)
+		list = append(list, c)
+	}
+	return list
+}
+
+// String says what has to be so for the two statements to agree.
+func (c Class) String() string {
+	if len(c.Readings) == 0 {
+		return "no rotation"
+	}
+	if !c.Tie {
+		return c.Readings[0].String()
+	}
+	var texts []string
+	for _, h := range c.Readings {
+		if h.cost == c.Cost && len(texts) < maxTied && !slices.Contains(texts, h.String()) {
+			texts = append(texts, h.String())
+		}
+	}
+	return strings.Join(texts, "; or ")
+}
+
+// maxTied bounds the readings of a tie that are spelled out.
+const maxTied = 6
+
+// String says how the two are read and related: "with the quaternion's scalar
+// last (x y z w)".
+func (h Hypothesis) String() string {
+	if h.changes == 0 {
+		text := fmt.Sprintf("with %s and %s", h.A, h.B)
+		if h.inverse {
+			text += ", one the reverse of the other"
+		}
+		return text
+	}
+	var parts []string
+	for _, r := range [2]Reading{h.A, h.B} {
+		if words := h.reading(r); words != "" {
+			parts = append(parts, words)
+		}
+	}
+	return "with " + strings.Join(append(parts, h.relations()...), ", ")
+}
+
+// reading words what is changed in the reading of one side.
+func (h Hypothesis) reading(r Reading) string {
+	switch {
+	case r.Form == convention.Quaternion && h.changes.has(ScalarOrder),
+		r.Form == convention.Angles && h.changes&set(UnitSlip, MovingFixed, Sequence, AngleOrder, AngleSign) != 0,
+		r.Form == convention.RotationVector && h.changes&set(UnitSlip, Kind) != 0,
+		r.Form == convention.AxisAngle && h.changes.has(UnitSlip):
+		return r.String()
+	}
+	return ""
+}
+
+// relations words what stands between the two rotations.
+func (h Hypothesis) relations() []string {
+	var words []string
+	if h.inverse && h.changes.has(Inverse) {
+		words = append(words, "one the reverse of the other (a conjugate, a transpose or the opposite direction)")
+	} else if h.inverse {
+		words = append(words, "one the reverse of the other")
+	}
+	switch h.power {
+	case 1:
+		words = append(words, "the first turning twice as far")
+	case 2:
+		words = append(words, "the second turning twice as far")
+	}
+	if h.A.Mirrored != h.B.Mirrored {
+		words = append(words, h.mirror())
+	} else if h.left != 0 && h.right == inverses[h.left] {
+		words = append(words, fmt.Sprintf("the axes of both frames mapped %s", h.left))
+	} else {
+		if h.left != 0 {
+			words = append(words, fmt.Sprintf("the axes of the result mapped %s", h.left))
+		}
+		if h.right != 0 {
+			words = append(words, fmt.Sprintf("the axes of the argument mapped %s", h.right))
+		}
+	}
+	return words
+}
+
+// mirror words which flip of the matrix makes it the other rotation.
+func (h Hypothesis) mirror() string {
+	rows, columns := h.left, h.right
+	if h.inverse && h.B.Mirrored { // the map before b~ acts on the columns of b
+		rows, columns = columns, rows
+	}
+	switch {
+	case rows == 0 && columns == 0:
+		return "the matrix negated"
+	case rows <= 3 && columns == 0:
+		return fmt.Sprintf("row %d of the matrix negated", rows)
+	case columns <= 3 && rows == 0:
+		return fmt.Sprintf("column %d of the matrix negated", columns)
+	}
+	return "the matrix mirrored and its axes exchanged"
+}
+
+// degrees prints an angle for people.
+func degrees(rad float64) string { return fmt.Sprintf("%.3g degrees", rad*180/math.Pi) }
