@@ -20,7 +20,8 @@ const (
 	LeftHandedTriad       = "left-handed-triad"
 	MirroringAxisMap      = "mirroring-axis-map"
 	RotorNotUnit          = "rotor-not-unit"
-	RotorUnset            = "rotor-unset"
+	OrientationUnset      = "orientation-unset"
+	FirstOrderAngles      = "first-order-angles"
 	AxisNotUnit           = "axis-not-unit"
 	MatrixNotOrthonormal  = "matrix-not-orthonormal"
 	NotFinite             = "not-finite"
@@ -34,6 +35,7 @@ const (
 	StorageTransposed     = "storage-transposed"
 	HalfAngle             = "half-angle"
 	AngleSignReversed     = "angle-sign-reversed"
+	ParametersMistaken    = "parameters-mistaken"
 	AxesSwapped           = "axes-swapped"
 	RepresentationsDiffer = "representations-differ"
 	ClaimsConflict        = "claims-conflict"
@@ -61,6 +63,7 @@ var catalogue = []Rule{
 	{StorageTransposed, "A flat matrix and a twin value agree only if it is stored the other way.", Error},
 	{HalfAngle, "Two values of one orientation agree only if one of them is taken at half or twice its angle.", Error},
 	{AngleSignReversed, "Angles and a twin value agree only if one angle changes its sign.", Error},
+	{ParametersMistaken, "Three numbers and a twin value agree only if they are another kind of parameters than stated.", Error},
 	{AxesSwapped, "Two values of one orientation agree only after an exchange of axes.", Error},
 	{RepresentationsDiffer, "Two values that state the same orientation differ, and no customary reading reconciles them.", Error},
 	{ClaimsConflict, "Two stated claims about one value contradict each other.", Error},

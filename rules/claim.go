@@ -1,6 +1,11 @@
 package rules
 
-import "dextral/core/convention"
+import (
+	"slices"
+
+	"dextral/core/angle"
+	"dextral/core/convention"
+)
 
 // Source says who makes a claim; a later constant is a stronger claim.
 type Source uint8
@@ -50,8 +55,8 @@ func (cs Claims) On(s convention.Subject) (Claim, bool) {
 	return best, found
 }
 
-// Conflicts returns the stated claims on a subject that say something else than
-// the strongest one does.
+// Conflicts returns the stated claims on a subject that cannot be true together
+// with the strongest one.
 func (cs Claims) Conflicts(s convention.Subject) []Claim {
 	best, ok := cs.On(s)
 	if !ok {
@@ -59,11 +64,28 @@ func (cs Claims) Conflicts(s convention.Subject) []Claim {
 	}
 	var others []Claim
 	for _, c := range cs {
-		if c.Says.Subject() == s && c.Source.Stated() && c.Says.String() != best.Says.String() {
+		if c.Says.Subject() == s && c.Source.Stated() && exclude(best.Says, c.Says) {
 			others = append(others, c)
 		}
 	}
 	return others
+}
+
+// exclude reports whether two terms on one subject cannot both be true. Angle
+// labels that share a reading can; so can directions between other frames, and
+// forms, since a key may name both the thing and its container.
+func exclude(a, b convention.Term) bool {
+	switch a := a.(type) {
+	case convention.Form:
+		return false
+	case convention.Direction:
+		d, ok := b.(convention.Direction)
+		return ok && a.Stated() && d == a.Reverse()
+	case angle.Label:
+		l, ok := b.(angle.Label)
+		return ok && !slices.ContainsFunc(a.Readings, l.Means)
+	}
+	return a != b
 }
 
 // term returns the strongest claim's term as type T, or T's zero value.

@@ -84,12 +84,14 @@ func (v *Value) statement() identify.Statement {
 var ruleOf = map[identify.Change]string{
 	identify.ScalarOrder: ScalarMisplaced,
 	identify.Inverse:     DirectionReversed,
+	identify.Transposed:  StorageTransposed,
 	identify.UnitSlip:    AngleUnitWrong,
 	identify.MovingFixed: MovingFixedSwapped,
-	identify.Transposed:  StorageTransposed,
 	identify.HalfAngle:   HalfAngle,
 	identify.AngleOrder:  SequenceMislabelled,
+	identify.Sequence:    SequenceMislabelled,
 	identify.AngleSign:   AngleSignReversed,
+	identify.Kind:        ParametersMistaken,
 	identify.Remap:       AxesSwapped,
 	identify.Mirror:      MirroredRotation,
 }
@@ -138,7 +140,7 @@ func twinFinding(rule string, a, b *Value, r identify.Result, message string, ar
 	f.Level = twinLevel(a, b, r.Best.Changes)
 	f.Claim = fmt.Sprintf("one orientation with %s", a.Key)
 	f.Related = []Related{{a.Place, "the other statement, " + a.name()}}
-	f.Evidence = append(f.Evidence, Evidence{What: "as stated", Stated: Words(b.readingWords()), Residual: Degrees(r.Stated.Residual)})
+	f.Evidence = append(f.Evidence, Evidence{What: "as stated", Stated: Words(b.Reading()), Residual: Degrees(r.Stated.Residual)})
 	for i, c := range r.Classes {
 		if i == maxReadings {
 			break
@@ -158,6 +160,7 @@ var subjectOf = map[identify.Change]convention.Subject{
 	identify.UnitSlip:    convention.OfUnit,
 	identify.MovingFixed: convention.OfSequence,
 	identify.AngleOrder:  convention.OfSequence,
+	identify.Sequence:    convention.OfSequence,
 	identify.Transposed:  convention.OfStorage,
 }
 

@@ -10,6 +10,7 @@
 package walk
 
 import (
+	"cmp"
 	"context"
 	"errors"
 	"fmt"
@@ -29,7 +30,6 @@ type File struct {
 	Name   string // as the operating system opens it
 	Size   int64
 	Policy *policy.Policy // of the nearest dextral.toml at or above it
-	Rel    string         // path relative to that dextral.toml's directory, slashes
 }
 
 // Tree is the result of a walk.
@@ -48,10 +48,17 @@ type Failure struct {
 	Err   error
 }
 
-// List walks the given paths; dir is the directory against which they are
-// resolved and printed.
-func List(ctx context.Context, dir string, paths []string) (*Tree, error) {
-	w := walker{dir: dir, seen: map[string]bool{}, scopes: map[string]*scope{}}
+// List walks the given paths. They are resolved against the working directory
+// and printed relative to it.
+func List(ctx context.Context, paths []string) (*Tree, error) {
+	dir, err := os.Getwd()
+	if err != nil {
+		return nil, fmt.Errorf("the working directory is not known: %w", err)
+	}
+	w := walker{dir: dir, seen: map[string]bool{}, scopes: map[string]*policy.Policy{}}
+	for _, r := range rules.Catalogue() {
+		w.known = append(w.known, r.Name)
+	}
 	for _, p := range paths {
 		if err := w.root(ctx, p); err != nil {
 			return nil, err
@@ -64,24 +71,13 @@ func List(ctx context.Context, dir string, paths []string) (*Tree, error) {
 type walker struct {
 	dir    string
 	tree   Tree
+	known  []string // names of rules
 	seen   map[string]bool
-	scopes map[string]*scope // by directory of the dextral.toml; "" for none
-}
-
-// scope is the reach of one dextral.toml.
-type scope struct {
-	dir    string // "" where there is no dextral.toml
-	policy *policy.Policy
+	scopes map[string]*policy.Policy // by directory; nil where it has no dextral.toml; "" for the default
 }
 
 func (w *walker) fail(path string, err error) {
-	var at rules.Place
-	var placed interface{ Where() rules.Place }
-	if errors.As(err, &placed) {
-		at = placed.Where()
-	} else {
-		at = rules.Place{Path: w.printed(path)}
-	}
+	at := rules.Place{Path: w.printed(path)}
 	var pathErr *fs.PathError
 	if errors.As(err, &pathErr) {
 		err = pathErr.Err // the place already names the path
@@ -120,50 +116,57 @@ func (w *walker) root(ctx context.Context, arg string) error {
 
 // nearest finds the dextral.toml at or above a directory, up to the root of
 // the repository that holds it, or of the file system.
-func (w *walker) nearest(dir string) *scope {
+func (w *walker) nearest(dir string) *policy.Policy {
 	for _, d := range slices.Backward(enclosingDirs(dir)) {
 		if sc := w.scopeAt(d); sc != nil {
 			return sc
 		}
 	}
 	if w.scopes[""] == nil {
-		w.scopes[""] = &scope{policy: policy.Default()}
-		w.tree.Policies = append(w.tree.Policies, w.scopes[""].policy)
+		w.scopes[""] = policy.Default()
 	}
 	return w.scopes[""]
 }
 
 // scopeAt loads the dextral.toml of exactly this directory. A faulty file is
 // reported, and the defaults hold below it.
-func (w *walker) scopeAt(dir string) *scope {
+func (w *walker) scopeAt(dir string) *policy.Policy {
 	if sc, known := w.scopes[dir]; known {
 		return sc
 	}
 	w.scopes[dir] = nil
-	for _, base := range []string{"dextral.toml", ".dextral.toml"} {
-		name := filepath.Join(dir, base)
-		if info, err := os.Stat(name); err != nil || info.IsDir() {
-			continue
-		}
-		text, err := os.ReadFile(name)
-		p := policy.Default()
-		if err == nil {
-			var parsed *policy.Policy
-			if parsed, err = policy.Parse(w.printed(name), text); err == nil {
-				p = parsed
-			}
-		}
-		if err != nil {
-			w.fail(name, err)
-		}
-		w.scopes[dir] = &scope{dir: dir, policy: p}
-		w.tree.Policies = append(w.tree.Policies, p)
-		break
+	name, err := policy.Find(w.printed(dir))
+	if name == "" && err == nil {
+		return nil
 	}
-	return w.scopes[dir]
+	p := policy.Default()
+	if err == nil {
+		var loaded *policy.Policy
+		if loaded, err = policy.Load(name, w.known); err == nil {
+			p = loaded
+		}
+	}
+	if err != nil {
+		w.failPolicy(name, dir, err)
+	}
+	w.scopes[dir] = p
+	w.tree.Policies = append(w.tree.Policies, p)
+	return p
 }
 
-func (w *walker) directory(ctx context.Context, dir string, ig ignores, sc *scope) error {
+// failPolicy reports each error of a dextral.toml at its own place.
+func (w *walker) failPolicy(name, dir string, err error) {
+	var errs policy.Errors
+	if errors.As(err, &errs) {
+		for _, e := range errs {
+			w.tree.Failed = append(w.tree.Failed, Failure{e.Place, errors.New(e.Message)})
+		}
+		return
+	}
+	w.fail(cmp.Or(filepath.FromSlash(name), dir), err)
+}
+
+func (w *walker) directory(ctx context.Context, dir string, ig ignores, sc *policy.Policy) error {
 	if err := ctx.Err(); err != nil {
 		return err
 	}
@@ -184,7 +187,7 @@ func (w *walker) directory(ctx context.Context, dir string, ig ignores, sc *scop
 		case e.IsDir() && isRepositoryData(e.Name()):
 		case ig.match(name, e.IsDir()):
 			w.tree.Ignored++
-		case sc.policy.Excluded(sc.rel(name)):
+		case sc.Excluded(w.printed(name)):
 			w.tree.Excluded++
 		case e.IsDir():
 			if err := w.directory(ctx, name, ig, sc); err != nil {
@@ -202,12 +205,12 @@ func (w *walker) directory(ctx context.Context, dir string, ig ignores, sc *scop
 	return nil
 }
 
-func (w *walker) file(name string, size int64, sc *scope) {
+func (w *walker) file(name string, size int64, sc *policy.Policy) {
 	if w.seen[name] {
 		return
 	}
 	w.seen[name] = true
-	w.tree.Files = append(w.tree.Files, File{Path: w.printed(name), Name: name, Size: size, Policy: sc.policy, Rel: sc.rel(name)})
+	w.tree.Files = append(w.tree.Files, File{Path: w.printed(name), Name: name, Size: size, Policy: sc})
 }
 
 // printed is the path as messages show it.
@@ -216,17 +219,6 @@ func (w *walker) printed(name string) string {
 		return filepath.ToSlash(rel)
 	}
 	return filepath.ToSlash(name)
-}
-
-func (s *scope) rel(name string) string {
-	if s.dir == "" {
-		return filepath.ToSlash(strings.TrimPrefix(name, filepath.VolumeName(name)+string(filepath.Separator)))
-	}
-	rel, err := filepath.Rel(s.dir, name)
-	if err != nil {
-		return filepath.ToSlash(name)
-	}
-	return filepath.ToSlash(rel)
 }
 
 func isRepositoryData(base string) bool { return base == ".git" || base == ".hg" || base == ".svn" }
