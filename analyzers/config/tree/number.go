@@ -1,0 +1,120 @@
+package tree
+
+import (
+	"errors"
+	"math"
+	"strconv"
+	"strings"
+
+	"dextral/analyzers/source"
+	"dextral/rules"
+)
+
+// Float reads one decimal number in any spelling of the formats that are read:
+// Go's and C's, a leading + or a bare dot, and the words for infinity and not a
+// number of YAML, JSON dialects and C. Numbers beyond float64 are infinite, as
+// they are to the programs that read them.
+func Float(text string) (float64, bool) {
+	unsigned := strings.TrimLeft(text, "+-")
+	if len(text)-len(unsigned) > 1 || unsigned == "" {
+		return 0, false
+	}
+	switch strings.ToLower(unsigned) {
+	case ".inf", "inf", "infinity":
+		if text[0] == '-' {
+			return math.Inf(-1), true
+		}
+		return math.Inf(1), true
+	case ".nan", "nan":
+		return math.NaN(), true
+	}
+	// ParseFloat also takes hexadecimal and underscores, which mean other things
+	// in most of the formats.
+	if strings.Trim(unsigned, "0123456789.eE+-") != "" {
+		return 0, false
+	}
+	x, err := strconv.ParseFloat(text, 64)
+	return x, err == nil || errors.Is(err, strconv.ErrRange)
+}
+
+// Word is a word of a scalar with its place.
+type Word struct {
+	Text string
+	Span source.Span
+}
+
+// isSeparator reports whether a character parts the words of a scalar that
+// holds several.
+func isSeparator(c byte) bool {
+	return c == ' ' || c == '\t' || c == '\n' || c == '\r' || c == ',' || c == ';'
+}
+
+// Words splits a scalar at white space, commas and semicolons. It returns nil
+// for what is no scalar or stands nowhere verbatim.
+func (d *Document) Words(n *Node) []Word {
+	if n == nil || n.Kind != Scalar || n.Raw.Empty() {
+		return nil
+	}
+	var words []Word
+	text := d.File.Text
+	for at := n.Raw.From; at < n.Raw.To; {
+		if isSeparator(text[at]) {
+			at++
+			continue
+		}
+		from := at
+		for at < n.Raw.To && !isSeparator(text[at]) {
+			at++
+		}
+		span := source.Span{From: from, To: at}
+		words = append(words, Word{d.File.Slice(span), span})
+	}
+	return words
+}
+
+// number makes a rules.Number of a word.
+func (d *Document) number(w Word) (rules.Number, bool) {
+	x, ok := Float(w.Text)
+	return rules.Number{Text: w.Text, Value: x, Place: d.File.Place(w.Span)}, ok
+}
+
+// Number reads a scalar that is one number.
+func (d *Document) Number(n *Node) (rules.Number, bool) {
+	if words := d.Words(n); len(words) == 1 {
+		return d.number(words[0])
+	}
+	return rules.Number{}, false
+}
+
+// Numbers reads a scalar of numbers, or a list whose items are such scalars,
+// one after the other. It returns nil if anything else is among them, or if
+// there are more than limit.
+func (d *Document) Numbers(n *Node, limit int) []rules.Number {
+	if n == nil {
+		return nil
+	}
+	scalars := []*Node{n}
+	if n.Kind == List {
+		scalars = n.Items
+	}
+	if len(scalars) > limit {
+		return nil
+	}
+	var words []Word
+	for _, s := range scalars {
+		w := d.Words(s)
+		if len(w) == 0 || len(words)+len(w) > limit {
+			return nil
+		}
+		words = append(words, w...)
+	}
+	// Only now places are worked out: most lists of a file are no numbers.
+	numbers := make([]rules.Number, len(words))
+	for i, w := range words {
+		ok := false
+		if numbers[i], ok = d.number(w); !ok {
+			return nil
+		}
+	}
+	return numbers
+}
