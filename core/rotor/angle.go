@@ -5,21 +5,15 @@ import "math"
 // Angle returns the angle (0..pi) of the rotation that carries one orientation
 // into the other, whatever the signs and norms of the two rotors.
 //
-// Small angles come out to full relative accuracy and angles near pi to full
-// accuracy as well, see [Relative]: nothing passes through an arc cosine,
-// which near 0 and pi loses half the digits. The angle to a zero rotor is
+// It is accurate at every angle, since nothing passes through an arc cosine,
+// which near 0 and pi loses half the digits. Between rotors of norm one small
+// angles even come out to full relative accuracy, see [Relative]; other norms
+// are divided out first, which moves each rotor by an ulp. The angle to a zero rotor is
 // zero, to one that is not finite NaN.
 func Angle(a, b Rotor) float64 {
-	r := Relative(a, b)
-	sum := r.Dot(r) // |a|^2 |b|^2
-	if !(sum >= smallSum && sum <= largeSum) {
-		return farAngle(a, b)
+	if nearOne(a.Dot(a)) && nearOne(b.Dot(b)) {
+		return Relative(a, b).TurnAngle()
 	}
-	return r.TurnAngle()
-}
-
-// farAngle is Angle where products of components overflow or underflow.
-func farAngle(a, b Rotor) float64 {
 	ua, okA := a.Unit()
 	ub, okB := b.Unit()
 	if !okA || !okB {
@@ -27,6 +21,10 @@ func farAngle(a, b Rotor) float64 {
 	}
 	return Relative(ua, ub).TurnAngle()
 }
+
+// nearOne reports whether rotors with this square may be taken as they are:
+// the difference of two in the same place is then no longer than they are.
+func nearOne(square float64) bool { return square > 0.5 && square < 2 }
 
 func nanUnless(ok bool) float64 {
 	if ok {
@@ -42,8 +40,8 @@ func (r Rotor) TurnAngle() float64 {
 	return 2 * math.Atan2(r.Bivector().Norm(), math.Abs(r.S))
 }
 
-// Relative returns a~ b, the rotor that carries a into b: a (a~ b) = b for a
-// of norm one.
+// Relative returns a~ b of two rotors of norm one, the turn that carries a into
+// b: a (a~ b) = b.
 //
 // Since a~ a is a scalar, a~ b has the bivector part of a~ (b - a) and of
 // a~ (b + a), and one of the two differences is small and, between near rotors,

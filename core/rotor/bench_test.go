@@ -2,7 +2,6 @@ package rotor_test
 
 import (
 	"math"
-	"math/rand/v2"
 	"testing"
 
 	"gonum.org/v1/gonum/num/quat"
@@ -39,7 +38,7 @@ type benchData struct {
 }
 
 func newBenchData() *benchData {
-	rng := rand.New(rand.NewPCG(1, 2))
+	rng := source()
 	var d benchData
 	for i := range benchSize {
 		d.r[i], d.q[i] = randomRotor(rng), randomRotor(rng)
@@ -53,9 +52,6 @@ func newBenchData() *benchData {
 	}
 	return &d
 }
-
-// compare runs each body over the inputs.
-func compare(b *testing.B, bodies map[string]func(i int)) {}
 
 func BenchmarkProduct(b *testing.B) {
 	d := newBenchData()
@@ -227,12 +223,3 @@ func (p plainQuat) slerp(q plainQuat, t float64) plainQuat {
 }
 
 func (p plainQuat) angle(q plainQuat) float64 { return 2 * math.Acos(math.Abs(p.dot(q))) }
-
-func randomVec(rng *rand.Rand) rotor.Vec {
-	return rotor.Vec{X: rng.NormFloat64(), Y: rng.NormFloat64(), Z: rng.NormFloat64()}
-}
-
-func randomRotor(rng *rand.Rand) rotor.Rotor {
-	r, _ := rotor.Rotor{S: rng.NormFloat64(), E23: rng.NormFloat64(), E31: rng.NormFloat64(), E12: rng.NormFloat64()}.Unit()
-	return r
-}

@@ -44,15 +44,15 @@ func (v Vec) Unit() (Vec, bool) {
 func (v Vec) Finite() bool { return finite(v.X) && finite(v.Y) && finite(v.Z) }
 
 // Angle returns the angle between the directions of v and w, 0..pi, to full
-// accuracy at every angle (W. Kahan's formula, from memory). It is zero if one
-// of them is zero.
+// accuracy at every angle (W. Kahan's formula, from memory). To the zero vector
+// it is zero.
 func (v Vec) Angle(w Vec) float64 {
-	v, okV := v.Unit()
-	w, okW := w.Unit()
+	a, okV := v.Unit()
+	b, okW := w.Unit()
 	if !okV || !okW {
 		return nanUnless(v.Finite() && w.Finite())
 	}
-	return 2 * math.Atan2(v.Sub(w).Norm(), v.Add(w).Norm())
+	return 2 * math.Atan2(a.Sub(b).Norm(), a.Add(b).Norm())
 }
 
 // Plane returns the bivector I v: the plane perpendicular to v, with the sense
