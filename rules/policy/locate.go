@@ -100,10 +100,10 @@ func (s *scanner) header(root *node) *node {
 	if many {
 		s.take(']')
 	}
-	n := root.open(names[:len(names)-1])
-	last := names[len(names)-1]
 	whole := span{start, s.pos}
+	parents, last := names[:len(names)-1], names[len(names)-1]
 	if many {
+		n := root.open(parents, at)
 		if n.table[last] == nil {
 			n.table[last] = &node{key: at, value: whole}
 		}
@@ -111,18 +111,19 @@ func (s *scanner) header(root *node) *node {
 		n.table[last].list = append(n.table[last].list, e)
 		return e
 	}
-	t := n.open(names[len(names)-1:])
+	t := root.open(names, at)
 	t.key, t.value = at, whole
 	return t
 }
 
 // open follows names through tables and into the last element of arrays of
-// tables, and creates tables that are missing.
-func (n *node) open(names []string) *node {
+// tables. It creates tables that are missing; they stand where they are first
+// mentioned.
+func (n *node) open(names []string, mention span) *node {
 	for _, name := range names {
 		next := n.table[name]
 		if next == nil {
-			next = &node{}
+			next = &node{key: mention, value: mention}
 			n.table[name] = next
 		}
 		if len(next.list) > 0 {
@@ -147,13 +148,8 @@ func (s *scanner) pair(here *node) {
 	s.blank()
 	v := s.value()
 	v.key = at
-	t := here.open(names[:len(names)-1])
-	for _, name := range names[:len(names)-1] { // a.b = 1 also mentions a
-		if here = here.child(name); here.key == (span{}) {
-			here.key, here.value = at, v.value
-		}
-	}
-	t.table[names[len(names)-1]] = v
+	last := len(names) - 1
+	here.open(names[:last], at).table[names[last]] = v
 }
 
 // keys reads a dotted key and returns its parts and its whole span.

@@ -1,0 +1,131 @@
+package policy
+
+import (
+	"errors"
+	"fmt"
+	"path"
+	"path/filepath"
+	"regexp"
+	"strings"
+
+	"github.com/bmatcuk/doublestar/v4"
+)
+
+// glob is a pattern of paths relative to the directory of the policy.
+type glob string
+
+// parseGlob checks a pattern as somebody wrote it. "./" in front and "/" at the
+// end are customary and dropped.
+func parseGlob(written string) (glob, error) {
+	p := strings.TrimSuffix(strings.TrimPrefix(written, "./"), "/")
+	switch {
+	case strings.Trim(p, "/ ") == "":
+		return "", errors.New("is empty; write a path or a glob such as config/**/*.yaml")
+	case strings.HasPrefix(p, "/"), filepath.IsAbs(p):
+		return "", errors.New("is absolute; globs are relative to the directory of this file")
+	case strings.Contains(p, `\`):
+		return "", errors.New(`contains \; write / between directories on every system`)
+	case strings.HasPrefix(p, "!"):
+		return "", errors.New("begins with !; a glob says what it means, there are no exceptions to it")
+	case p == ".." || strings.HasPrefix(p, "../") || strings.Contains(p, "/../"):
+		return "", errors.New("leaves the directory of this file, where nothing is governed by it")
+	case !doublestar.ValidatePattern(p):
+		return "", errors.New("is not a glob; * stands for a part of a name, ** for any directories, [a-z] and {a,b} for alternatives")
+	}
+	return glob(path.Clean(p)), nil
+}
+
+// matches reports whether the glob matches a path.
+func (g glob) matches(rel string) bool { return doublestar.MatchUnvalidated(string(g), rel) }
+
+// covers reports whether the glob matches a path or a directory above it.
+func (g glob) covers(rel string) bool {
+	for i, c := range rel {
+		if c == '/' && g.matches(rel[:i]) {
+			return true
+		}
+	}
+	return g.matches(rel)
+}
+
+// base is the directory, or the single file, that holds all that the glob can
+// match; "." if it may match anywhere.
+func (g glob) base() string {
+	if !strings.ContainsAny(string(g), "*?[{") {
+		return string(g)
+	}
+	dir, _ := doublestar.SplitPattern(string(g))
+	return dir
+}
+
+// keyPattern matches the dotted path of a value in the structure of its file.
+type keyPattern struct{ exp *regexp.Regexp }
+
+// parseKeyPattern compiles a pattern: * stands for any part of one element, an
+// element ** for any number of elements, none included. Indices of lists are
+// elements too, written .3 or [3].
+func parseKeyPattern(written string) (keyPattern, error) {
+	if i := strings.IndexAny(written, "{}?"); i >= 0 {
+		return keyPattern{}, fmt.Errorf("contains %q; a key pattern knows only * and **, alternatives are listed one by one", written[i])
+	}
+	elements := keyElements(written)
+	var exp strings.Builder
+	exp.WriteString(`\A`)
+	for _, e := range elements {
+		switch {
+		case strings.TrimSpace(e) == "":
+			return keyPattern{}, errors.New("has an empty element; write elements with one dot between them, such as cameras.*.q")
+		case e == "**":
+			exp.WriteString(`(?:[^.]*\.)*`)
+		case strings.Contains(e, "**"):
+			return keyPattern{}, errors.New("has ** beside other characters; ** is an element of its own")
+		default:
+			exp.WriteString(strings.ReplaceAll(regexp.QuoteMeta(e), `\*`, `[^.]*`) + `\.`)
+		}
+	}
+	exp.WriteString(`\z`)
+	compiled, err := regexp.Compile(exp.String())
+	if err != nil {
+		return keyPattern{}, fmt.Errorf("cannot be compiled: %w", err)
+	}
+	return keyPattern{compiled}, nil
+}
+
+// matches reports whether the pattern matches a key.
+func (k keyPattern) matches(key string) bool {
+	return k.exp.MatchString(strings.Join(keyElements(key), ".") + ".")
+}
+
+// keyElements splits a key into its elements: a[3].b is a, 3, b.
+func keyElements(key string) []string {
+	return strings.Split(strings.NewReplacer("[", ".", "]", "").Replace(key), ".")
+}
+
+// root turns paths as the command sees them, relative to where it was started,
+// into paths relative to the directory of the policy.
+type root struct{ start, dir string } // both absolute
+
+func newRoot(file string) (root, error) {
+	start, err := filepath.Abs(".")
+	if err != nil {
+		return root{}, err
+	}
+	dir := filepath.Dir(filepath.FromSlash(file))
+	if !filepath.IsAbs(dir) {
+		dir = filepath.Join(start, dir)
+	}
+	return root{start, dir}, nil
+}
+
+// rel reports false for paths outside the directory.
+func (r root) rel(slashed string) (string, bool) {
+	p := filepath.FromSlash(slashed)
+	if !filepath.IsAbs(p) {
+		p = filepath.Join(r.start, p)
+	}
+	rel, err := filepath.Rel(r.dir, p)
+	if err != nil || rel == ".." || strings.HasPrefix(rel, ".."+string(filepath.Separator)) {
+		return "", false
+	}
+	return filepath.ToSlash(rel), true
+}

@@ -1,0 +1,186 @@
+package policy
+
+import (
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"path"
+	"path/filepath"
+	"slices"
+	"strings"
+
+	"github.com/BurntSushi/toml"
+
+	"dextral/rules"
+)
+
+// Names are the names under which a policy is found at the root of a tree.
+var Names = []string{"dextral.toml", ".dextral.toml"}
+
+// maxSize bounds the text of a policy. A sheet with a thousand waivers has
+// about 200 kB.
+const maxSize = 1 << 20
+
+// Policy is what a repository's conventions sheet says. It is not changed after
+// it was read and may be used concurrently.
+type Policy struct {
+	Path    string // as it was given; "" for the default
+	Gate    Gate
+	Waivers []*rules.Waiver // in the order of the file
+
+	root     root
+	exclude  []glob
+	defaults rules.Claims
+	claims   []claim
+	rigs     []rig
+	accepted []waiver // beside Waivers
+}
+
+// Gate is the mildest level at which a finding fails an audit.
+type Gate uint8
+
+// The gates; the zero value is the default.
+const (
+	GateError Gate = iota
+	GateWarning
+	GateNote
+	GateNever
+)
+
+var gateNames = []string{"error", "warning", "note", "never"}
+
+// String names the gate as dextral.toml does.
+func (g Gate) String() string { return gateNames[g] }
+
+// ParseGate reads a gate's name.
+func ParseGate(s string) (Gate, bool) {
+	i := slices.Index(gateNames, s)
+	return Gate(max(i, 0)), i >= 0
+}
+
+// GateNames lists the names that ParseGate knows.
+func GateNames() []string { return slices.Clone(gateNames) }
+
+// Fails reports whether a finding of this level fails the audit.
+func (g Gate) Fails(l rules.Level) bool {
+	switch g {
+	case GateError:
+		return l >= rules.Error
+	case GateWarning:
+		return l >= rules.Warning
+	case GateNote:
+		return true
+	}
+	return false
+}
+
+// rig is a group of files that speak of the same frames.
+type rig struct {
+	name  string
+	files []glob
+}
+
+// Default is the policy of a tree without dextral.toml: nothing is declared,
+// excluded or waived, and errors fail.
+func Default() *Policy { return &Policy{} }
+
+// Find looks for a policy file in a directory. It returns "" if there is none,
+// and an error if there are two.
+func Find(dir string) (string, error) {
+	found := ""
+	for _, name := range Names {
+		p := path.Join(filepath.ToSlash(dir), name)
+		info, err := os.Stat(p)
+		if errors.Is(err, os.ErrNotExist) {
+			continue
+		}
+		if err != nil {
+			return "", err
+		}
+		switch {
+		case info.IsDir():
+			return "", fmt.Errorf("%s: is a directory; the conventions sheet of a tree has this name", p)
+		case found != "":
+			return "", fmt.Errorf("%s: there is %s too; keep one of them", p, found)
+		}
+		found = p
+	}
+	return found, nil
+}
+
+// Load reads a policy file. The known rule names are those that waivers may
+// name. Errors about the text are of type Errors.
+func Load(file string, known []string) (*Policy, error) {
+	f, err := os.Open(filepath.FromSlash(file))
+	if err != nil {
+		return nil, err
+	}
+	defer f.Close()
+	text, err := io.ReadAll(io.LimitReader(f, maxSize+1))
+	if err != nil {
+		return nil, fmt.Errorf("%s: cannot be read: %w", file, err)
+	}
+	return Parse(file, text, known)
+}
+
+// Parse reads the text of a policy file of the given name. Its globs are
+// relative to the directory of that name.
+func Parse(name string, text []byte, known []string) (*Policy, error) {
+	name = path.Clean(filepath.ToSlash(name))
+	if len(text) > maxSize {
+		return nil, Errors{{rules.Place{Path: name}, fmt.Sprintf("is larger than %d bytes; it is not read", maxSize)}}
+	}
+	where, err := newRoot(name)
+	if err != nil {
+		return nil, fmt.Errorf("%s: the directory in which the command was started is not known: %w", name, err)
+	}
+	source := strings.TrimPrefix(string(text), "\ufeff") // a byte order mark takes no column
+	r := &reader{lines: newLines(name, source), known: known}
+	var vals map[string]any
+	if _, err := toml.Decode(source, &vals); err != nil {
+		return nil, Errors{r.syntax(err)}
+	}
+	p := &Policy{Path: name, root: where}
+	r.policy(p, &table{r: r, vals: vals, node: locate(source)})
+	if len(r.errs) > 0 {
+		r.errs.sort()
+		return nil, r.errs
+	}
+	return p, nil
+}
+
+// rel is the path relative to the policy's directory; false if it is not below
+// it, or if there is no policy file.
+func (p *Policy) rel(file string) (string, bool) {
+	if p.Path == "" {
+		return "", false
+	}
+	return p.root.rel(file)
+}
+
+// Excluded reports whether a file or directory is not to be audited: an
+// excluded directory excludes all that is below it.
+func (p *Policy) Excluded(file string) bool {
+	rel, ok := p.rel(file)
+	return ok && rel != "." && slices.ContainsFunc(p.exclude, func(g glob) bool { return g.covers(rel) })
+}
+
+// RigOf is the name of the rig to which a file belongs, or "". If several rigs
+// claim it, it belongs to the first one.
+func (p *Policy) RigOf(file string) string {
+	rel, ok := p.rel(file)
+	if !ok {
+		return ""
+	}
+	for _, r := range p.rigs {
+		if anyMatches(r.files, rel) {
+			return r.name
+		}
+	}
+	return ""
+}
+
+func anyMatches(globs []glob, rel string) bool {
+	return slices.ContainsFunc(globs, func(g glob) bool { return g.matches(rel) })
+}
