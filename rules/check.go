@@ -25,8 +25,8 @@ func checkOne(v *Value) []*Finding {
 	if !v.Decided() {
 		return found
 	}
-	if f := notFinite(v); f != nil {
-		return append(found, f) // nothing else can be computed
+	if !finite(v) {
+		return add(found, notFinite(v)) // nothing else can be computed
 	}
 	switch v.Form {
 	case convention.Quaternion:

@@ -18,9 +18,6 @@ func finite(v *Value) bool {
 // notFinite reports an orientation that contains NaN or an infinity. All-NaN is
 // a customary way to write "unset" and is left alone.
 func notFinite(v *Value) *Finding {
-	if finite(v) {
-		return nil
-	}
 	nans := 0
 	for _, n := range v.Numbers {
 		if math.IsNaN(n.Value) {
