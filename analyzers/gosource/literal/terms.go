@@ -1,0 +1,5 @@
+package literal
+
+import "dextral/rules"
+
+func (w *walker) terms(s site, value *rules.Value) {}
