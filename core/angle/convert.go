@@ -7,11 +7,12 @@ import (
 )
 
 // Rounding is the orientation error, in radians, that is allowed to a rotor
-// held in float64: half a unit in the last place of each component is
-// 2^-53 in all, a rotation by 2^-52, and a rotor that is the product of
-// others has gathered a few of these. Nearer than this to a singular point
-// Angles does not tell the outer angles apart.
-const Rounding = 0x1p-50
+// in float64. A component of the product of two unit rotors is a sum of four
+// products whose sizes add up to at most one, so it is off by at most four
+// rounding units of 2^-53; four such components are off by eight as a vector,
+// and a rotation by twice that. Nearer than this to a singular point Angles does not tell the
+// outer angles apart.
+const Rounding = 0x1p-49
 
 // Band says what three angles determine near a singular point.
 type Band uint8
@@ -48,30 +49,29 @@ func (t Triple) Numbers() [3]float64 { return [3]float64{t.A, t.B, t.C} }
 // Moving axes ABC: the active matrix is R_A(a) R_B(b) R_C(c). Fixed axes ABC:
 // R_C(c) R_B(b) R_A(a). NaN for a sequence that is not Valid.
 func (s Sequence) Rotor(a, b, c float64) rotor.Rotor {
-	if !s.Valid() {
+	l := &layouts[s.key()&127]
+	if !l.valid {
 		nan := math.NaN()
 		return rotor.Rotor{S: nan, E23: nan, E31: nan, E12: nan}
 	}
-	i, j, k := s.Axes[0], s.Axes[1], s.Axes[2]
-	if s.Fixed {
-		i, k, a, c = k, i, c, a
+	if l.turned {
+		a, c = c, a
 	}
-	e := cyclic(i, j)
+	var n [4]float64 // quaternion numbers along the axes
 	sb, cb := math.Sincos(b / 2)
-	var n [3]float64 // quaternion units: i = e3e2 and so on
-	if i == k {
+	if l.proper {
 		ss, cs := math.Sincos((a + c) / 2)
 		sd, cd := math.Sincos((a - c) / 2)
-		n[i], n[j], n[3-i-j] = cb*ss, sb*cd, e*sb*sd
-		return rotor.Rotor{S: cb * cs, E23: -n[X], E31: -n[Y], E12: -n[Z]}
+		n[l.i&3], n[l.j&3], n[l.m&3] = cb*ss, sb*cd, l.e*sb*sd
+		return rotor.FromQuaternion(cb*cs, n[X], n[Y], n[Z])
 	}
 	sa, ca := math.Sincos(a / 2)
 	sc, cc := math.Sincos(c / 2)
-	sc *= e
-	n[i] = sa*cb*cc + ca*sb*sc
-	n[j] = ca*sb*cc - sa*cb*sc
-	n[k] = e * (ca*cb*sc + sa*sb*cc)
-	return rotor.Rotor{S: ca*cb*cc - sa*sb*sc, E23: -n[X], E31: -n[Y], E12: -n[Z]}
+	sc *= l.e
+	n[l.i&3] = sa*cb*cc + ca*sb*sc
+	n[l.j&3] = ca*sb*cc - sa*cb*sc
+	n[l.m&3] = l.e * (ca*cb*sc + sa*sb*cc)
+	return rotor.FromQuaternion(ca*cb*cc-sa*sb*sc, n[X], n[Y], n[Z])
 }
 
 // Angles are the angles of a rotor at the precision of float64.
@@ -110,41 +110,34 @@ func (s Sequence) AnglesWithin(r rotor.Rotor, precision float64) Triple {
 // reduction of all sequences to the proper ones is that of E. Bernardes and S. Viollet,
 // PLoS ONE 17 (2022) e0276302; taking products instead of angles is ours.)
 func (s Sequence) within(r rotor.Rotor, sine float64) Triple {
-	if !s.Valid() {
-		return Triple{math.NaN(), math.NaN(), math.NaN(), Regular}
-	}
-	i, j, k := s.Axes[0], s.Axes[1], s.Axes[2]
-	if s.Fixed {
-		i, k = k, i
-	}
-	e := cyclic(i, j)
-	n := [3]float64{-r.E23, -r.E31, -r.E12}
-	h := halves{r.S, n[i], n[j], e * n[3-i-j]}
-	if i != k {
-		h = halves{h.px + h.mx, h.py + h.my, h.px - h.mx, h.py - h.my}
+	l := &layouts[s.key()&127]
+	n := [4]float64{-r.E23, -r.E31, -r.E12}
+	h := halves{r.S, n[l.i&3], n[l.j&3], l.e * n[l.m&3]}
+	if !l.proper {
+		h = h.mixed()
 	}
 	pp, mm := h.px*h.px+h.py*h.py, h.mx*h.mx+h.my*h.my
-	if norm := pp + mm; !(norm > 0 && norm <= math.MaxFloat64) {
+	if norm := pp + mm; !(norm > 0 && norm <= math.MaxFloat64) || !l.valid {
 		return Triple{math.NaN(), math.NaN(), math.NaN(), Regular}
 	}
 	cross := 2 * math.Sqrt(pp*mm)
 	t := Triple{}
 	if cross <= sine*(pp+mm) {
-		t = h.singular(pp > mm, s.Fixed)
+		t = h.singular(pp > mm, l.turned)
 		cross = 0 // the middle angle of the nearest singular rotation
 	} else {
 		t.A = direction(h.py*h.mx+h.px*h.my, h.px*h.mx-h.py*h.my)
 		t.C = direction(h.py*h.mx-h.px*h.my, h.px*h.mx+h.py*h.my)
 	}
-	if i == k {
-		t.B = math.Atan2(cross, pp-mm)
+	if l.proper {
+		t.B = direction(cross, pp-mm)
 	} else {
-		t.B = math.Atan2(pp-mm, cross)
-		if e < 0 {
+		t.B = math.Atan((pp - mm) / cross)
+		if l.e < 0 {
 			t.C, t.Band = wrapped(0-t.C), t.Band.other() // 0-0 has no sign
 		}
 	}
-	if s.Fixed {
+	if l.turned {
 		t.A, t.C = t.C, t.A
 	}
 	return t
@@ -152,6 +145,10 @@ func (s Sequence) within(r rotor.Rotor, sine float64) Triple {
 
 // halves are the vectors p and m.
 type halves struct{ px, py, mx, my float64 }
+
+func (h halves) mixed() halves {
+	return halves{h.px + h.mx, h.py + h.my, h.px - h.mx, h.py - h.my}
+}
 
 // singular gives the angles when only one of p and m has a direction: the sum
 // of the outer angles is twice that of p, their difference twice that of m.
@@ -168,8 +165,20 @@ func (h halves) singular(sum, zeroFirst bool) Triple {
 	return t
 }
 
-// direction is the angle of (x, y), in (-pi, pi].
-func direction(y, x float64) float64 { return wrapped(math.Atan2(y, x)) }
+// direction is the angle of (x, y), not both zero and finite, in (-pi, pi].
+func direction(y, x float64) float64 {
+	if x == 0 { // also -0, which would turn the quotient about
+		return math.Copysign(math.Pi/2, y)
+	}
+	a := math.Atan(y / x)
+	if x < 0 {
+		if y >= 0 {
+			return a + math.Pi
+		}
+		return wrapped(a - math.Pi)
+	}
+	return a
+}
 
 // wrapped is a, with pi for -pi.
 func wrapped(a float64) float64 {

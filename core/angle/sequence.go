@@ -82,10 +82,38 @@ func (s Sequence) Words() string {
 	return s.String() + " (moving axes)"
 }
 
-// cyclic is +1 if i, j and the remaining axis are an even permutation of x, y, z, else -1.
-func cyclic(i, j Axis) float64 {
-	if (i+1)%3 == j {
-		return 1
+// A layout is a sequence brought to moving axes: turns about i, j, k.
+type layout struct {
+	i, j, k uint8 // axes
+	m       uint8 // the axis that is neither i nor j; k, unless the first axis returns
+	turned  bool  // fixed axes: the numbers stand in the opposite order
+	proper  bool
+	valid   bool
+	e       float64 // +1 if i, j, m is an even permutation of x, y, z, else -1
+}
+
+// layouts are found by key, which is less work than to reason about axes anew in every conversion.
+var layouts = func() (table [128]layout) {
+	for _, s := range Sequences() {
+		l := layout{i: uint8(s.Axes[0]), j: uint8(s.Axes[1]), k: uint8(s.Axes[2]), turned: s.Fixed, proper: s.Proper(), valid: true, e: -1}
+		if s.Fixed {
+			l.i, l.k = l.k, l.i
+		}
+		l.m = 3 - l.i - l.j
+		if (l.i+1)%3 == l.j {
+			l.e = 1
+		}
+		table[s.key()] = l
 	}
-	return -1
+	return table
+}()
+
+// key is below 128 and different for different sequences; 3 stands for an axis
+// that does not exist.
+func (s Sequence) key() uint8 {
+	key := uint8(min(s.Axes[0], 3) | min(s.Axes[1], 3)<<2 | min(s.Axes[2], 3)<<4)
+	if s.Fixed {
+		key |= 64
+	}
+	return key
 }
