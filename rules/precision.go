@@ -23,8 +23,9 @@ func (v *Value) precision() tolerance.Precision {
 
 // tolerance is how far, in radians, the orientation may be from the one that
 // was meant.
-func (v *Value) tolerance() float64 {
-	p := v.precision()
+func (v *Value) tolerance() float64 { return v.toleranceOf(v.precision()) }
+
+func (v *Value) toleranceOf(p tolerance.Precision) float64 {
 	switch v.Form {
 	case convention.Quaternion:
 		return p.Quaternion()

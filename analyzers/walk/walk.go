@@ -34,11 +34,12 @@ type File struct {
 
 // Tree is the result of a walk.
 type Tree struct {
-	Files    []File // sorted by Path, each once
-	Policies []*policy.Policy
-	Ignored  int // entries that version control ignores
-	Excluded int // entries excluded by dextral.toml
-	Links    int // symbolic links not followed
+	Files    []File           // sorted by Path, each once
+	Policies []*policy.Policy // every dextral.toml in force, as found
+	Roots    []*policy.Policy // in force at each path that was asked for
+	Ignored  int              // entries that version control ignores
+	Excluded int              // entries excluded by dextral.toml
+	Links    int              // symbolic links not followed
 	Failed   []Failure
 }
 
@@ -107,6 +108,7 @@ func (w *walker) root(ctx context.Context, arg string) error {
 		ig = ig.enter(d)
 	}
 	sc := w.nearest(enclosing)
+	w.tree.Roots = append(w.tree.Roots, sc)
 	if !info.IsDir() {
 		w.file(name, info.Size(), sc)
 		return ctx.Err()
