@@ -53,6 +53,9 @@ var gateNames = []string{"error", "warning", "note", "never"}
 // String names the gate as dextral.toml does.
 func (g Gate) String() string { return gateNames[g] }
 
+// MarshalText writes the name, so that machine formats carry it.
+func (g Gate) MarshalText() ([]byte, error) { return []byte(g.String()), nil }
+
 // ParseGate reads a gate's name.
 func ParseGate(s string) (Gate, bool) {
 	i := slices.Index(gateNames, s)
