@@ -2,6 +2,7 @@ package angle
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 )
 
@@ -22,17 +23,12 @@ type parser struct {
 // parse reads the words of a label.
 func parse(text string) (statement, error) {
 	p := parser{}
-	words := split(text)
-	for at := 0; at < len(words); at++ {
-		next := ""
-		if at+1 < len(words) {
-			next = words[at+1].text
-		}
-		used, err := p.take(words[at], next)
+	for words := split(text); len(words) > 0; {
+		used, err := p.take(words)
 		if err != nil {
 			return p.statement, err
 		}
-		at += used
+		words = words[used:]
 	}
 	if p.loose != "" {
 		return p.statement, fmt.Errorf("%w: %q does not have three axes", ErrSequence, p.loose)
@@ -46,30 +42,44 @@ func parse(text string) (statement, error) {
 	return p.statement, nil
 }
 
-// take reads one word, and reports how many of the next it used up.
-func (p *parser) take(w word, next string) (used int, err error) {
+// take reads the first word, or several that belong together, and reports how many.
+func (p *parser) take(words []word) (used int, err error) {
+	w := words[0]
 	if isAxes(w.text) {
-		return 0, p.axes(w)
+		return 1, p.axes(w)
 	}
 	if letters, ok := turnNames[w.text]; ok {
-		return 0, p.axes(word{text: letters})
+		return 1, p.axes(word{text: letters})
 	}
 	if len(w.text) == 4 && isAxes(w.text[1:]) && strings.ContainsRune("rs", rune(w.text[0])) {
 		p.kind(w.text[0] == 's') // static or rotating, as in sxyz
-		return 0, p.axes(word{w.text[1:], w.primes})
-	}
-	if fixed, ok := bearers[w.text]; ok && (next == "fixed" || next == "axes" || next == "axis") {
-		p.kind(fixed)
-		return 1, nil
+		return 1, p.axes(word{text: w.text[1:]})
 	}
 	if fixed, ok := kinds[w.text]; ok {
 		p.kind(fixed)
-		return 0, nil
+		return 1, nil
+	}
+	if fixed, ok := bearers[w.text]; ok {
+		return p.bearer(fixed, words), nil
 	}
 	if fillers[w.text] {
-		return 0, nil
+		return 1, nil
 	}
 	return 0, fmt.Errorf("%w: unknown word %q", ErrNoSequence, w.text)
+}
+
+// bearer reads who bears the axes. Body-fixed axes are a kind of axes; a
+// body-fixed frame, or the body alone, says nothing about turns.
+func (p *parser) bearer(fixed bool, words []word) (used int) {
+	next := func(k int, any ...string) bool { return k < len(words) && slices.Contains(any, words[k].text) }
+	switch {
+	case next(1, "fixed") && next(2, "frame", "frames"):
+		return 3
+	case next(1, "fixed", "axes", "axis"):
+		p.kind(fixed)
+		return 2
+	}
+	return 1
 }
 
 func (p *parser) kind(fixed bool) {

@@ -33,8 +33,7 @@ var bearers = map[string]bool{
 var fillers = wordSet(`euler eulers tait bryan cardan proper classic angle angles order sequence seq
 	convention rotation rotations rotate rot turn turns about around axis axes frame frames
 	a an as in is are the of and by with using then first second third
-	deg degree degrees rad radian radians orientation attitude
-	body vehicle local space world global earth inertial reference`)
+	deg degree degrees rad radian radians orientation attitude`)
 
 func wordSet(text string) map[string]bool {
 	set := map[string]bool{}
