@@ -195,7 +195,7 @@ func TestTime(t *testing.T) {
 
 // No header, however odd, makes Find panic or return columns that are not there.
 func FuzzFind(f *testing.F) {
-	for _, line := range []string{"qw,qx,qy,qz", "q_RS_w [],roll(\u00b0)", "R[0][0],dcm_01", "\u00c4QuatX,(,[],{}", "_,-,.", "AAaA0B"} {
+	for _, line := range []string{"qw,qx,qy,qz", "q_RS_w [],roll(\u00b0)", "R[0][0],dcm_01", "\u00c4QuatX,(,[],{}", "_,-,.", "AAaA0B", "\xce0"} {
 		f.Add(line)
 	}
 	f.Fuzz(func(t *testing.T, line string) {

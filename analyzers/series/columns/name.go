@@ -3,6 +3,7 @@ package columns
 import (
 	"strings"
 	"unicode"
+	"unicode/utf8"
 )
 
 // name is the name of a column taken apart.
@@ -46,40 +47,35 @@ func parseName(c Column) name {
 func split(text string) []word {
 	var words []word
 	start := -1
-	flush := func(end int) {
+	end := func(at int) {
 		if start >= 0 {
-			words = append(words, word{strings.ToLower(text[start:end]), start, end})
+			words = append(words, word{strings.ToLower(text[start:at]), start, at})
 		}
 		start = -1
 	}
-	runes := []rune(text)
-	at := 0
-	for i, r := range runes {
+	var before rune
+	for at, r := range text {
 		switch {
 		case !unicode.IsLetter(r) && !unicode.IsDigit(r):
-			flush(at)
+			end(at)
 		case start < 0:
 			start = at
-		case turns(runes, i):
-			flush(at)
+		case unicode.IsUpper(r) && (!unicode.IsUpper(before) || smallFollows(text[at:])):
+			end(at)
 			start = at
 		}
-		at += len(string(r))
+		before = r
 	}
-	flush(len(text))
+	end(len(text))
 	return words
 }
 
-// turns reports whether a new word begins at a capital: after a small letter or
-// a digit, or before a small letter that follows capitals.
-func turns(r []rune, i int) bool {
-	if !unicode.IsUpper(r[i]) {
-		return false
-	}
-	if !unicode.IsUpper(r[i-1]) {
-		return true
-	}
-	return i+1 < len(r) && unicode.IsLower(r[i+1])
+// smallFollows reports whether the second letter is small: a capital there
+// begins a word even after capitals, as in IMUQuat.
+func smallFollows(text string) bool {
+	_, size := utf8.DecodeRuneInString(text)
+	r, _ := utf8.DecodeRuneInString(text[size:])
+	return unicode.IsLower(r)
 }
 
 // has reports whether one of the words is in the set.

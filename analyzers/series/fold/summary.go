@@ -1,0 +1,180 @@
+package fold
+
+import (
+	"math"
+
+	"dextral/core/convention"
+	"dextral/core/kinematics"
+	"dextral/core/matrix"
+	"dextral/core/rotor"
+	"dextral/rules"
+)
+
+// Range is the least and the greatest of some numbers, and where they are.
+type Range struct {
+	rules.Range
+	any bool
+}
+
+func (r *Range) add(x float64, at kinematics.Place) {
+	if !r.any {
+		e := kinematics.Extreme{Value: x, Place: at}
+		r.Min, r.Max, r.any = e, e, true
+		return
+	}
+	if x < r.Min.Value {
+		r.Min = kinematics.Extreme{Value: x, Place: at}
+	}
+	if x > r.Max.Value {
+		r.Max = kinematics.Extreme{Value: x, Place: at}
+	}
+}
+
+func (r *Range) merge(next *Range) {
+	if next.any {
+		if !r.any {
+			*r = *next
+			return
+		}
+		r.add(next.Min.Value, next.Min.Place)
+		r.add(next.Max.Value, next.Max.Place)
+	}
+}
+
+func count(t *kinematics.Tally, at kinematics.Place) {
+	if t.Count == 0 {
+		t.First = at
+	}
+	t.Count++
+}
+
+func join(t *kinematics.Tally, next kinematics.Tally) {
+	if t.Count == 0 {
+		t.First = next.First
+	}
+	t.Count += next.Count
+}
+
+// Summary is the fold over one channel.
+type Summary struct {
+	Gaps       kinematics.Tally
+	Ranges     []Range // of each number
+	Digits     Digits
+	Continuity kinematics.Continuity // quaternions
+	Matrices   Matrices              // rotation matrices and rigid transforms
+}
+
+// push adds the channel's numbers in a row. A row without any number is a gap;
+// where only some are missing they count as NaN.
+func (s *Summary) push(c *Channel, row int64, t float64, cells []Cell) {
+	at := kinematics.Place{Row: row, T: t}
+	gaps := 0
+	for i, cell := range c.Cells {
+		switch v := cells[cell].Value(); {
+		case cells[cell].State == Gap:
+			gaps++
+		case !math.IsNaN(v) && !math.IsInf(v, 0):
+			s.Ranges[i].add(v, at)
+		}
+	}
+	if gaps == len(c.Cells) {
+		count(&s.Gaps, at)
+		return
+	}
+	s.Digits.push(c.Rotation, cells)
+	value := func(i int) float64 { return cells[c.Rotation[i]].Value() }
+	switch c.Form {
+	case convention.Quaternion:
+		s.Continuity.Push(row, t, rotor.FromQuaternion(value(0), value(1), value(2), value(3)))
+	case convention.Rotation, convention.Transform:
+		s.Matrices.push(at, matrix.Mat3{{value(0), value(1), value(2)}, {value(3), value(4), value(5)}, {value(6), value(7), value(8)}})
+	}
+}
+
+func (s *Summary) merge(next *Summary) {
+	join(&s.Gaps, next.Gaps)
+	for i := range s.Ranges {
+		s.Ranges[i].merge(&next.Ranges[i])
+	}
+	s.Digits.merge(&next.Digits)
+	s.Continuity.Merge(next.Continuity)
+	s.Matrices.merge(&next.Matrices)
+}
+
+// Matrices is the fold over rotation matrices.
+type Matrices struct {
+	rules.Matrices
+
+	det         Range
+	first, last placedMatrix
+}
+
+type placedMatrix struct {
+	m  matrix.Mat3
+	at kinematics.Place
+}
+
+func (s *Matrices) push(at kinematics.Place, m matrix.Mat3) {
+	switch {
+	case !m.Finite():
+		count(&s.NonFinite, at)
+		return
+	case m == (matrix.Mat3{}):
+		count(&s.Zero, at)
+		return
+	}
+	det := m.Det()
+	s.det.add(det, at)
+	if det < 0 {
+		count(&s.Mirrors, at)
+	}
+	here := placedMatrix{m, at}
+	if d := matrix.Defect(m); s.Count == 0 || d > s.Defect.Value {
+		s.Defect = kinematics.Extreme{Value: d, Place: at}
+	}
+	if s.Count == 0 {
+		s.first = here
+	} else {
+		s.step(here)
+	}
+	s.Count++
+	s.last = here
+}
+
+// step accounts for the step from the last matrix.
+func (s *Matrices) step(next placedMatrix) {
+	if d := next.m.Sub(s.last.m).Norm(); d > s.Largest.Value {
+		s.Largest = kinematics.Extreme{Value: d, Place: next.at}
+	}
+}
+
+func (s *Matrices) merge(next *Matrices) {
+	join(&s.NonFinite, next.NonFinite)
+	join(&s.Zero, next.Zero)
+	if next.Count == 0 {
+		return
+	}
+	if s.Count == 0 {
+		next.NonFinite, next.Zero = s.NonFinite, s.Zero
+		*s = *next
+		return
+	}
+	s.step(next.first)
+	if next.Largest.Value > s.Largest.Value {
+		s.Largest = next.Largest
+	}
+	if next.Defect.Value > s.Defect.Value {
+		s.Defect = next.Defect
+	}
+	join(&s.Mirrors, next.Mirrors)
+	s.det.merge(&next.det)
+	s.Count += next.Count
+	s.last = next.last
+}
+
+// Rules are the results in the form that rules judge.
+func (s *Matrices) Rules() rules.Matrices {
+	m := s.Matrices
+	m.Det = s.det.Range
+	return m
+}
