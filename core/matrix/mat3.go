@@ -35,15 +35,20 @@ func FromColumns(x, y, z rotor.Vec) Mat3 {
 }
 
 // Mul returns the matrix product m n: n first, m second.
-func (m Mat3) Mul(n Mat3) Mat3 {
-	var p Mat3
-	for i := range 3 {
-		a, b, c := m[i][0], m[i][1], m[i][2]
-		p[i][0] = a*n[0][0] + b*n[1][0] + c*n[2][0]
-		p[i][1] = a*n[0][1] + b*n[1][1] + c*n[2][1]
-		p[i][2] = a*n[0][2] + b*n[1][2] + c*n[2][2]
-	}
+func (m Mat3) Mul(n Mat3) (p Mat3) {
+	mul(&p, &m, &n)
 	return p
+}
+
+// mul, like apply below, takes pointers so that the method is short enough to
+// be inlined and no matrix is copied onto the stack.
+func mul(p, m, n *Mat3) {
+	for i := range p {
+		x, y, z := m[i][0], m[i][1], m[i][2]
+		p[i][0] = x*n[0][0] + y*n[1][0] + z*n[2][0]
+		p[i][1] = x*n[0][1] + y*n[1][1] + z*n[2][1]
+		p[i][2] = x*n[0][2] + y*n[1][2] + z*n[2][2]
+	}
 }
 
 // Sub returns m - n.
@@ -79,7 +84,9 @@ func (m Mat3) Det() float64 { return m.Column(0).Dot(m.Column(1).Cross(m.Column(
 func (m Mat3) Trace() float64 { return m[0][0] + m[1][1] + m[2][2] }
 
 // Apply returns m v.
-func (m Mat3) Apply(v rotor.Vec) rotor.Vec {
+func (m Mat3) Apply(v rotor.Vec) rotor.Vec { return apply(&m, v) }
+
+func apply(m *Mat3, v rotor.Vec) rotor.Vec {
 	return rotor.Vec{
 		X: m[0][0]*v.X + m[0][1]*v.Y + m[0][2]*v.Z,
 		Y: m[1][0]*v.X + m[1][1]*v.Y + m[1][2]*v.Z,

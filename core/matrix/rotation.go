@@ -1,6 +1,10 @@
 package matrix
 
-import "dextral/core/rotor"
+import (
+	"math"
+
+	"dextral/core/rotor"
+)
 
 // FromRotor returns the matrix of a unit rotor as an active rotation: m v is
 // r v r~. The passive matrix, which re-expresses a fixed vector in turned axes, is
@@ -18,19 +22,29 @@ func FromRotor(r rotor.Rotor) Mat3 {
 	}
 }
 
-// Rotor returns a unit rotor of the rotation m, taken as active. It is meant for matrices
-// that are rotations up to rounding; for others see [Nearest].
+// Rotor returns the unit rotor, or its negative, of a rotation matrix, taken as
+// active. It is meant for rotations up to rounding; for others [Nearest] is.
 //
-// The sixteen products of the components of the rotor, times four, are sums of
-// elements of m. Each of four columns of that table is a multiple of the
-// rotor; the one with the largest diagonal, at least one, is taken and normalised, so that no
-// trace is a bad one (S. W. Shepperd, "Quaternion from rotation matrix", J. Guidance and Control 1 (1978) 223).
-func (m Mat3) Rotor() rotor.Rotor {
+// The ten products of two components of a rotor, times four, are sums of
+// elements of m: the table
+//
+//	4 S^2      4 S E23    4 S E31    4 S E12
+//	           4 E23^2    4 E23 E31  4 E12 E23
+//	                      4 E31^2    4 E31 E12
+//	                                 4 E12^2
+//
+// Each row is a multiple of the rotor. The one with the greatest square, which
+// is at least one, is taken and brought to norm one, so that no trace is a bad
+// one (S. W. Shepperd, "Quaternion from rotation matrix", J. Guidance and
+// Control 1 (1978) 223).
+func (m Mat3) Rotor() rotor.Rotor { return fromRotation(&m) }
+
+func fromRotation(m *Mat3) rotor.Rotor {
 	x, y, z := m[0][0], m[1][1], m[2][2]
 	var r rotor.Rotor
-	switch s := x + y + z; {
-	case s >= x && s >= y && s >= z:
-		r = rotor.Rotor{S: 1 + s, E23: m[1][2] - m[2][1], E31: m[2][0] - m[0][2], E12: m[0][1] - m[1][0]}
+	switch trace := x + y + z; {
+	case trace >= x && trace >= y && trace >= z:
+		r = rotor.Rotor{S: 1 + trace, E23: m[1][2] - m[2][1], E31: m[2][0] - m[0][2], E12: m[0][1] - m[1][0]}
 	case x >= y && x >= z:
 		r = rotor.Rotor{S: m[1][2] - m[2][1], E23: 1 + x - y - z, E31: m[0][1] + m[1][0], E12: m[2][0] + m[0][2]}
 	case y >= z:
@@ -38,6 +52,5 @@ func (m Mat3) Rotor() rotor.Rotor {
 	default:
 		r = rotor.Rotor{S: m[0][1] - m[1][0], E23: m[2][0] + m[0][2], E31: m[1][2] + m[2][1], E12: 1 + z - x - y}
 	}
-	u, _ := r.Unit()
-	return u
+	return r.Scale(1 / math.Sqrt(r.Dot(r)))
 }
