@@ -17,6 +17,7 @@ type claim struct {
 	form        convention.Form // NoForm: not declared
 	uncertainty float64         // radians; 0: not declared
 	double      bool
+	saysDouble  bool
 }
 
 func (c claim) matches(rel, key string) bool {
@@ -52,14 +53,16 @@ func (p *Policy) Declare(v *rules.Value) {
 		if c.uncertainty > 0 {
 			v.Uncertainty = c.uncertainty
 		}
-		v.Double = v.Double || c.double
+		if c.saysDouble {
+			v.Double = c.double
+		}
 	}
 	if c, ok := declared[convention.OfForm]; ok {
 		reform(v, c)
 	}
 	for _, d := range p.defaults {
 		s := d.Says.Subject()
-		if _, ok := declared[s]; !ok && !saysItself(v.Claims, s) {
+		if _, ok := declared[s]; !ok && v.Form != convention.NoForm && !saysItself(v.Claims, s) {
 			declared[s] = d
 		}
 	}

@@ -188,6 +188,27 @@ func TestNoRotation(t *testing.T) {
 	assert.Equal(t, "declared to claim no rotation (dextral.toml:3:1)", q.Why)
 }
 
+// Exceptions reach uncertainty and precision too.
+func TestLaterPrecision(t *testing.T) {
+	p := parse(t, "[[claim]]\nfiles = '**'\ndouble = true\nuncertainty_deg = 1\n[[claim]]\nfiles = 'old/*'\ndouble = false\nuncertainty_deg = 2\n[[claim]]\nfiles = '**'\nproduct = 'hamilton'\n")
+	now, old := value("a.yaml", "q", convention.Quaternion, 4), value("old/a.yaml", "q", convention.Quaternion, 4)
+	p.Declare(now)
+	p.Declare(old)
+	assert.True(t, now.Double)
+	assert.False(t, old.Double)
+	assert.InDelta(t, math.Pi/180, now.Uncertainty, 1e-15)
+	assert.InDelta(t, 2*math.Pi/180, old.Uncertainty, 1e-15)
+}
+
+// A default says nothing about what is not known to be an orientation.
+func TestDefaultsLeaveTheUndecidedAlone(t *testing.T) {
+	v := value("a.yaml", "data", convention.NoForm, 4)
+	v.Why = "four numbers without a name"
+	parse(t, "[defaults]\nscalar = 'first'\n").Declare(v)
+	assert.Empty(t, v.Claims)
+	assert.False(t, v.Decided())
+}
+
 func TestDefaultPolicyDeclaresNothing(t *testing.T) {
 	v := value("a.yaml", "q", convention.Quaternion, 4)
 	Default().Declare(v)

@@ -87,9 +87,8 @@ func (l *lines) source(s span) string { return l.text[s.start:s.end] }
 //
 // A candidate is near if at most a third of the longer word's letters must be
 // changed, dropped, added or exchanged with their neighbour, or if one is the
-// start of the other. The third is a choice: it admits one slip in "rig" and
-// two in "sequence", and keeps "unit" from being offered for "until" only where
-// "until" itself is a candidate.
+// start of the other. The third is a choice: it forgives one slip in "rule" and
+// two in "because".
 func nearest(word string, candidates []string) string {
 	best, bestSlips := "", 0
 	word = strings.ToLower(word)

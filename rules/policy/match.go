@@ -97,9 +97,9 @@ func (k keyPattern) matches(key string) bool {
 }
 
 // keyElements splits a key into its elements: a[3].b is a, 3, b.
-func keyElements(key string) []string {
-	return strings.Split(strings.NewReplacer("[", ".", "]", "").Replace(key), ".")
-}
+func keyElements(key string) []string { return strings.Split(brackets.Replace(key), ".") }
+
+var brackets = strings.NewReplacer("[", ".", "]", "")
 
 // root turns paths as the command sees them, relative to where it was started,
 // into paths relative to the directory of the policy.

@@ -160,7 +160,7 @@ func (t *table) claim() claim {
 		}
 		c.uncertainty = u * math.Pi / 180
 	}
-	c.double, _ = t.truth("double")
+	c.double, c.saysDouble = t.truth("double")
 	if declared := []string{"files", "keys"}; !slices.ContainsFunc(t.keys, func(k string) bool {
 		_, there := t.vals[k]
 		return there && !slices.Contains(declared, k)

@@ -1,6 +1,7 @@
 package report
 
 import (
+	"bufio"
 	"fmt"
 	"io"
 	"strings"
@@ -25,17 +26,17 @@ const (
 	noStyle = ""
 )
 
-// printer writes lines and keeps the first error.
+// printer writes lines. Its buffer keeps the first error until it is flushed.
 type printer struct {
-	w   io.Writer
-	o   Options
-	err error
+	*bufio.Writer
+	o Options
 }
 
+func newPrinter(w io.Writer, o Options) *printer { return &printer{bufio.NewWriter(w), o} }
+
 func (p *printer) line(s string) {
-	if p.err == nil {
-		_, p.err = io.WriteString(p.w, s+"\n")
-	}
+	p.WriteString(s)
+	p.WriteByte('\n')
 }
 
 // styled wraps s in a style, if colours are wanted.

@@ -13,7 +13,7 @@ import (
 // Readings lists orientation values in the order of their places: for each how
 // it is read and which claims decide that, or why it is undecided.
 func Readings(w io.Writer, values []*rules.Value, o Options) error {
-	p := &printer{w: w, o: o}
+	p := newPrinter(w, o)
 	sorted := slices.Clone(values)
 	slices.SortStableFunc(sorted, func(a, b *rules.Value) int { return a.Place.Compare(b.Place) })
 	undecided := 0
@@ -25,7 +25,7 @@ func Readings(w io.Writer, values []*rules.Value, o Options) error {
 	}
 	p.line(fmt.Sprintf("%s: %s read, %s undecided", plural(len(sorted), "orientation value"),
 		grouped(len(sorted)-undecided), grouped(undecided)))
-	return p.err
+	return p.Flush()
 }
 
 // marginWidth holds the words in the margin of a reading and two spaces.

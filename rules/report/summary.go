@@ -3,11 +3,19 @@ package report
 import (
 	"cmp"
 	"fmt"
+	"io"
 	"slices"
 	"strings"
 
 	"dextral/rules/policy"
 )
+
+// Summary writes the closing summary alone, for use beside a machine format.
+func Summary(w io.Writer, r *Report, o Options) error {
+	p := newPrinter(w, o)
+	p.summary(r)
+	return p.Flush()
+}
 
 // summary says what was audited, what was found, and what dextral cannot vouch
 // for: the undecided, the unreadable and the failed.

@@ -11,13 +11,13 @@ import (
 
 // Text writes the report for people: every finding, then a summary.
 func Text(w io.Writer, r *Report, o Options) error {
-	p := &printer{w: w, o: o}
+	p := newPrinter(w, o)
 	for _, f := range r.Findings {
 		p.finding(f)
 		p.line("")
 	}
 	p.summary(r)
-	return p.err
+	return p.Flush()
 }
 
 // labelWidth holds the words in the margin of a finding and two spaces.

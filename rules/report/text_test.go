@@ -70,6 +70,14 @@ func TestWidth(t *testing.T) {
 	}
 }
 
+// The summary alone is the end of the whole text.
+func TestSummary(t *testing.T) {
+	var b bytes.Buffer
+	require.NoError(t, Summary(&b, sample(), Options{Width: 80}))
+	assert.True(t, strings.HasPrefix(b.String(), "audited    "))
+	assert.True(t, strings.HasSuffix(string(text(t, sample(), Options{Width: 80})), "\n\n"+b.String()))
+}
+
 func TestTallyAndGate(t *testing.T) {
 	r := sample()
 	assert.Equal(t, Tally{Errors: 3, Warnings: 1, Notes: 1, Waived: 1}, r.Tally())
@@ -124,6 +132,7 @@ func TestGrouped(t *testing.T) {
 func TestWriteErrors(t *testing.T) {
 	broken := errors.New("broken pipe")
 	assert.ErrorIs(t, Text(failing{broken}, sample(), Options{}), broken)
+	assert.ErrorIs(t, Summary(failing{broken}, sample(), Options{}), broken)
 	assert.ErrorIs(t, Readings(failing{broken}, values(t), Options{}), broken)
 	assert.ErrorIs(t, SARIF(failing{broken}, sample(), "0.1.0", two), broken)
 }
