@@ -60,6 +60,7 @@ contradiction with the numbers that prove it.`,
   dextral audit calib/ logs/imu.csv  audit these only
   dextral readings calib/            list every orientation and how it is read
   dextral rules sign-jump            explain a rule`,
+		Version:       version(),
 		SilenceErrors: true,
 		SilenceUsage:  true,
 		Args:          cobra.NoArgs,

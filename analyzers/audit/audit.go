@@ -1,0 +1,208 @@
+// Package audit reads a whole tree and judges it.
+//
+// The files of the tree are read in parallel, each by the reader of its kind;
+// Go files go to package gosource, which reads them package by package. What
+// the readers found is then put in order, declared upon by the nearest
+// dextral.toml, and handed to the rules: values file by file, and across the
+// files of a rig. Everything that could not be read is part of the result;
+// nothing stops the audit of the rest. The same tree gives the same result to
+// the byte, whatever the number of processors.
+package audit
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"os"
+	"runtime"
+	"slices"
+	"sync"
+	"time"
+
+	"dextral/analyzers/gosource"
+	"dextral/analyzers/source"
+	"dextral/analyzers/walk"
+	"dextral/rules"
+	"dextral/rules/policy"
+	"dextral/rules/report"
+)
+
+// Options say what to audit.
+type Options struct {
+	Paths   []string    // files and directories; none: the working directory
+	Today   time.Time   // the day on which waivers are held against
+	Gate    policy.Gate // used if GateSet; else that of the nearest dextral.toml of the first path
+	GateSet bool
+	Workers int // files read at a time; 0: as many as there are processors
+}
+
+// Result is an audit with the values it rests on.
+type Result struct {
+	Report report.Report
+	Values []*rules.Value  // of files and Go packages, in order of place
+	Series []*rules.Series // channels of logs, in order of place
+}
+
+// Run audits. The error is that of the context; everything else that goes wrong
+// is part of the result.
+func Run(ctx context.Context, o Options) (*Result, error) {
+	if len(o.Paths) == 0 {
+		o.Paths = []string{"."}
+	}
+	tree, err := walk.List(ctx, o.Paths)
+	if err != nil {
+		return nil, err
+	}
+	a := &audit{result: &Result{}, tree: tree, policies: map[string]*policy.Policy{}}
+	for _, f := range tree.Files {
+		a.policies[f.Path] = f.Policy
+	}
+	for _, f := range tree.Failed {
+		a.fail(f.Place, f.Err)
+	}
+	found, err := a.read(ctx, o.Workers)
+	if err != nil {
+		return nil, err
+	}
+	a.judge(found)
+	a.finish(o)
+	return a.result, nil
+}
+
+type audit struct {
+	result   *Result
+	tree     *walk.Tree
+	policies map[string]*policy.Policy // by printed path
+}
+
+// found is what the readers made of one file.
+type found struct {
+	kind     kind
+	values   []*rules.Value
+	series   []*rules.Series
+	pairs    []rules.SeriesPair
+	rows     int64
+	why      string // for unreadable files
+	failures []report.Failure
+	open     []report.Undecided
+}
+
+// read reads all files. The list is in the order of the tree; Go files, which
+// are read together, come last.
+func (a *audit) read(ctx context.Context, workers int) ([]*found, error) {
+	if workers <= 0 {
+		workers = runtime.GOMAXPROCS(0)
+	}
+	list := make([]*found, len(a.tree.Files)+1)
+	next := make(chan int)
+	var pool sync.WaitGroup
+	for range workers {
+		pool.Go(func() {
+			for i := range next {
+				list[i] = readFile(ctx, a.tree.Files[i])
+			}
+		})
+	}
+	var goFiles []gosource.File
+	for i, f := range a.tree.Files {
+		if kindOf(f.Name) == goFile {
+			goFiles = append(goFiles, gosource.File{Path: f.Path, Name: f.Name})
+			continue
+		}
+		next <- i
+	}
+	close(next)
+	pool.Wait()
+	if err := ctx.Err(); err != nil {
+		return nil, err
+	}
+	code, err := a.readGo(ctx, goFiles)
+	list[len(list)-1] = code
+	return slices.DeleteFunc(list, func(f *found) bool { return f == nil }), err
+}
+
+// readFile reads one file that is not Go. A reader that panics has a mistake
+// of its own; it costs that file, not the audit.
+func readFile(ctx context.Context, f walk.File) (result *found) {
+	defer func() {
+		if p := recover(); p != nil {
+			result = &found{failures: []report.Failure{{Place: rules.Place{Path: f.Path},
+				Message: fmt.Sprintf("the reader failed on this file, which is a mistake in dextral: %v", p)}}}
+		}
+	}()
+	return readerOf(f)(ctx, f)
+}
+
+func (a *audit) readGo(ctx context.Context, files []gosource.File) (*found, error) {
+	if len(files) == 0 {
+		return nil, nil
+	}
+	r, err := gosource.Load(ctx, files)
+	if err != nil {
+		return nil, err
+	}
+	a.result.Report.Audited.GoPackages = r.Packages
+	a.result.Report.Audited.GoFiles = r.Files
+	code := &found{kind: goFile, values: r.Values}
+	for _, f := range r.Failures {
+		code.failures = append(code.failures, report.Failure{Place: f.Place, Message: f.Err.Error()})
+	}
+	return code, nil
+}
+
+// judge declares, checks and waives.
+func (a *audit) judge(list []*found) {
+	out := &a.result.Report
+	rigs := map[string][]*rules.Value{}
+	for _, f := range list {
+		out.Failed = append(out.Failed, f.failures...)
+		out.Undecided = append(out.Undecided, f.open...)
+		a.count(f)
+		for _, v := range f.values {
+			p := a.policyOf(v.Place.Path)
+			p.Declare(v)
+			if rig := p.RigOf(v.Place.Path); rig != "" {
+				rigs[p.Path+"#"+rig] = append(rigs[p.Path+"#"+rig], v)
+			}
+		}
+		out.Findings = append(out.Findings, rules.CheckValues(f.values)...)
+		for _, s := range f.series {
+			a.policyOf(s.Value.Place.Path).Declare(&s.Value)
+			out.Findings = append(out.Findings, rules.CheckSeries(s)...)
+		}
+		for _, p := range f.pairs {
+			out.Findings = append(out.Findings, rules.CheckPair(p)...)
+		}
+		a.result.Values = append(a.result.Values, f.values...)
+		a.result.Series = append(a.result.Series, f.series...)
+	}
+	for _, rig := range rigs {
+		out.Findings = append(out.Findings, rules.CheckRig(rig)...)
+	}
+}
+
+// policyOf is the policy of a file. Files that were not listed by the walk,
+// such as one that a Go package pulled in, have the default one.
+func (a *audit) policyOf(path string) *policy.Policy {
+	if p := a.policies[path]; p != nil {
+		return p
+	}
+	return policy.Default()
+}
+
+func (a *audit) fail(at rules.Place, err error) {
+	a.result.Report.Failed = append(a.result.Report.Failed, failure(at, err))
+}
+
+// failure gives an error its place: its own, if it has one.
+func failure(at rules.Place, err error) report.Failure {
+	var placed *source.Error
+	if errors.As(err, &placed) {
+		return report.Failure{Place: placed.Place, Message: placed.Problem + "; " + placed.Remedy}
+	}
+	var pathErr *os.PathError
+	if errors.As(err, &pathErr) {
+		err = pathErr.Err // the place names the path already
+	}
+	return report.Failure{Place: at, Message: err.Error()}
+}

@@ -1,0 +1,95 @@
+package audit
+
+import (
+	"bytes"
+	"context"
+	"io"
+	"os"
+	"path/filepath"
+	"strings"
+
+	"dextral/analyzers/config"
+	"dextral/analyzers/source"
+	"dextral/analyzers/walk"
+	"dextral/rules"
+	"dextral/rules/report"
+)
+
+// kind is how a file is treated.
+type kind uint8
+
+const (
+	other      kind = iota // text of no format that can hold orientations
+	goFile                 // read with its package
+	configFile             // read whole
+	logFile                // streamed
+	unreadable             // recognised by name or first bytes, not read yet
+	binary
+)
+
+// kindOf judges by the name alone.
+func kindOf(name string) kind {
+	base := filepath.Base(name)
+	switch {
+	case strings.EqualFold(filepath.Ext(base), ".go"):
+		return goFile
+	case base == "dextral.toml" || base == ".dextral.toml":
+		return other
+	case config.Format(base) != "":
+		return configFile
+	}
+	return other
+}
+
+// reader reads one file.
+type reader func(context.Context, walk.File) *found
+
+func readerOf(f walk.File) reader {
+	if kindOf(f.Name) == configFile {
+		return readConfig
+	}
+	return readByHead
+}
+
+func failed(k kind, f walk.File, err error) *found {
+	return &found{kind: k, failures: []report.Failure{failure(rules.Place{Path: f.Path}, err)}}
+}
+
+func readConfig(_ context.Context, f walk.File) *found {
+	if err := source.CheckSize(f.Path, f.Size); err != nil {
+		return failed(configFile, f, err)
+	}
+	text, err := os.ReadFile(f.Name)
+	if err != nil {
+		return failed(configFile, f, err)
+	}
+	r, err := config.Read(f.Path, text)
+	if err != nil {
+		return failed(configFile, f, err)
+	}
+	result := &found{kind: configFile, values: r.Values}
+	for _, w := range r.Warnings {
+		result.failures = append(result.failures, report.Failure{Place: w.Place, Message: w.Message})
+	}
+	return result
+}
+
+// headSize is how much of a file is read to tell what it is.
+const headSize = 64 << 10
+
+// readByHead opens a file whose name does not settle what it is, and looks at
+// its first bytes.
+func readByHead(ctx context.Context, f walk.File) *found {
+	file, err := os.Open(f.Name)
+	if err != nil {
+		return failed(other, f, err)
+	}
+	defer file.Close()
+	head := make([]byte, headSize)
+	n, err := io.ReadFull(file, head)
+	if err != nil && err != io.EOF && err != io.ErrUnexpectedEOF {
+		return failed(other, f, err)
+	}
+	head = head[:n]
+	return readLog(ctx, f, head, io.MultiReader(bytes.NewReader(head), file))
+}

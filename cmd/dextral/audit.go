@@ -1,0 +1,98 @@
+package main
+
+import (
+	"fmt"
+	"io"
+	"os"
+	"strings"
+	"time"
+
+	"dextral/analyzers/audit"
+	"dextral/rules"
+	"dextral/rules/policy"
+	"dextral/rules/report"
+
+	"github.com/spf13/cobra"
+	"golang.org/x/term"
+)
+
+func auditCommand(s streams) *cobra.Command {
+	var format, gate string
+	c := &cobra.Command{
+		Use:   "audit [path ...]",
+		Short: "Audit files and directories (default: the current directory)",
+		Long: `Audit reads every orientation in the given files and directories, recomputes what
+is claimed about it, and prints each contradiction with the numbers that prove it.
+
+What version control ignores is skipped. A dextral.toml in the tree, or above it,
+declares conventions, excludes paths and waives findings.
+
+Exit status: 0 nothing at or above the gate, 1 findings, 2 something that was to
+be audited could not be.`,
+		Example: `  dextral audit
+  dextral audit --gate warning calib/ logs/
+  dextral audit --format sarif > dextral.sarif`,
+		RunE: func(c *cobra.Command, paths []string) error {
+			write, ok := formats[format]
+			if !ok {
+				return fmt.Errorf("--format %s: the formats are %s", format, strings.Join(formatNames, ", "))
+			}
+			o := audit.Options{Paths: paths, Today: time.Now()}
+			if gate != "" {
+				if o.Gate, o.GateSet = policy.ParseGate(gate); !o.GateSet {
+					return fmt.Errorf("--gate %s: the gates are %s", gate, strings.Join(policy.GateNames(), ", "))
+				}
+			}
+			r, err := audit.Run(c.Context(), o)
+			if err != nil {
+				return err
+			}
+			if err := write(s.out, &r.Report); err != nil {
+				return fmt.Errorf("the report could not be written: %w", err)
+			}
+			if format != "text" {
+				_ = report.Summary(s.err, &r.Report, layout(s.err)) // beside the point of a machine format
+			}
+			return outcome(&r.Report)
+		},
+	}
+	c.Flags().StringVar(&format, "format", "text", "output format: "+strings.Join(formatNames, ", "))
+	c.Flags().StringVar(&gate, "gate", "", "mildest level that fails the audit: "+strings.Join(policy.GateNames(), ", ")+" (default: of dextral.toml, or error)")
+	_ = c.RegisterFlagCompletionFunc("format", cobra.FixedCompletions(formatNames, cobra.ShellCompDirectiveNoFileComp))
+	_ = c.RegisterFlagCompletionFunc("gate", cobra.FixedCompletions(policy.GateNames(), cobra.ShellCompDirectiveNoFileComp))
+	return c
+}
+
+// formatNames lists the formats of audit.
+var formatNames = []string{"text", "sarif"}
+
+var formats = map[string]func(io.Writer, *report.Report) error{
+	"text":  func(w io.Writer, r *report.Report) error { return report.Text(w, r, layout(w)) },
+	"sarif": func(w io.Writer, r *report.Report) error { return report.SARIF(w, r, version(), report.RuleInfos(rules.Catalogue())) },
+}
+
+// outcome is the exit status of an audit. What could not be audited outweighs
+// findings: a green or red answer about a part would pass for one about all.
+func outcome(r *report.Report) error {
+	switch {
+	case len(r.Failed) > 0:
+		return status(exitFailed)
+	case r.Failing() > 0:
+		return status(exitFindings)
+	}
+	return nil
+}
+
+// layout suits the report to where it goes: a terminal gets its width and, unless
+// NO_COLOR or TERM=dumb say otherwise, colours.
+func layout(w io.Writer) report.Options {
+	f, ok := w.(*os.File)
+	if !ok || !term.IsTerminal(int(f.Fd())) {
+		return report.Options{}
+	}
+	width, _, err := term.GetSize(int(f.Fd()))
+	if err != nil {
+		width = 0
+	}
+	return report.Options{Width: width, Color: os.Getenv("NO_COLOR") == "" && os.Getenv("TERM") != "dumb"}
+}
