@@ -93,7 +93,7 @@ func (s *search) weigh(c candidate, tried int) evidence {
 	for _, side := range [2]struct {
 		d   *side
 		how Reading
-	}{{s.a, c.A}, {s.b, c.B}} {
+	}{{&s.a, c.A}, {&s.b, c.B}} {
 		if side.how.Form == convention.Angles {
 			w := angleWidths(side.d.angles, side.how.Unit)
 			e.expected = max(e.expected, w.chance(c.open))

@@ -19,7 +19,7 @@ type Class struct {
 }
 
 // result sorts what was found into classes around the best candidate.
-func (s *search) result(v Verdict, best candidate, tried int) Result {
+func (s *search) result(v Verdict, best candidate, e evidence) Result {
 	r := Result{Verdict: v, Margin: math.Inf(1)}
 	r.Best = s.class(best)
 	r.Stated = r.Best
@@ -39,8 +39,18 @@ func (s *search) result(v Verdict, best candidate, tried int) Result {
 			r.Next, r.Margin = class, c.residual/best.open
 		}
 	}
-	r.Decided = !r.Best.Tie && v != Unexplained && s.weigh(best, tried).enough(best.cost)
+	r.Decided = !r.Best.Tie && v != Unexplained && e.enough(best.cost) && !s.rivalled(best)
 	return r
+}
+
+// rivalled reports whether a dearer reading fits nearly as well and is another
+// rotation. Readings that are the same rotation, as the reverse of a turn
+// about z and the turn with its axes mapped are, have the same residual to
+// rounding; of these the cheapest is the one to report.
+func (s *search) rivalled(best candidate) bool {
+	return slices.ContainsFunc(s.found, func(c candidate) bool {
+		return c.cost > best.cost && c.key != best.key && math.Abs(c.residual-best.residual) > arithmetic
+	})
 }
 
 // class gathers what fits as cheaply as best does or shares its alias. All
@@ -74,7 +84,7 @@ func (s *search) stated() Class {
 // a higher cost, and the nearest of the rest, one of each alias.
 func (s *search) others(best candidate, v Verdict) []candidate {
 	var list []candidate
-	seen := []Hypothesis{best.key}
+	seen := []alias{best.key}
 	if v == Unexplained {
 		seen = nil
 	}
@@ -83,7 +93,9 @@ func (s *search) others(best candidate, v Verdict) []candidate {
 			continue
 		}
 		seen = append(seen, c.key)
-		list = append(list, c)
+		if list = append(list, c); len(list) == maxNearest {
+			break
+		}
 	}
 	return list
 }

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"sync"
 
 	"dextral/core/convention"
 )
@@ -40,77 +41,106 @@ type Result struct {
 // Same tells whether two statements describe one orientation and, if they do
 // not as claimed, which fewest changes reconcile them.
 func Same(a, b Statement) Result {
-	first, whyA := newSide(a)
-	second, whyB := newSide(b)
-	if whyA != "" || whyB != "" {
-		return Result{Reason: unreadable(whyA, whyB)}
+	s := searches.Get().(*search)
+	defer searches.Put(s)
+	if why := s.read(a, b); why != "" {
+		return Result{Reason: why}
 	}
-	s := newSearch(first, second, a.Claim, b.Claim)
 	return s.run()
 }
 
-func unreadable(whyA, whyB string) string {
-	if whyA != "" {
-		return "the first cannot be read: " + whyA
+// searches keeps the memory of searches: a thousand readings for angles.
+var searches = sync.Pool{New: func() any { return new(search) }}
+
+// read starts afresh on two statements. It says why not where it cannot.
+func (s *search) read(a, b Statement) string {
+	*s = search{
+		a: side{readings: s.a.readings}, b: side{readings: s.b.readings},
+		found: s.found[:0], nearest: s.nearest[:0],
+		forward: candidate{residual: math.Inf(1)},
 	}
-	return "the second cannot be read: " + whyB
+	if why := s.a.read(a); why != "" {
+		return "the first cannot be read: " + why
+	}
+	if why := s.b.read(b); why != "" {
+		return "the second cannot be read: " + why
+	}
+	s.direct(a.Claim, b.Claim)
+	if s.a.mirrored && s.b.mirrored { // compared as the maps that they are
+		s.a.unmirror()
+		s.b.unmirror()
+	}
+	return ""
 }
 
-// newSearch settles what the claims say about direction. Where both name their
+// direct settles what the claims say about direction. Where both name their
 // frames, one of them may have to be reversed to say what the other says; where one
 // does not, or a label leaves it open, both directions are free.
-func newSearch(a, b *side, claimA, claimB Claim) *search {
-	s := &search{a: a, b: b, forward: candidate{residual: math.Inf(1)}}
-	dirA, dirB := claimA.Direction, claimB.Direction
-	switch {
-	case a.free || b.free || !dirA.Stated() || !dirB.Stated():
-	case dirA == dirB:
-		s.inverse = Inverse.Cost()
-	case dirA == dirB.Reverse():
-		s.inverse = Inverse.Cost()
-		b.reverse()
+func (s *search) direct(a, b Claim) {
+	if s.a.free || s.b.free || !a.Direction.Stated() || !b.Direction.Stated() {
+		return
 	}
-	if s.inverse > 0 {
-		// Shuster's matrix of the same four numbers is the transpose of Hamilton's.
-		if a.form == convention.Quaternion && claimA.Product == convention.Shuster {
-			a.reverse()
-		}
-		if b.form == convention.Quaternion && claimB.Product == convention.Shuster {
-			b.reverse()
-		}
+	switch a.Direction {
+	case b.Direction:
+	case b.Direction.Reverse():
+		s.b.reverse()
+	default:
+		return // of two other frames: nothing is said about these
 	}
-	if a.mirrored && b.mirrored { // compared as the maps that they are
-		a.readings[0].cost, a.readings[0].set = 0, 0
-		b.readings[0].cost, b.readings[0].set = 0, 0
-		a.sort()
-		b.sort()
+	s.inverse = Inverse.Cost()
+	// Shuster's matrix of the same four numbers is the transpose of Hamilton's.
+	if s.a.form == convention.Quaternion && a.Product == convention.Shuster {
+		s.a.reverse()
 	}
-	return s
+	if s.b.form == convention.Quaternion && b.Product == convention.Shuster {
+		s.b.reverse()
+	}
 }
 
-// run searches from the claims outwards.
+// run searches from the claims outwards, and a little beyond the first cost
+// at which something fits, for rivals.
 func (s *search) run() Result {
-	s.level(0)
-	if best, ok := s.cheapest(); ok {
-		tried := s.tried
-		s.level(1)
-		return s.result(s.agreement(), best, tried)
-	}
-	if len(s.found) > 0 {
-		best := s.found[0]
-		r := s.result(Undecided, best, s.tried)
-		r.Decided = false
-		r.Reason = fmt.Sprintf("as claimed they differ by %s, which is little more than the %s that the digits leave open",
-			degrees(best.residual), degrees(best.open))
-		return r
-	}
-	for c := 1; c <= maxCost; c++ {
+	for c := range maxCost + 1 {
 		s.level(c)
-		if best, ok := s.cheapest(); ok {
-			return s.explained(best)
+		best, ok := s.cheapest()
+		switch {
+		case ok:
+			return s.fitting(best)
+		case c == 0 && len(s.found) > 0:
+			return s.close(s.found[0])
 		}
 	}
 	return s.unexplained("")
+}
+
+// rivalry is how much dearer a reading may be and still be a rival of the one
+// that is found, where the numbers hardly tell the two apart.
+const rivalry = 2
+
+// fitting judges the cheapest candidate that fits.
+func (s *search) fitting(best candidate) Result {
+	e := s.weigh(best, s.tried)
+	for c := best.cost + 1; c <= min(best.cost+rivalry, maxCost); c++ {
+		s.level(c)
+	}
+	switch {
+	case best.cost > 0 && !e.enough(best.cost):
+		return s.unexplained(e.doubt(best))
+	case best.cost > 0:
+		return s.result(Contradicted, best, e)
+	case best.inverse:
+		return s.result(AgreeInverse, best, e)
+	}
+	return s.result(Agree, best, e)
+}
+
+// close reports that the claims miss by so little that the digits may be to blame.
+func (s *search) close(best candidate) Result {
+	r := s.result(Undecided, best, evidence{})
+	r.Decided = false
+	r.Reason = fmt.Sprintf("as claimed they differ by %s, which is little more than the %s that the digits leave open",
+		degrees(best.residual), degrees(best.open))
+	return r
 }
 
 // cheapest finds the candidate of least cost that fits, and of those the
@@ -147,23 +177,6 @@ func order(x, y bool) int {
 	return -1
 }
 
-// agreement tells agreement from agreement as the reverse.
-func (s *search) agreement() Verdict {
-	if s.found[0].inverse {
-		return AgreeInverse
-	}
-	return Agree
-}
-
-// explained judges a candidate that fits although the claims do not.
-func (s *search) explained(best candidate) Result {
-	e := s.weigh(best, s.tried)
-	if !e.enough(best.cost) {
-		return s.unexplained(e.doubt(best))
-	}
-	return s.result(Contradicted, best, s.tried)
-}
-
 // doubt says why evidence is not enough.
 func (e evidence) doubt(c candidate) string {
 	if e.numbers < 3 && c.cost > e.numbers {
@@ -173,7 +186,7 @@ func (e evidence) doubt(c candidate) string {
 }
 
 func (s *search) unexplained(reason string) Result {
-	r := s.result(Unexplained, s.forward, s.tried)
+	r := s.result(Unexplained, s.forward, evidence{})
 	r.Best, r.Decided, r.Reason = r.Stated, false, reason
 	return r
 }

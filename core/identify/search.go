@@ -19,7 +19,7 @@ const arithmetic = 0x1p-49
 // candidate is a hypothesis with its measure.
 type candidate struct {
 	Hypothesis
-	key      Hypothesis  // its alias
+	key      alias
 	residual float64     // rad
 	open     float64     // rad: how far the digits leave the two rotations apart
 	at       rotor.Rotor // the rotation that a is
@@ -30,7 +30,7 @@ func (c candidate) near() bool { return c.residual <= margin*c.open }
 
 // search walks the hypotheses about two statements in order of cost.
 type search struct {
-	a, b    *side
+	a, b    side
 	inverse int // cost of taking one as the reverse of the other: 0 or 1
 	tried   int // hypotheses compared so far
 
@@ -51,11 +51,18 @@ func (s *search) level(c int) {
 			s.compare(a, b, b.rotor.Reverse(), relation{inverse: true}, c, s.inverseSet())
 		})
 	}
-	if c > maxWide {
-		return
+	for _, inverse := range [2]bool{false, true} {
+		rest, changes := c, changeSet(0)
+		if inverse {
+			rest, changes = c-s.inverse, s.inverseSet()
+		}
+		if s.a.mirrored != s.b.mirrored {
+			s.pairs(rest, func(a, b *reading) { s.flips(a, b, inverse, c, changes) })
+		}
+		if c <= maxWide {
+			s.wide(c, rest, inverse, changes)
+		}
 	}
-	s.wide(c, c, false, 0)
-	s.wide(c, c-s.inverse, true, s.inverseSet())
 }
 
 func (s *search) inverseSet() changeSet {
@@ -71,9 +78,6 @@ func (s *search) wide(c, rest int, inverse bool, changes changeSet) {
 	rel := relation{inverse: inverse}
 	if p := rest - HalfAngle.Cost(); p >= 0 && (s.a.powers || s.b.powers) {
 		s.pairs(p, func(a, b *reading) { s.halfAngle(a, b, rel, c, changes|set(HalfAngle)) })
-	}
-	if s.a.mirrored != s.b.mirrored {
-		s.pairs(rest, func(a, b *reading) { s.flips(a, b, rel, c, changes) })
 	}
 	if p := rest - Remap.Cost(); p >= 0 {
 		s.pairs(p, func(a, b *reading) { s.remap(a, b, rel, c, changes|set(Remap)) })
@@ -113,8 +117,8 @@ func (s *search) compare(a, b *reading, target rotor.Rotor, rel relation, cost i
 		return
 	}
 	c := candidate{residual: rotor.Angle(from, target), open: open, at: a.rotor}
-	c.Hypothesis = Hypothesis{A: a.how, B: b.how, relation: rel, changes: a.set | b.set | changes, cost: cost}
-	c.key = c.alias()
+	c.Hypothesis = Hypothesis{A: s.a.reading(a.code), B: s.b.reading(b.code), relation: rel, changes: a.set | b.set | changes, cost: cost}
+	c.key = s.aliasOf(a.code, b.code, rel)
 	if forward && c.residual < s.forward.residual {
 		s.forward = c
 	}
@@ -170,10 +174,10 @@ func (s *search) halfAngle(a, b *reading, rel relation, cost int, changes change
 
 // flips compares a rotation with a mirrored one whose negative is b or a: with
 // the half turn about an axis it has that axis negated before or after.
-func (s *search) flips(a, b *reading, rel relation, cost int, changes changeSet) {
+func (s *search) flips(a, b *reading, inverse bool, cost int, changes changeSet) {
 	for c := cube(1); c <= 3; c++ {
-		s.mapped(a, b, relation{inverse: rel.inverse, left: c}, cost, changes)
-		s.mapped(a, b, relation{inverse: rel.inverse, right: c}, cost, changes)
+		s.mapped(a, b, relation{inverse: inverse, left: c}, cost, changes)
+		s.mapped(a, b, relation{inverse: inverse, right: c}, cost, changes)
 	}
 }
 
@@ -198,7 +202,8 @@ func (s *search) remap(a, b *reading, rel relation, cost int, changes changeSet)
 	s.tried += 3 * 22 // each solution stands for 23 comparisons
 	if left := a.rotor.Mul(back); s.worth(cubeDot(left), a, b) {
 		s.mapped(a, b, relation{inverse: rel.inverse, left: nearestCube(left)}, cost, changes)
-		right := back.Mul(a.rotor) // as far from a cube as left is
+	}
+	if right := back.Mul(a.rotor); s.worth(cubeDot(right), a, b) {
 		s.mapped(a, b, relation{inverse: rel.inverse, right: nearestCube(right)}, cost, changes)
 	}
 	if math.Abs(math.Abs(a.rotor.S)-math.Abs(target.S)) > margin*(a.tol+b.tol+arithmetic) {

@@ -13,14 +13,44 @@ import (
 // maxCost bounds the set of hypotheses: readings are searched up to this sum of costs.
 const maxCost = 6
 
-// reading is a Reading with the rotation that follows from it.
+// reading is one way to take the numbers and the rotation that follows.
 type reading struct {
 	rotor rotor.Rotor
 	tol   float64
 	set   changeSet
 	cost  int8
-	how   Reading
+	code
 }
+
+// code is a Reading in few bytes: there may be a thousand of them.
+type code struct {
+	scalar     convention.ScalarPlace
+	unit       convention.Unit
+	parameters Parameters
+	mirrored   bool
+	way, name  uint8 // of turnNames
+	signs      uint8 // bit i: number i negated
+}
+
+// reading spells a code out.
+func (d *side) reading(c code) Reading {
+	r := Reading{Form: d.form, Scalar: c.scalar, Unit: c.unit, Parameters: c.parameters, Mirrored: c.mirrored}
+	if d.form == convention.Angles {
+		r.Turns = turnNames[c.way][c.name]
+		r.Turns.Negated = negations[c.signs]
+	}
+	return r
+}
+
+// negations spells out the bits of signs.
+var negations = func() (n [8][3]bool) {
+	for signs := range n {
+		for i := range 3 {
+			n[signs][i] = signs>>i&1 != 0
+		}
+	}
+	return n
+}()
 
 // side is one statement with its readings in order of cost. Readings of angles
 // are many, and made only when the search reaches their cost.
@@ -47,12 +77,13 @@ type unitReading struct {
 	cost int8
 }
 
-// newSide reads a statement. It says why not where it cannot.
-func newSide(s Statement) (*side, string) {
+// read starts d afresh on a statement, using its memory again. It says why
+// not where the statement cannot be read.
+func (d *side) read(s Statement) string {
 	if why := s.unreadable(); why != "" {
-		return nil, why
+		return why
 	}
-	d := &side{form: s.Form, units: unitReadings(s)}
+	*d = side{form: s.Form, units: unitReadings(s), readings: d.readings[:0]}
 	d.powers = s.Form == convention.Quaternion || s.Form == convention.RotationVector || s.Form == convention.AxisAngle
 	why := ""
 	switch s.Form {
@@ -66,10 +97,10 @@ func newSide(s Statement) (*side, string) {
 		why = d.axisAngle(s)
 	case convention.Angles:
 		d.angle(s)
-		return d, ""
+		return ""
 	}
 	d.sort()
-	return d, why
+	return why
 }
 
 // unitReadings gives the claimed unit, or both, and what they do to the
@@ -95,8 +126,7 @@ func (u unitReading) set() changeSet {
 	return 0
 }
 
-func (d *side) add(r rotor.Rotor, tol float64, s changeSet, cost int8, how Reading) {
-	how.Form = d.form
+func (d *side) add(r rotor.Rotor, tol float64, s changeSet, cost int8, how code) {
 	if unit, ok := r.Unit(); ok {
 		d.readings = append(d.readings, reading{unit, math.Min(tol, math.Pi), s, cost, how})
 	}
@@ -125,7 +155,7 @@ func (d *side) quaternion(s Statement) string {
 		if place == convention.ScalarLast {
 			r = rotor.FromQuaternion(n[3], n[0], n[1], n[2])
 		}
-		d.add(r, s.Tolerance, changes, cost, Reading{Scalar: place})
+		d.add(r, s.Tolerance, changes, cost, code{scalar: place})
 	}
 	if len(d.readings) == 0 {
 		return "all its numbers are zero"
@@ -139,10 +169,10 @@ func (d *side) matrix(s Statement) string {
 		order = convention.RowMajor
 	}
 	m, _ := matrix.FromFlat(s.Numbers, order)
-	how := Reading{}
+	how := code{}
 	var changes changeSet
 	if m.Det() < 0 {
-		m, how.Mirrored, d.mirrored = m.Scale(-1), true, true
+		m, how.mirrored, d.mirrored = m.Scale(-1), true, true
 		changes = set(Mirror)
 	}
 	rotation, distance, ok := matrix.Nearest(m)
@@ -159,17 +189,23 @@ func (d *side) matrix(s Statement) string {
 // anybody meant.
 const maxShear = 0.2
 
+// unmirror forgives a mirror.
+func (d *side) unmirror() {
+	d.readings[0].cost, d.readings[0].set = 0, 0
+	d.sort()
+}
+
 func (d *side) vector(s Statement) string {
 	v := rotor.Vec{X: s.Numbers[0], Y: s.Numbers[1], Z: s.Numbers[2]}
 	for _, u := range d.units {
-		d.add(rotor.FromRotationVector(v.Scale(u.unit.InRadians())), u.tol, u.set(), u.cost, Reading{Unit: u.unit})
+		d.add(rotor.FromRotationVector(v.Scale(u.unit.InRadians())), u.tol, u.set(), u.cost, code{unit: u.unit})
 	}
 	cost := int8(Kind.Cost())
-	d.add(rotor.FromGibbs(v), 2*s.Tolerance, set(Kind), cost, Reading{Parameters: Gibbs})
-	d.add(rotor.FromMRP(v), 4*s.Tolerance, set(Kind), cost, Reading{Parameters: MRP})
+	d.add(rotor.FromGibbs(v), 2*s.Tolerance, set(Kind), cost, code{parameters: Gibbs})
+	d.add(rotor.FromMRP(v), 4*s.Tolerance, set(Kind), cost, code{parameters: MRP})
 	if n := v.Dot(v); n < 1 {
 		r := rotor.FromQuaternion(math.Sqrt(1-n), v.X, v.Y, v.Z)
-		d.add(r, 2*s.Tolerance/r.S, set(Kind), cost, Reading{Parameters: VectorPart})
+		d.add(r, 2*s.Tolerance/r.S, set(Kind), cost, code{parameters: VectorPart})
 	}
 	return ""
 }
@@ -179,7 +215,7 @@ func (d *side) axisAngle(s Statement) string {
 	axis := rotor.Vec{X: n[0], Y: n[1], Z: n[2]}
 	for _, u := range d.units {
 		if r, ok := rotor.FromAxisAngle(axis, n[3]*u.unit.InRadians()); ok {
-			d.add(r, u.tol, u.set(), u.cost, Reading{Unit: u.unit})
+			d.add(r, u.tol, u.set(), u.cost, code{unit: u.unit})
 		}
 	}
 	if len(d.readings) == 0 {
@@ -271,18 +307,19 @@ func (d *side) makeTurns(c int8) {
 	}
 }
 
-func (d *side) addTurns(u, i, signs int, cost int8) {
-	how := turnNames[i][0]
-	how.Negated = [3]bool{signs&1 != 0, signs&2 != 0, signs&4 != 0}
-	changes := d.turns[i].set | d.units[u].set()
+func (d *side) addTurns(u, way, signs int, cost int8) {
+	n := &d.turns[way]
+	changes := n.set | d.units[u].set()
 	if signs != 0 {
 		changes |= set(AngleSign)
 	}
-	r := how.rotor(&d.halves[u])
+	turns := &turnNames[way][0]
+	r := turns.rotor(&d.halves[u], &negations[signs])
 	if d.reversed {
 		r = r.Reverse()
 	}
-	name := turnNames[i][d.turns[i].name]
-	name.Negated = how.Negated
-	d.readings = append(d.readings, reading{r, d.units[u].tol, changes, cost, Reading{Form: d.form, Unit: d.units[u].unit, Turns: name}})
+	d.readings = append(d.readings, reading{
+		r, d.units[u].tol, changes, cost,
+		code{unit: d.units[u].unit, way: uint8(way), name: n.name, signs: uint8(signs)},
+	})
 }

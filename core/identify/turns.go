@@ -35,15 +35,6 @@ func (t Turns) String() string {
 	return text
 }
 
-// moving names the same turns about moving axes.
-func (t Turns) moving() Turns {
-	if t.Sequence.Fixed {
-		t.Sequence = t.Sequence.Twin()
-		t.Order[0], t.Order[2] = t.Order[2], t.Order[0]
-	}
-	return t
-}
-
 // reverse names the turns that undo those of t, which are about moving axes:
 // the same ones backwards.
 func (t Turns) reverse() Turns {
@@ -149,15 +140,15 @@ func halfTurns(n []float64, unit float64) (h [3]halfTurn) {
 }
 
 // rotor multiplies the three turns of t, which are about moving axes.
-func (t Turns) rotor(h *[3]halfTurn) rotor.Rotor {
+func (t *Turns) rotor(h *[3]halfTurn, negated *[3]bool) rotor.Rotor {
 	a, b, c := h[t.Order[0]], h[t.Order[1]], h[t.Order[2]]
-	if t.Negated[t.Order[0]] {
+	if negated[t.Order[0]] {
 		a.sin = -a.sin
 	}
-	if t.Negated[t.Order[1]] {
+	if negated[t.Order[1]] {
 		b.sin = -b.sin
 	}
-	if t.Negated[t.Order[2]] {
+	if negated[t.Order[2]] {
 		c.sin = -c.sin
 	}
 	i, j, k := t.Sequence.Axes[0], t.Sequence.Axes[1], t.Sequence.Axes[2]
