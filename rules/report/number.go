@@ -12,29 +12,25 @@ import (
 // was stated, what is computed with the digits that show the difference, and the
 // difference itself with three digits.
 
-// statedText prints a stated number: ten digits hold what people write.
-func statedText(q rules.Quantity) string {
-	return significant(q.Value, 10)
-}
+// statedText prints a stated number: six digits hold what people state.
+func statedText(q rules.Quantity) string { return significant(q.Value, 6) }
 
 // computedText prints a computed number so that three digits of its distance
-// from the stated one are seen, and of a pure number near plus or minus one
-// its distance from that; else as a residual.
+// from the stated one are seen; without a stated one, from plus or minus one if
+// it is a pure number near them; else as a residual.
 func computedText(q, stated rules.Quantity) string {
-	distance := math.Inf(1)
-	if stated.Known && stated.Text == "" && stated.Unit == q.Unit {
-		distance = math.Abs(q.Value - stated.Value)
-	}
-	if d := math.Abs(math.Abs(q.Value) - 1); q.Unit == "" && d < 0.1 {
-		distance = min(distance, d)
-	}
+	distance := math.Abs(math.Abs(q.Value) - 1)
+	decimals := 0
 	switch {
-	case math.IsInf(distance, 1):
+	case stated.Known && stated.Text == "" && stated.Unit == q.Unit:
+		distance = math.Abs(q.Value - stated.Value)
+		if q.Unit == "deg" {
+			decimals = 1
+		}
+	case q.Unit != "" || distance >= 0.1:
 		return residualText(q)
-	case q.Unit == "deg":
-		return showing(q.Value, distance, 1)
 	}
-	return showing(q.Value, distance, 0)
+	return showing(q.Value, distance, decimals)
 }
 
 // residualText prints a distance or any other number with three digits. Of

@@ -41,7 +41,7 @@ func TestComputedShowsTheDifference(t *testing.T) {
 		want      string
 	}{
 		{1.021302, 1, "1.0213"}, {1.0000213, 1, "1.0000213"}, {0.99999871, 1, "0.99999871"}, {1 + 2.2e-16, 1, "1"},
-		{1, 1, "1"}, {-0.9999871, 1, "-0.9999871"}, {32.8604, 31.5, "32.86"}, {0.0123, 0, "0.0123"}, {0, 1, "0"},
+		{1, 1, "1"}, {-0.9999871, 1, "-1"}, {32.8604, 31.5, "32.86"}, {0.0123, 0, "0.0123"}, {0, 1, "0"},
 		{1e-17, 0, "1e-17"}, {90, 1.5707963, "90"}, {0.001, 57, "0.001"}, {1.5e9, 1, "1500000000"},
 	} {
 		assert.Equal(t, c.want, computedText(rules.Plain(c.x), rules.Plain(c.stated)), "%v for %v", c.x, c.stated)
@@ -55,6 +55,7 @@ func TestComputedShowsTheDifference(t *testing.T) {
 	assert.Equal(t, "1.02", computedText(inDegrees(1.02131), alone), "one degree is nothing special")
 	assert.Equal(t, "31.5", statedText(inDegrees(31.5)))
 	assert.Equal(t, "0.1", statedText(rules.Plain(0.1)))
+	assert.Equal(t, "75.3156", statedText(inDegrees(75.31564289)))
 }
 
 // What is printed is near what was meant: to half a unit of the third digit of
@@ -97,7 +98,7 @@ func TestTablesAlign(t *testing.T) {
 			}
 			rows = append(rows, e)
 		}
-		lines := evidence(rows)
+		lines := evidence(rows, 0)
 		points := map[int]bool{}
 		for _, l := range lines[1:] {
 			number := strings.TrimSuffix(l, " deg")
@@ -115,6 +116,27 @@ func TestEvidenceShowsOnlyColumnsWithContent(t *testing.T) {
 	assert.Equal(t, []string{
 		"evidence     residual",
 		"  as stated  23.4 deg",
-	}, evidence([]rules.Evidence{{What: "as stated", Residual: inDegrees(23.4137)}}))
-	assert.Equal(t, []string{"evidence", "  and 3 more rows"}, evidence([]rules.Evidence{{What: "and 3 more rows"}}))
+	}, evidence([]rules.Evidence{{What: "as stated", Residual: inDegrees(23.4137)}}, 0))
+	assert.Equal(t, []string{"evidence", "  and 3 more rows"}, evidence([]rules.Evidence{{What: "and 3 more rows"}}, 0))
+}
+
+// Long words are folded in their own column; numbers stand on the first line.
+func TestTablesFoldWords(t *testing.T) {
+	rows := []rules.Evidence{
+		{What: "with one the reverse of the other (a conjugate, a transpose or the opposite direction), the second turning twice as far", Residual: inDegrees(29.4)},
+		{What: "as stated", Stated: rules.Words("angles, z-y'-x'' (moving axes), degree, v_body = R v_cam"), Residual: inDegrees(5.27)},
+	}
+	assert.Equal(t, []string{
+		"evidence                                              stated                                  residual",
+		"  with one the reverse of the other (a conjugate, a                                            29.4 deg",
+		"    transpose or the opposite direction), the second",
+		"    turning twice as far",
+		"  as stated                                           angles, z-y'-x'' (moving axes), degree,   5.27 deg",
+		"                                                      v_body = R v_cam",
+	}, evidence(rows, 0))
+	for _, wide := range []int{80, 100} {
+		for _, l := range evidence(rows, wide) {
+			assert.LessOrEqual(t, width(l), wide, l)
+		}
+	}
 }

@@ -7,19 +7,26 @@ import (
 	"dextral/rules"
 )
 
-// cell is one entry of a column: words, or a number taken apart at its point.
+// cell is one entry of a column: words on one line or more, or a number taken
+// apart at its point.
 type cell struct {
-	words       string
+	words       []string
 	whole, rest string // rest begins with the point, the exponent or the unit
 	number      bool
 }
+
+// maxWords and maxWhat bound the columns of words; longer ones are folded.
+const (
+	maxWords = 40
+	maxWhat  = 52
+)
 
 func cellOf(q rules.Quantity, text func(rules.Quantity) string) cell {
 	switch {
 	case !q.Known:
 		return cell{}
 	case q.Text != "":
-		return cell{words: clean(q.Text)}
+		return cell{words: wrap(clean(q.Text), maxWords, true)}
 	}
 	s := text(q)
 	c := cell{whole: s, number: true}
@@ -42,7 +49,9 @@ type column struct {
 func newColumn(head string, cells []cell) column {
 	c := column{head: head, cells: cells}
 	for _, e := range cells {
-		c.words = max(c.words, width(e.words))
+		for _, l := range e.words {
+			c.words = max(c.words, width(l))
+		}
 		c.whole, c.rest = max(c.whole, width(e.whole)), max(c.rest, width(e.rest))
 	}
 	c.wide = max(c.words, c.whole+c.rest, width(head))
@@ -60,10 +69,14 @@ func (c column) heading() string {
 	return strings.Repeat(" ", c.wide-width(c.head)) + c.head
 }
 
-// entry is a cell at the width of the column: points below each other.
-func (c column) entry(e cell) string {
-	if !e.number {
-		return pad(e.words, c.wide)
+// entry is a line of a cell at the width of the column: points below each other.
+func (c column) entry(row, line int) string {
+	e := c.cells[row]
+	switch {
+	case !e.number && line < len(e.words):
+		return pad(e.words[line], c.wide)
+	case !e.number || line > 0:
+		return strings.Repeat(" ", c.wide)
 	}
 	s := strings.Repeat(" ", c.whole-width(e.whole)) + e.whole + pad(e.rest, c.rest)
 	if c.words > 0 {
@@ -72,37 +85,77 @@ func (c column) entry(e cell) string {
 	return strings.Repeat(" ", c.wide-width(s)) + s
 }
 
-// evidence lays out the table: a heading and one line a row, with the columns
-// that have content. The first column of the heading is named evidence.
-func evidence(rows []rules.Evidence) []string {
-	const name = "evidence"
-	what := width(name) - 2
+// evidence lays out the table: a heading and the rows, with the columns that
+// have content. The first column of the heading is named evidence; its words
+// are folded so that the table keeps to a width, if one is given and it can.
+func evidence(rows []rules.Evidence, limit int) []string {
 	var stated, computed, residual []cell
 	for _, r := range rows {
-		what = max(what, width(clean(r.What)))
 		stated = append(stated, cellOf(r.Stated, statedText))
 		computed = append(computed, cellOf(r.Computed, func(q rules.Quantity) string { return computedText(q, r.Stated) }))
 		residual = append(residual, cellOf(r.Residual, residualText))
 	}
-	heading := name + strings.Repeat(" ", what+2-width(name))
-	lines := make([]string, len(rows))
-	for i, r := range rows {
-		lines[i] = "  " + pad(clean(r.What), what)
-	}
+	var columns []column
+	room := maxWhat + 2
 	for _, c := range []column{newColumn("stated", stated), newColumn("computed", computed), newColumn("residual", residual)} {
-		if c.empty() {
-			continue
-		}
-		heading += "  " + c.heading()
-		for i := range lines {
-			lines[i] += "  " + c.entry(c.cells[i])
+		if !c.empty() {
+			columns = append(columns, c)
+			limit -= c.wide + 2
 		}
 	}
-	table := append([]string{heading}, lines...)
+	if limit > 0 {
+		room = min(room, limit)
+	}
+	whats, what := labels(rows, room)
+	heading := pad("evidence", what)
+	for _, c := range columns {
+		heading += "  " + c.heading()
+	}
+	table := []string{heading}
+	for i := range rows {
+		for line := range tallest(columns, i, len(whats[i])) {
+			l := ""
+			if line < len(whats[i]) {
+				l = whats[i][line]
+			}
+			l = pad(l, what)
+			for _, c := range columns {
+				l += "  " + c.entry(i, line)
+			}
+			table = append(table, l)
+		}
+	}
 	for i := range table {
 		table[i] = strings.TrimRight(table[i], " ")
 	}
 	return table
+}
+
+// labels folds the first column, indented below the heading, and returns its
+// width.
+func labels(rows []rules.Evidence, room int) (folded [][]string, wide int) {
+	wide = width("evidence")
+	for _, r := range rows {
+		var lines []string
+		for i, l := range wrap(clean(r.What), room-4, width(clean(r.What)) > room-2) {
+			indent := "  "
+			if i > 0 {
+				indent = "    "
+			}
+			lines = append(lines, indent+l)
+			wide = max(wide, width(indent+l))
+		}
+		folded = append(folded, lines)
+	}
+	return folded, wide
+}
+
+// tallest is the number of lines of a row.
+func tallest(columns []column, row, lines int) int {
+	for _, c := range columns {
+		lines = max(lines, len(c.cells[row].words))
+	}
+	return lines
 }
 
 // grouped prints a count with commas: 12,400.

@@ -35,7 +35,7 @@ func (p *printer) finding(f *rules.Finding) {
 		label(faint, "at", rowText(f.Place))
 	}
 	if len(f.Evidence) > 0 {
-		table := evidence(f.Evidence)
+		table := evidence(f.Evidence, p.o.Width-2)
 		p.line("  " + p.styled(faint, table[0]))
 		for _, l := range table[1:] {
 			p.line("  " + l)
