@@ -127,7 +127,7 @@ func TestTablesFoldWords(t *testing.T) {
 		{What: "as stated", Stated: rules.Words("angles, z-y'-x'' (moving axes), degree, v_body = R v_cam"), Residual: inDegrees(5.27)},
 	}
 	assert.Equal(t, []string{
-		"evidence                                              stated                                  residual",
+		"evidence                                              stated                                    residual",
 		"  with one the reverse of the other (a conjugate, a                                            29.4 deg",
 		"    transpose or the opposite direction), the second",
 		"    turning twice as far",

@@ -80,7 +80,7 @@ func sizeText(v *rules.Value) string {
 func claimText(c rules.Claim, near rules.Place) string {
 	s := clean(c.Says.String()) + ", by " + c.Source.String()
 	if c.Text != "" {
-		s += " " + quoted(clean(c.Text))
+		s += " " + quoted(shortened(clean(c.Text)))
 	}
 	switch {
 	case c.Place.Line == 0 || c.Source == rules.Shape:
@@ -98,4 +98,15 @@ func quoted(s string) string {
 		return "'" + s + "'"
 	}
 	return `"` + s + `"`
+}
+
+// maxQuoted bounds the words of a file that a reading quotes: who wants the
+// whole comment has its line.
+const maxQuoted = 60
+
+func shortened(s string) string {
+	if runes := []rune(s); len(runes) > maxQuoted {
+		return strings.TrimRight(string(runes[:maxQuoted-3]), " ") + "..."
+	}
+	return s
 }

@@ -151,6 +151,8 @@ func TestReadingsGolden(t *testing.T) {
 	for _, l := range strings.Split(b.String(), "\n") {
 		assert.LessOrEqual(t, width(l), 80, l)
 	}
+	assert.Equal(t, strings.Repeat("é", 60), shortened(strings.Repeat("é", 60)))
+	assert.Equal(t, strings.Repeat("é", 57)+"...", shortened(strings.Repeat("é", 61)))
 	b.Reset()
 	require.NoError(t, Readings(&b, nil, Options{}))
 	assert.Equal(t, "0 orientation values: 0 read, 0 undecided\n", b.String())
