@@ -13,6 +13,7 @@ type Number struct {
 	Half        float64 // half a unit of the last digit shown, in the entry's own unit
 	Significant int     // digits shown from the first non-zero one; 0 for a zero
 	Lead        int     // decimal exponent of the first significant digit
+	Padded      bool    // ends in a zero that only a writer of a fixed number of digits keeps: 0.50, 1.000
 }
 
 // Integer reports whether the value is a whole number, however it is written:
@@ -55,7 +56,11 @@ func Read(text string) (Number, bool) {
 	if err != nil {
 		return Number{}, false
 	}
-	n := Number{Value: value, Half: halfUnit(exponent - len(fraction))}
+	n := Number{
+		Value:  value,
+		Half:   halfUnit(exponent - len(fraction)),
+		Padded: len(fraction) > 1 && strings.HasSuffix(fraction, "0"),
+	}
 	if digits := strings.TrimLeft(whole+fraction, "0"); digits != "" {
 		n.Significant = len(digits)
 		n.Lead = exponent - len(fraction) + len(digits) - 1

@@ -18,16 +18,18 @@
 //
 // Whole numbers show no precision: 90 may be a right angle or the rounded
 // 90.3, and 0 and 1 are exact in most matrices. They do not make a group
-// coarse. Nor does an entry such as 0.5 beside 0.8660254037844387: a writer
-// that prints the shortest text has dropped its zeros (see Of).
+// coarse, unless zeros are written out, as in 1.000. Nor does an entry such as
+// 0.5 beside 0.8660254037844387: a writer of the shortest text has dropped its
+// zeros (see Of).
 //
 // # Arithmetic
 //
 // Before a number is printed it is computed. Unless a file is declared to hold
-// float64, dextral assumes float32, whose rounding unit is u = 2^-24, and allows
-// four roundings of that size relative to the size of the group. The sum of
-// both, h + 4u, bounds the error of an entry. That floor corresponds to 0.00003 degrees
-// for a quaternion and never hides a convention.
+// float64, dextral assumes float32, whose rounding unit is u = 2^-24, and
+// allows eight roundings of that size, relative to the size of the group: as
+// many as a quaternion has behind it that was normalised and made into a
+// matrix. The sum h + 8u bounds the error of an entry. That floor is worth
+// 0.0001 degrees for a quaternion and never hides a convention.
 //
 // # From entries to angles
 //
@@ -41,6 +43,7 @@
 //	three angles           sqrt(5) h = 2.2 h
 //	rotation vector        sqrt(3) h = 1.7 h
 //	unit axis              sqrt(3) h = 1.7 h
+//	axis and angle         sqrt(13) h = 3.6 h
 //
 // Two descriptions of one orientation may differ by the sum of their bounds.
 //

@@ -17,27 +17,33 @@ const (
 )
 
 // Of is the precision of a group of printed numbers: half a unit of the last
-// digit of the coarsest entry that is not a whole number. Entries that end in
-// dropped zeros count with the digits of their longest sibling, and so do
-// whole numbers, with six at least; zeros do not count.
+// digit of the coarsest entry that is not a whole number.
+//
+// If no entry is Padded, the writer may print the shortest text that will do. Then entries that
+// end in dropped zeros count with the digits of their longest sibling. So do
+// whole numbers, with six at least. Zeros count only if they are padded.
 func Of(numbers ...Number) Precision {
-	longest := usual
+	longest, padded := usual, false
 	for _, n := range numbers {
 		longest = max(longest, n.Significant)
+		padded = padded || n.Padded
 	}
 	half := 0.0
 	for _, n := range numbers {
-		half = math.Max(half, n.halfAmong(longest))
+		half = math.Max(half, n.halfAmong(longest, padded))
 	}
 	return Precision{Half: half}
 }
 
-// halfAmong is the half unit of n in a group whose longest entry shows so many digits.
-func (n Number) halfAmong(longest int) float64 {
+// halfAmong is the half unit of n in a group whose longest entry shows so many
+// digits, and of which an entry may be padded.
+func (n Number) halfAmong(longest int, padded bool) float64 {
 	switch {
+	case n.Padded:
+		return n.Half
 	case n.Significant == 0:
 		return 0
-	case n.Integer() || longest-n.Significant >= dropped:
+	case n.Integer(), !padded && longest-n.Significant >= dropped:
 		return math.Min(n.Half, halfUnit(n.Lead-longest+1))
 	}
 	return n.Half

@@ -14,11 +14,11 @@ const (
 )
 
 // steps is the number of roundings that an honest number may have behind it
-// when it is written. Normalising a quaternion q/|q| takes four squares and
-// three sums (relative error of |q|^2 at most 4 units, of |q| half of that), a
-// square root and a division, one unit each: four units. Writing the matrix
-// of a unit quaternion takes as many for each entry off the diagonal.
-const steps = 4
+// when it is written. To normalise a quaternion q/|q| takes four squares and
+// three sums (at most 4 units for |q|^2, half of that for |q|), a square root
+// and a division, one unit each: the norm is off by 4 units. Its matrix is of second
+// degree in it, and off by twice that.
+const steps = 8
 
 // Precision is what is known about the rounding of a group of numbers.
 //
@@ -131,6 +131,14 @@ func (p Precision) RotationVector(unit convention.Unit) float64 {
 // components of a unit vector: asin(sqrt(3) h).
 func (p Precision) Axis() float64 {
 	return p.angle(arcsin(math.Sqrt(3) * p.entry(1)))
+}
+
+// AxisAngle bounds the orientation error, in radians, of a printed unit axis
+// and angle. An error of the axis turns the rotation by up to twice as much, at a half
+// turn, about lines perpendicular to the axis, along which that of the angle turns it.
+func (p Precision) AxisAngle(unit convention.Unit) float64 {
+	turn := math.Pi / unit.InRadians()
+	return p.angle(math.Hypot(2*arcsin(math.Sqrt(3)*p.entry(1)), p.entry(turn)*unit.InRadians()))
 }
 
 // Angle bounds the error, in radians, of one printed angle.
