@@ -34,8 +34,8 @@ func properRotation(v *Value) *Finding {
 }
 
 func mirrored(v *Value, claim Claim, m matrix.Mat3) *Finding {
-	f := finding(MirroredRotation, v, claim, "%s claims a %s, but its determinant is %s: it mirrors; %s",
-		v.name(), v.Form, digits(m.Det()), mirrorEffect)
+	f := finding(MirroredRotation, v, claim, "%s claims a %s, but its determinant is %.4g: it mirrors; %s",
+		v.name(), v.Form, m.Det(), mirrorEffect)
 	f.Evidence = []Evidence{
 		{What: "determinant", Stated: Plain(1), Computed: Plain(m.Det()), Residual: Plain(m.Det() - 1)},
 		{What: "defect |M^T M - 1|", Stated: Plain(0), Computed: Plain(matrix.Defect(m))},

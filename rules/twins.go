@@ -121,11 +121,28 @@ func reverseOfEachOther(a, b *Value, r identify.Result) *Finding {
 
 func reconciled(a, b *Value, r identify.Result) *Finding {
 	worst := slices.MaxFunc(r.Best.Changes, func(x, y identify.Change) int { return x.Cost() - y.Cost() })
-	f := twinFinding(ruleOf[worst], a, b, r, "%s and %s state one orientation, but as stated they differ by %s; they agree %s, to %s",
-		b.name(), a.name(), degrees(r.Stated.Residual), r.Best, degrees(r.Best.Residual))
-	f.Message = fmt.Sprintf("%s and %s state one orientation; they agree, to %s, only %s; as stated they differ by %s",
+	if misread(worst, a.Form) && !misread(worst, b.Form) {
+		a, b = b, a // the finding belongs to the value that is read another way
+	}
+	return twinFinding(ruleOf[worst], a, b, r, "%s and %s state one orientation; they agree, to %s, only if taken %s; as stated they differ by %s",
 		b.name(), a.name(), degrees(r.Best.Residual), r.Best, degrees(r.Stated.Residual))
-	return f
+}
+
+// misread reports whether a change concerns the reading of values of a form.
+func misread(c identify.Change, f convention.Form) bool {
+	switch c {
+	case identify.ScalarOrder:
+		return f == convention.Quaternion
+	case identify.MovingFixed, identify.Sequence, identify.AngleOrder, identify.AngleSign:
+		return f == convention.Angles
+	case identify.UnitSlip:
+		return f == convention.Angles || f == convention.RotationVector || f == convention.AxisAngle
+	case identify.Transposed, identify.Mirror:
+		return f == convention.Rotation || f == convention.Transform
+	case identify.Kind:
+		return f == convention.RotationVector || f == convention.Angles
+	}
+	return false
 }
 
 func unexplained(a, b *Value, r identify.Result) *Finding {
@@ -133,25 +150,31 @@ func unexplained(a, b *Value, r identify.Result) *Finding {
 		b.name(), a.name(), degrees(r.Stated.Residual))
 }
 
-// twinFinding places a finding at b, the value that is not the reference, with
-// the readings tried as evidence.
+// twinFinding places a finding at b, with the readings tried as evidence: the
+// stated one, the one that fits, and the next.
 func twinFinding(rule string, a, b *Value, r identify.Result, message string, args ...any) *Finding {
 	f := finding(rule, b, Claim{}, message, args...)
 	f.Level = twinLevel(a, b, r.Best.Changes)
 	f.Claim = fmt.Sprintf("one orientation with %s", a.Key)
-	f.Related = []Related{{a.Place, "the other statement, " + a.name()}}
-	f.Evidence = append(f.Evidence, Evidence{What: "as stated", Stated: Words(b.Reading()), Residual: Degrees(r.Stated.Residual)})
-	for i, c := range r.Classes {
-		if i == maxReadings {
+	f.Related = []Related{{a.Place, fmt.Sprintf("%s: %s", a.name(), a.Reading())}}
+	f.Evidence = []Evidence{{What: "as stated", Stated: Words(b.Reading()), Residual: Degrees(r.Stated.Residual)}}
+	rows := 1
+	for _, c := range r.Classes {
+		if len(r.Stated.Readings) > 0 && c.String() == r.Stated.String() {
+			continue
+		}
+		if rows == maxReadings {
 			break
 		}
+		rows++
 		f.Evidence = append(f.Evidence, Evidence{What: c.String(), Residual: Degrees(c.Residual)})
 	}
 	return f
 }
 
-// maxReadings bounds the readings listed under a finding.
-const maxReadings = 4
+// maxReadings bounds the readings listed under a finding, the stated one
+// included.
+const maxReadings = 3
 
 // subjectOf names the subject on which a change contradicts a claim.
 var subjectOf = map[identify.Change]convention.Subject{
