@@ -1,0 +1,158 @@
+package identify
+
+import (
+	"math"
+	"math/rand/v2"
+	"testing"
+
+	"dextral/core/angle"
+	"dextral/core/convention"
+	"dextral/core/rotor"
+	"dextral/core/tolerance"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+)
+
+// ring draws edges that close, with translations, written with six decimals.
+func ring(g *rand.Rand, n int) []Edge {
+	edges := make([]Edge, n)
+	rest := step{r: rotor.One}
+	for i := range n {
+		s := step{haar(g), rotor.Vec{X: g.NormFloat64(), Y: g.NormFloat64(), Z: g.NormFloat64()}}
+		if i == n-1 {
+			s = rest.reverse()
+		}
+		rest = rest.after(s)
+		back := g.IntN(2) == 0
+		if back {
+			s = s.reverse()
+		}
+		edges[i] = edgeOf(s, convention.Rotation, Claim{})
+		edges[i].Backward = back
+	}
+	return edges
+}
+
+func edgeOf(s step, form convention.Form, c Claim) Edge {
+	d := decimals(6)
+	st := d.roundTo(Statement{Form: form, Claim: c, Numbers: write(form, s.r, c)}, c.Unit)
+	t := rotor.Vec{X: d.round(s.t.X), Y: d.round(s.t.Y), Z: d.round(s.t.Z)}
+	return Edge{Statement: st, T: &t, Slack: tolerance.Precision{Half: 0.5e-6}.Norm(3, 1)}
+}
+
+func TestLoopsClose(t *testing.T) {
+	g := rand.New(rand.NewPCG(3, 4))
+	for n := 2; n < 7; n++ {
+		for range 200 {
+			r := Loop(ring(g, n))
+			require.Equal(t, Agree, r.Verdict, "%+v", r)
+		}
+	}
+}
+
+// spoil changes edge i in one way and names it.
+func spoil(g *rand.Rand, e *Edge, how Change) {
+	d := new(side)
+	if why := d.read(e.Statement); why != "" {
+		panic(why)
+	}
+	s := step{d.at(0)[0].rotor, *e.T}
+	back := e.Backward
+	c := Claim{}
+	form := convention.Rotation
+	switch how {
+	case Inverse:
+		s = s.reverse()
+	case Transposed:
+		s.r = s.r.Reverse()
+	case ScalarOrder:
+		form, c.Scalar = convention.Quaternion, convention.ScalarFirst
+	case MovingFixed, UnitSlip, Sequence:
+		form, c.Label, c.Unit = convention.Angles, fullLabel(angle.Sequence{Axes: [3]angle.Axis{angle.Z, angle.Y, angle.X}}), convention.Degree
+	case Remap:
+		s.r = cubes[1+g.IntN(23)].Mul(s.r)
+	}
+	*e = edgeOf(s, form, c)
+	e.Backward = back
+	switch how {
+	case ScalarOrder:
+		e.Claim.Scalar = convention.ScalarLast
+	case MovingFixed:
+		e.Claim.Label = fullLabel(angle.Sequence{Axes: [3]angle.Axis{angle.Z, angle.Y, angle.X}, Fixed: true})
+	case Sequence:
+		e.Claim.Label = fullLabel(angle.Sequence{Axes: [3]angle.Axis{angle.Z, angle.X, angle.Y}})
+	case UnitSlip:
+		e.Claim.Unit = convention.Radian
+	}
+}
+
+func TestOneWrongEdgeIsFound(t *testing.T) {
+	g := rand.New(rand.NewPCG(5, 6))
+	for _, how := range []Change{Inverse, Transposed, ScalarOrder, MovingFixed, UnitSlip, Sequence, Remap} {
+		for range 100 {
+			edges := ring(g, 3+g.IntN(3))
+			i := g.IntN(len(edges))
+			spoil(g, &edges[i], how)
+			r := Loop(edges)
+			require.Equal(t, Contradicted, r.Verdict, "%s: %+v", how, r)
+			require.True(t, r.Decided(), "%s: %v", how, r.Repairs)
+			assert.Equal(t, i, r.Repairs[0].Edge, how)
+			assert.Equal(t, []Change{how}, r.Repairs[0].Changes)
+			assert.Less(t, r.Repairs[0].Gap, r.OpenGap*20)
+		}
+	}
+}
+
+func TestTwoEdgesShareTheBlame(t *testing.T) {
+	g := rand.New(rand.NewPCG(7, 8))
+	edges := ring(g, 2)
+	spoil(g, &edges[0], Inverse)
+	r := InversePair(edges[0], edges[1])
+	assert.Equal(t, Contradicted, r.Verdict)
+	assert.Len(t, r.Repairs, 2)
+	assert.False(t, r.Decided())
+}
+
+func TestNoiseIsNotBlamedOnAnEdge(t *testing.T) {
+	g := rand.New(rand.NewPCG(9, 10))
+	wrong := 0
+	const n = 2000
+	for range n {
+		edges := ring(g, 4)
+		i := g.IntN(4)
+		d := new(side)
+		require.Empty(t, d.read(edges[i].Statement))
+		s := step{d.at(0)[0].rotor, *edges[i].T}
+		back := edges[i].Backward
+		if g.IntN(2) == 0 {
+			s.r = haar(g) // another orientation altogether
+		} else {
+			s.r = s.r.Mul(small(g)) // a worse calibration
+		}
+		edges[i] = edgeOf(s, convention.Rotation, Claim{})
+		edges[i].Backward = back
+		if r := Loop(edges); r.Verdict == Contradicted || r.Verdict == Agree {
+			wrong++
+			t.Logf("%+v", r)
+		}
+	}
+	assert.LessOrEqual(t, float64(wrong)/n, 1e-3)
+}
+
+func TestComposition(t *testing.T) {
+	g := rand.New(rand.NewPCG(11, 12))
+	a, b := step{haar(g), rotor.Vec{X: 1}}, step{haar(g), rotor.Vec{Y: 2}}
+	whole := edgeOf(a.after(b), convention.Rotation, Claim{})
+	parts := []Edge{edgeOf(a, convention.Rotation, Claim{}), edgeOf(b, convention.Rotation, Claim{})}
+	assert.Equal(t, Agree, Compose(parts, whole).Verdict)
+	assert.Equal(t, Unexplained, Compose([]Edge{parts[1], parts[0]}, whole).Verdict)
+}
+
+func TestBadLoops(t *testing.T) {
+	assert.Equal(t, Undecided, Loop(nil).Verdict)
+	bad := Edge{Statement: Statement{Form: convention.Quaternion, Numbers: []float64{math.NaN(), 0, 0, 1}}}
+	r := Loop([]Edge{bad, bad})
+	assert.Equal(t, Undecided, r.Verdict)
+	assert.Contains(t, r.Reason, "edge 1")
+}
