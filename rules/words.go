@@ -9,17 +9,28 @@ import (
 	"dextral/core/rotor"
 )
 
-// degrees prints an angle given in radians as degrees with three significant
-// digits, and no more than the eye needs above 100.
-func degrees(rad float64) string { return digits(rad*180/math.Pi) + " deg" }
+// degrees prints an angle given in radians as degrees, with three significant
+// digits down to a thousandth of a degree and one below.
+func degrees(rad float64) string {
+	deg := rad * 180 / math.Pi
+	if a := math.Abs(deg); a > 0 && a < 1e-3 {
+		return strconv.FormatFloat(deg, 'g', 1, 64) + " deg"
+	}
+	return significant(deg) + " deg"
+}
 
 // digits prints a number for people: near one with as many digits as show the
 // deviation from one, elsewhere with three significant ones.
 func digits(x float64) string {
-	if d := math.Abs(math.Abs(x) - 1); d > 0 && d < 0.1 {
+	if d := math.Abs(math.Abs(x) - 1); d > 0 && d < 0.5 {
 		places := min(2-int(math.Floor(math.Log10(d))), 12)
-		return strconv.FormatFloat(x, 'f', places, 64)
+		return trimZeros(strconv.FormatFloat(x, 'f', places, 64))
 	}
+	return significant(x)
+}
+
+// significant prints three significant digits, and those before the point.
+func significant(x float64) string {
 	switch a := math.Abs(x); {
 	case a == 0 || a >= 1e7 || a < 1e-5:
 		return strconv.FormatFloat(x, 'g', 3, 64)

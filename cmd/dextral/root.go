@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"strings"
 
 	"github.com/spf13/cobra"
 )
@@ -63,10 +64,21 @@ contradiction with the numbers that prove it.`,
 		Version:       version(),
 		SilenceErrors: true,
 		SilenceUsage:  true,
-		Args:          cobra.NoArgs,
+		Args:          knownCommand,
 		RunE:          func(c *cobra.Command, _ []string) error { return c.Help() },
 	}
 	root.SuggestionsMinimumDistance = 2
 	root.AddCommand(auditCommand(s), readingsCommand(s), rulesCommand(s))
 	return root
+}
+
+// knownCommand says which command was perhaps meant.
+func knownCommand(c *cobra.Command, args []string) error {
+	if len(args) == 0 {
+		return nil
+	}
+	if near := c.SuggestionsFor(args[0]); len(near) > 0 {
+		return fmt.Errorf("there is no command %q; did you mean %s?", args[0], strings.Join(near, " or "))
+	}
+	return fmt.Errorf("there is no command %q; dextral help lists them", args[0])
 }
