@@ -10,6 +10,7 @@ import (
 	"go/token"
 	"go/types"
 	"os"
+	pathpkg "path"
 	"path/filepath"
 	"slices"
 	"strings"
@@ -22,27 +23,27 @@ import (
 // one module, and looks in this order:
 //
 //	the compiler's export data, where the go command could produce it
-//	the module's own source, for packages that do not compile or could not be listed
+//	the source of the tree's own modules, for packages that do not compile or could
+//	not be listed, such as those of a workspace
 //	package math in short, without the go command
 //
 // What it does not find, the type checker replaces by an empty package.
 type library struct {
-	fset   *token.FileSet
-	root   string // directory of the module; "" for none
-	module string // path of the module; "" if unknown
+	fset    *token.FileSet
+	modules map[string]string // directories of the tree's modules by path; read-only
 
 	mu      sync.Mutex
 	exports map[string]string         // export data by package id
 	read    map[string]*types.Package // from export data
-	source  map[string]*types.Package // from the module's source; nil while being read
+	source  map[string]*types.Package // from the tree's source; nil while being read
 	guessed bool                      // types of some package are known in part alone
 }
 
 var errUnknown = errors.New("its types are not known on this machine: it is not downloaded, or does not compile")
 
-func newLibrary(root string) *library {
+func newLibrary(modules map[string]string) *library {
 	return &library{
-		fset: token.NewFileSet(), root: root, module: modulePath(root),
+		fset: token.NewFileSet(), modules: modules,
 		exports: map[string]string{}, read: map[string]*types.Package{}, source: map[string]*types.Package{},
 	}
 }
@@ -108,21 +109,22 @@ func (b *library) export(id, name string) (*types.Package, error) {
 	return gcexportdata.Read(data, b.fset, b.read, id)
 }
 
-// directory is where the module keeps a package of its own.
+// directory is where the tree keeps a package of its own: in the module whose
+// path is the longest head of the package's.
 func (b *library) directory(id string) (string, bool) {
-	if b.module == "" {
-		return "", false
+	for path := id; path != "." && path != "/"; path = pathpkg.Dir(path) {
+		root, ok := b.modules[path]
+		if !ok {
+			continue
+		}
+		dir := filepath.Join(root, filepath.FromSlash(strings.TrimPrefix(id, path)))
+		info, err := os.Stat(dir)
+		return dir, err == nil && info.IsDir()
 	}
-	rest, ok := strings.CutPrefix(id, b.module)
-	if !ok || rest != "" && rest[0] != '/' {
-		return "", false
-	}
-	dir := filepath.Join(b.root, filepath.FromSlash(rest))
-	info, err := os.Stat(dir)
-	return dir, err == nil && info.IsDir()
+	return "", false
 }
 
-// fromSource checks the declarations of a package of the module, as far as
+// fromSource checks the declarations of a package of the tree, as far as
 // they type-check. The lock is held: imports are read one at a time.
 func (b *library) fromSource(id, dir string) (*types.Package, error) {
 	if pkg, begun := b.source[id]; begun {
@@ -180,9 +182,6 @@ func parseDirectory(fset *token.FileSet, dir string) []*ast.File {
 
 // modulePath is the path that a go.mod declares; "" if it declares none.
 func modulePath(root string) string {
-	if root == "" {
-		return ""
-	}
 	text, err := os.ReadFile(filepath.Join(root, "go.mod"))
 	if err != nil {
 		return ""

@@ -20,7 +20,7 @@ const batch = 200
 // module audits the folders of one module, or all folders outside any module.
 func (l *loader) module(ctx context.Context, folders []*folder) {
 	root := folders[0].root
-	lib := newLibrary(root)
+	lib := newLibrary(l.modules)
 	var units []*unit
 	if root == "" {
 		units = alone(folders, lib)
@@ -110,7 +110,7 @@ func list(ctx context.Context, dir string, env, patterns []string, mode packages
 // moduleEnvironment keeps the go command from downloading and from writing to
 // the user's tree: no proxy, no version control, no other toolchain, no change
 // of go.mod or go.sum. A go.work file is not used, since the go command may
-// write a go.work.sum beside it.
+// write a go.work.sum beside it; the library knows the tree's other modules.
 func moduleEnvironment() []string {
 	return append(os.Environ(),
 		"GOPROXY=off", "GONOPROXY=none", "GOVCS=*:off", "GOTOOLCHAIN=local",

@@ -50,7 +50,7 @@ type Failure struct {
 // values in them are not returned. Trouble with the input is part of the
 // result; the error is that of the context alone.
 func Load(ctx context.Context, files []File) (*Result, error) {
-	l := &loader{printed: map[string]string{}, slots: make(chan struct{}, runtime.GOMAXPROCS(0))}
+	l := &loader{printed: map[string]string{}, modules: map[string]string{}, slots: make(chan struct{}, runtime.GOMAXPROCS(0))}
 	folders := l.survey(ctx, files)
 	modules := group(folders)
 	l.each(ctx, len(modules), func(i int) { l.module(ctx, modules[i]) })
@@ -64,6 +64,7 @@ func Load(ctx context.Context, files []File) (*Result, error) {
 type loader struct {
 	slots   chan struct{}     // one for each package in work
 	printed map[string]string // printed path by absolute name; read-only after survey
+	modules map[string]string // directories of modules by path; read-only after survey
 	// base is the directory of some file, printedBase how it is printed.
 	base, printedBase string
 

@@ -54,12 +54,17 @@ func (l *loader) survey(ctx context.Context, files []File) []*folder {
 	roots := map[string]string{}
 	kept := folders[:0]
 	for i, f := range folders {
+		f.root = moduleRoot(f.dir, roots)
 		if !speaks[i] {
 			l.result.Silent += len(f.files)
 			continue
 		}
-		f.root = moduleRoot(f.dir, roots)
 		kept = append(kept, f)
+	}
+	for _, root := range roots {
+		if path := modulePath(root); root != "" && path != "" {
+			l.modules[path] = root
+		}
 	}
 	return kept
 }

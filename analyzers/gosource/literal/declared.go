@@ -11,7 +11,7 @@ import (
 func declared(files []*ast.File, info *types.Info) map[types.Object][]*ast.CommentGroup {
 	all := map[types.Object][]*ast.CommentGroup{}
 	add := func(name *ast.Ident, groups ...*ast.CommentGroup) {
-		if object, list := info.Defs[name], remarks(groups...); object != nil && len(list) > 0 {
+		if object, list := info.Defs[name], present(groups...); object != nil && len(list) > 0 {
 			all[object] = list
 		}
 	}

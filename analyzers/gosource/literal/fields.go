@@ -10,10 +10,18 @@ import (
 // member is a named expression: a field of a struct literal, a variable of a
 // declaration block.
 type member struct {
-	name    string
-	ident   ast.Node // where the name stands; nil if it is not written
-	value   ast.Expr // nil if it is left out, which makes it zero
-	remarks []*ast.CommentGroup
+	name     string
+	ident    ast.Node // where the name stands; nil if it is not written
+	value    ast.Expr // nil if it is left out, which makes it zero
+	comments []*ast.CommentGroup
+}
+
+func (m member) label() label {
+	l := label{text: m.name}
+	if m.ident != nil {
+		l.at = span{m.ident.Pos(), m.ident.End()}
+	}
+	return l
 }
 
 // typeOf is the underlying type of a literal, through a pointer.
@@ -96,7 +104,6 @@ var components = [][4]string{
 	{"a", "b", "c", "d"},
 	{"q0", "q1", "q2", "q3"},
 	{"qw", "qx", "qy", "qz"},
-	{"q1", "q2", "q3", "q4"},
 }
 
 // scalars and vectors are the names of the two parts of a quaternion that
@@ -113,7 +120,7 @@ func fourFields(names []string) ([4]string, bool) {
 		return [4]string{}, false
 	}
 	for _, set := range components {
-		if set != [4]string{"q1", "q2", "q3", "q4"} && hasAll(names, set[:]) {
+		if hasAll(names, set[:]) {
 			return set, true
 		}
 	}

@@ -1,10 +1,11 @@
 package literal
 
 import (
-	"go/ast"
-	"go/types"
+	"regexp"
+	"slices"
 	"strings"
 
+	"dextral/analyzers/claims"
 	"dextral/core/convention"
 	"dextral/rules"
 )
@@ -12,220 +13,268 @@ import (
 // verdict is what the words about a literal make of numbers of its shape.
 type verdict struct {
 	form convention.Form
-	by   *label // the label that says so
-	says string // the words of it that say so
 	from rules.Source
+	text string // the words that say so
+	at   span   // where they stand; empty for names of types
 	why  string // why it is undecided
 }
 
-// none is the verdict where nothing speaks of an orientation.
-var none verdict
-
-// speech is the words about a literal, label by label.
+// speech is what is said about a literal: names, the nearest first, and
+// comments.
 type speech struct {
-	labels []label
-	words  [][]string
+	labels  []label
+	remarks []remark
+	ordered bool // keys give each number its place: words about the order of components say nothing
 }
 
-func speechOf(labels []label) speech {
-	s := speech{labels: labels, words: make([][]string, len(labels))}
-	for i, l := range labels {
-		s.words[i] = split(l.text)
+// speech reads the names and comments of a site.
+func (w *walker) speech(s site) speech {
+	said := speech{labels: slices.Clone(s.labels), remarks: w.remarks(s)}
+	for i := range said.labels {
+		said.labels[i].name = w.nameOf(said.labels[i].text)
 	}
-	return s
+	return said
 }
 
-// find returns the first label of a kind that has one of the words.
-func (s speech) find(kind labelKind, set map[string]bool) *label {
-	for i := range s.labels {
-		if s.labels[i].kind == kind && hasAny(s.words[i], set) {
-			return &s.labels[i]
+// nameOf reads a name, once for each file.
+func (w *walker) nameOf(text string) *claims.Name {
+	if w.names[text] == nil {
+		read := text
+		if exportedQ.MatchString(text) {
+			read = "q" + text[1:]
+		}
+		n := claims.Read(read)
+		n.Text = text
+		w.names[text] = n
+	}
+	return w.names[text]
+}
+
+// exportedQ is the customary qBodyCam where Go wants a capital.
+var exportedQ = regexp.MustCompile(`^Q[A-Z][a-z]`)
+
+func (l label) stated(f convention.Form) verdict {
+	return verdict{form: f, from: rules.Label, text: l.text, at: l.at}
+}
+
+func (l label) inferred(f convention.Form) verdict {
+	return verdict{form: f, from: rules.Name, text: l.text, at: l.at}
+}
+
+func (l label) undecided(f convention.Form, why string) verdict {
+	return verdict{form: f, from: rules.Name, text: l.text, at: l.at, why: why}
+}
+
+// by takes over what the lexicon makes of a name.
+func (l label) by(m claims.Meaning) verdict {
+	return verdict{form: m.Form, from: m.Source, text: l.text, at: l.at, why: m.Why}
+}
+
+// denied reports that a name or a comment says that this is something else: a
+// rate, a covariance, a colour, no rotation.
+func (s speech) denied() bool {
+	for _, l := range s.labels {
+		if l.kind != ofPackage && l.name.Not != "" || l.kind < ofType && isOther(l.name) {
+			return true
 		}
 	}
-	return nil
+	for _, r := range s.remarks {
+		if r.comment.Not {
+			return true
+		}
+	}
+	return false
 }
 
-// names returns the first label of the value or around it that has one of the words.
-func (s speech) names(sets ...map[string]bool) *label {
-	for _, kind := range []labelKind{ofValue, ofOuter} {
-		for _, set := range sets {
-			if l := s.find(kind, set); l != nil {
-				return l
+// remarked returns the form that a comment states. A type that is declared as
+// a quaternion says no more than its name does: that its values are numbers of
+// an algebra.
+func (s speech) remarked(forms ...convention.Form) (verdict, bool) {
+	for _, r := range s.remarks {
+		for _, f := range forms {
+			if r.comment.Form == f && !(r.onType && f == convention.Quaternion) {
+				return verdict{form: f, from: rules.Comment, text: r.text(), at: r.at}, true
 			}
 		}
 	}
-	return nil
+	return verdict{}, false
 }
 
-// custom returns the value's own label if it satisfies a test of words.
-func (s speech) custom(test func(words []string) bool) *label {
-	for i := range s.labels {
-		if s.labels[i].kind != ofType && test(s.words[i]) {
-			return &s.labels[i]
+// saysRotation reports a full word for a rotation or an orientation.
+func saysRotation(n *claims.Name) bool {
+	m := n.Form(claims.Nine)
+	return m.Form == convention.Rotation && m.Source == rules.Label
+}
+
+func saysQuaternion(n *claims.Name) bool {
+	m := n.Form(claims.Four)
+	return m.Form == convention.Quaternion && m.Source == rules.Label
+}
+
+// typeLabel returns the first name of the type that satisfies a test. Rotor is
+// a word for quaternions among types, and for wheels elsewhere.
+func (s speech) typeLabel(test func(n *claims.Name) bool) (label, bool) {
+	for _, l := range s.labels {
+		if l.kind >= ofType && test(l.name) {
+			return l, true
 		}
 	}
-	return nil
+	return label{}, false
 }
 
-// other reports that a name of the value speaks of something else than an
-// orientation: a rate, a covariance, a colour.
-func (s speech) other() bool {
-	return s.find(ofValue, otherWords) != nil || s.find(ofOuter, otherWords) != nil
+func isQuaternionType(n *claims.Name) bool {
+	return saysQuaternion(n) || strings.EqualFold(n.Text, "rotor")
 }
 
-func stated(form convention.Form, by *label) verdict {
-	return verdict{form: form, by: by, from: rules.Label}
-}
-
-func inferred(form convention.Form, by *label) verdict {
-	return verdict{form: form, by: by, from: rules.Name}
-}
-
-func undecided(form convention.Form, by *label, why string) verdict {
-	return verdict{form: form, by: by, from: rules.Name, why: why}
-}
-
-// ofFour reads four numbers. Named says that they are named like the
-// components of a quaternion.
+// ofFour reads four numbers. Named says that they are the fields of a struct
+// that are called like the components of a quaternion: a plane and a colour may
+// have such fields, so that either a name or the type must speak of a rotation.
 func (s speech) ofFour(named bool) verdict {
-	if s.other() || s.find(ofType, otherWords) != nil {
-		return none
+	if s.denied() {
+		return verdict{}
 	}
-	if l := s.names(quaternionWords); l != nil {
-		return stated(convention.Quaternion, l)
+	quaternionType, isQuaternion := s.typeLabel(isQuaternionType)
+	for _, l := range s.labels {
+		if l.kind >= ofType {
+			continue
+		}
+		m := l.name.Form(claims.Four)
+		switch {
+		case m.Form != convention.Quaternion && named, m.Form == convention.NoForm:
+			continue
+		case isQuaternion && saysRotation(l.name):
+			return l.stated(convention.Quaternion)
+		}
+		if m.Source < rules.Label {
+			if v, ok := s.remarked(convention.Quaternion); ok {
+				return v
+			}
+		}
+		return l.by(m)
 	}
-	quaternionType := s.find(ofType, quaternionWords)
-	rotationType := s.find(ofType, rotationWords)
-	if l := s.names(rotationWords, transformWords); l != nil && (quaternionType != nil || named) {
-		return stated(convention.Quaternion, l)
-	} else if l != nil && s.names(rotationWords) != nil {
-		return undecided(convention.Quaternion, l, "four numbers of a rotation may be a quaternion or an axis and an angle")
+	if v, ok := s.remarked(convention.Quaternion, convention.AxisAngle); ok && (!named || v.form == convention.Quaternion) {
+		return v
 	}
-	if rotationType != nil && (quaternionType != nil || named) {
-		return stated(convention.Quaternion, rotationType)
+	rotationType, isRotation := s.typeLabel(saysRotation)
+	switch {
+	case isQuaternion && isRotation: // attitude.Quaternion
+		return quaternionType.stated(convention.Quaternion)
+	case isQuaternion && s.hasMount():
+		return quaternionType.stated(convention.Quaternion)
+	case isQuaternion:
+		return quaternionType.inferred(convention.Quaternion)
+	case isRotation && named:
+		return rotationType.stated(convention.Quaternion)
 	}
-	if quaternionType != nil {
-		return inferred(convention.Quaternion, quaternionType)
-	}
-	if s.find(ofType, shapeWords) != nil {
-		return none
-	}
-	if l := s.custom(func(words []string) bool { return leads(words, "q") }); l != nil {
-		return inferred(convention.Quaternion, l)
-	}
-	return none
+	return verdict{}
 }
 
-// ofMatrix reads three by three numbers, or more where a rigid transform has them.
-func (s speech) ofMatrix(rows, cols int) verdict {
-	if s.other() || s.find(ofType, otherWords) != nil {
-		return none
+// hasMount reports a name of the value that speaks of how something is mounted.
+func (s speech) hasMount() bool {
+	return slices.ContainsFunc(s.labels, func(l label) bool { return l.kind < ofType && saysMount(l.name) })
+}
+
+// saysMount reports a name that speaks of how something is mounted: the
+// lexicon takes a matrix of that name for a rotation.
+func saysMount(n *claims.Name) bool {
+	return claims.Read(n.Text+"Matrix").Form(claims.Nine).Form == convention.Rotation
+}
+
+// ofMatrix reads three by three numbers, or more where a rigid transform has
+// them. Programs are full of matrices that are neither; a bare matrix and a
+// transform that may scale are left alone.
+func (s speech) ofMatrix(rows, cols int, numbers []rules.Number) verdict {
+	if s.denied() {
+		return verdict{}
 	}
-	form := convention.Rotation
+	shape, form := claims.Nine, convention.Rotation
 	if rows*cols > 9 {
-		form = convention.Transform
+		shape, form = claims.Rigid, convention.Transform
 	}
-	if l := s.names(rotationWords); l != nil {
-		return stated(form, l)
+	if v, ok := s.remarked(convention.Rotation); ok {
+		v.form = form
+		return v
 	}
-	if l := s.find(ofType, rotationWords); l != nil {
-		return stated(form, l)
+	for _, l := range s.labels {
+		m := l.name.Form(shape)
+		switch {
+		case m.Form != form:
+			continue
+		case m.Source < rules.Label && len(l.text) == 1:
+			return l.undecided(form, "one letter may as well name the noise or the model of a filter")
+		case m.Source < rules.Label && shape == claims.Rigid && !isRigid(l):
+			continue
+		}
+		return l.by(m)
 	}
-	if l := s.names(transformWords); l != nil && form == convention.Transform && !strings.EqualFold(l.text, "transform") {
-		return inferred(form, l)
+	for _, l := range s.labels {
+		if l.kind < ofType && shape == claims.Nine && l.name.SpeaksOfAxisMap(true) && isSignedPermutation(numbers) {
+			return l.inferred(convention.AxisMap)
+		}
 	}
-	letters := "rc"
-	if form == convention.Transform {
-		letters = "t"
+	return verdict{}
+}
+
+// isSignedPermutation reports nine numbers of which each row and each column
+// has one that is 1 or -1, and zeros.
+func isSignedPermutation(numbers []rules.Number) bool {
+	var rows, cols [3]float64
+	for i, n := range numbers {
+		if n.Value != 0 && n.Value*n.Value != 1 {
+			return false
+		}
+		rows[i/3] += n.Value * n.Value
+		cols[i%3] += n.Value * n.Value
 	}
-	frames := func(words []string) bool {
-		return leads(words, letters) && hasAny(words[1:], frameWords) || joinsFrames(words)
-	}
-	if l := s.custom(frames); l != nil {
-		return inferred(form, l)
-	}
-	if l := s.custom(func(words []string) bool { return len(words) == 1 && words[0] == "r" }); l != nil && s.find(ofOuter, transformWords) != nil {
-		return inferred(form, l)
-	}
-	return none
+	ones := [3]float64{1, 1, 1}
+	return rows == ones && cols == ones
+}
+
+// isRigid reports a 4x4 that is said to be rigid though no word is full: by
+// the word for a rotation, or by the customary T_cam_imu. A transform of four
+// by four may scale and project, and rgbToXYZ is no transform of frames.
+func isRigid(l label) bool {
+	_, _, subscripts := claims.SubscriptFrames(l.text)
+	return subscripts || saysRotation(l.name)
 }
 
 // ofThree reads three numbers of a list or of an x-y-z struct.
 func (s speech) ofThree() verdict {
-	if s.other() {
-		return none
+	if s.denied() {
+		return verdict{}
 	}
-	if l := s.names(vectorWords); l != nil {
-		return stated(convention.RotationVector, l)
-	}
-	if l := s.custom(func(words []string) bool { return has(words, "rotation", "vector") || has(words, "rot", "vec") }); l != nil {
-		return stated(convention.RotationVector, l)
-	}
-	if l := s.names(anglesWords); l != nil {
-		return stated(convention.Angles, l)
-	}
-	if l := s.custom(func(words []string) bool { return has(words, "roll", "pitch", "yaw") }); l != nil {
-		return stated(convention.Angles, l)
-	}
-	if l := s.find(ofType, anglesWords); l != nil {
-		return stated(convention.Angles, l)
-	}
-	if l := s.custom(func(words []string) bool { return words[len(words)-1] == "axis" }); l != nil {
-		return inferred(convention.Axis, l)
-	}
-	if l := s.names(rotationWords); l != nil {
-		return undecided(convention.NoForm, l, "three numbers of a rotation may be angles or a rotation vector")
-	}
-	return none
-}
-
-// has reports whether all of these are among the words.
-func has(words []string, wanted ...string) bool {
-	for _, want := range wanted {
-		if !hasAny(words, map[string]bool{want: true}) {
-			return false
+	said, remarked := s.remarked(convention.Angles, convention.RotationVector)
+	for _, l := range s.labels {
+		m := l.name.Form(claims.Three)
+		if m.Form == convention.NoForm && m.Why == "" || m.Why != "" && l.kind >= ofType {
+			continue
 		}
-	}
-	return true
-}
-
-// typeLabels are the names of a type that speak about its values: its own, and
-// that of its package (attitude.Quaternion).
-func (w *walker) typeLabels(t types.Type) []label {
-	if p, ok := types.Unalias(t).(*types.Pointer); ok {
-		t = p.Elem()
-	}
-	var list []label
-	for {
-		alias, ok := t.(*types.Alias)
-		if !ok {
+		if remarked && m.Source < rules.Label {
 			break
 		}
-		list = append(list, w.nameOf(alias.Obj())...)
-		t = alias.Rhs()
+		return l.by(m)
 	}
-	if named, ok := t.(*types.Named); ok {
-		list = append(list, w.nameOf(named.Obj())...)
-	}
-	return list
+	return said
 }
 
-func (w *walker) nameOf(object *types.TypeName) []label {
-	list := []label{{text: object.Name(), kind: ofType}}
-	if pkg := object.Pkg(); pkg != nil {
-		list = append(list, label{text: pkg.Name(), kind: ofType})
-	}
-	return list
+// others are words of programs that the lexicon of calibration files lacks: the
+// numbers of such a variable have the shape of an orientation and are none, or
+// are one that need not be unit.
+var others = map[string]bool{
+	"dot": true, "deriv": true, "derivative": true, "dual": true, "sum": true, "total": true,
+	"diff": true, "difference": true, "plane": true, "rect": true, "raw": true, "unnormalized": true,
+	"unnormalised": true, "random": true, "noisy": true, "zero": true, "point": true, "position": true,
+	"acc": true, "accum": true, "tmp": true, "temp": true,
 }
 
-// writtenType are the names of a literal's type as written, for types that
-// could not be resolved.
-func writtenType(lit *ast.CompositeLit) []label {
-	switch t := lit.Type.(type) {
-	case *ast.Ident:
-		return []label{{text: t.Name, kind: ofType}}
-	case *ast.SelectorExpr:
-		return []label{{text: t.Sel.Name, kind: ofType}, {text: types.ExprString(t.X), kind: ofType}}
+func isOther(n *claims.Name) bool {
+	if strings.Contains(n.Stem, "spin") && n.Form(claims.Three).Form != convention.Axis {
+		return true // a spin is a rate; a spin axis is an axis
 	}
-	return nil
+	for word := range strings.SplitSeq(n.Stem, "_") {
+		if others[word] {
+			return true
+		}
+	}
+	return false
 }

@@ -5,6 +5,7 @@ import (
 	"go/ast"
 	"go/token"
 	"go/types"
+	"slices"
 	"strings"
 
 	"dextral/analyzers/source"
@@ -13,17 +14,14 @@ import (
 )
 
 // keep records a value that a literal states.
-func (w *walker) keep(s site, lit *ast.CompositeLit, v verdict, value *rules.Value) {
+func (w *walker) keep(s site, said speech, lit *ast.CompositeLit, v verdict, value *rules.Value) {
 	value.Place = w.place(lit.Lbrace, lit.End())
-	if object := w.typeName(lit); object != nil {
-		s.remarks = append(s.remarks, w.declared[object]...)
-	}
-	w.finish(s, v, value)
+	w.finish(s, said, v, value)
 }
 
 // finish gives a value its key and claims and puts it on the list, or on that
 // of skipped ones.
-func (w *walker) finish(s site, v verdict, value *rules.Value) {
+func (w *walker) finish(s site, said speech, v verdict, value *rules.Value) {
 	switch {
 	case w.inTest:
 		w.skipped(value.Place, InTest)
@@ -33,25 +31,25 @@ func (w *walker) finish(s site, v verdict, value *rules.Value) {
 		return
 	}
 	value.Key, value.Why = w.unique(s.key), v.why
-	if len(s.labels) > 0 && s.labels[0].kind == ofValue && s.labels[0].from.IsValid() {
-		value.KeyAt = w.place(s.labels[0].from, s.labels[0].to)
+	if len(s.labels) > 0 && s.labels[0].kind == ofValue && s.labels[0].at.from.IsValid() {
+		value.KeyAt = w.place(s.labels[0].at.from, s.labels[0].at.to)
 	}
 	if v.form != convention.NoForm {
-		value.Claims = append(value.Claims, rules.Claim{Says: v.form, Source: v.from, Text: v.by.text, Place: w.labelPlace(*v.by, value)})
+		w.claim(value, v.form, v.from, v.text, v.at)
 	}
-	w.terms(s, value)
+	w.terms(said, value)
 	w.values = append(w.values, value)
-	if s.group != alone && value.Why == "" {
-		w.stems[value] = twin{group: s.group, stem: stem(s.name())}
+	if s.group != alone && value.Why == "" && len(said.labels) > 0 {
+		w.stems[value] = twin{group: s.group, stem: said.labels[0].name.Stem}
 	}
 }
 
-// labelPlace is where a label stands; names of types count where the value is.
-func (w *walker) labelPlace(l label, value *rules.Value) rules.Place {
-	if !l.from.IsValid() {
-		return value.Place
+// withType adds to a site what the declaration of the literal's type says.
+func (w *walker) withType(s site, lit *ast.CompositeLit) site {
+	if object := w.typeName(lit); object != nil {
+		s.onType = append(slices.Clip(s.onType), w.declared[object]...)
 	}
-	return w.place(l.from, l.to)
+	return s
 }
 
 // unique numbers keys that occur again in a file: q, q#2.
@@ -97,8 +95,8 @@ func (w *walker) typeName(lit *ast.CompositeLit) types.Object {
 	return nil
 }
 
-// fieldRemarks are the comments on the declaration of a field.
-func (w *walker) fieldRemarks(lit *ast.CompositeLit, name string) []*ast.CommentGroup {
+// onField are the comments on the declaration of a field.
+func (w *walker) onField(lit *ast.CompositeLit, name string) []*ast.CommentGroup {
 	t, ok := w.typeOf(lit).(*types.Struct)
 	if !ok {
 		return nil
@@ -132,10 +130,10 @@ func (w *walker) place(from, to token.Pos) rules.Place {
 	if file == nil {
 		return rules.Place{Path: w.base.Name()}
 	}
-	return w.source(file).Place(w.span(file, from, to))
+	return w.source(file).Place(offsets(file, from, to))
 }
 
-func (w *walker) span(file *token.File, from, to token.Pos) source.Span {
+func offsets(file *token.File, from, to token.Pos) source.Span {
 	size := file.Size()
 	start := min(max(file.Offset(from), 0), size)
 	end := min(max(int(to)-file.Base(), start), size)
@@ -153,4 +151,45 @@ func (w *walker) startsLine(pos token.Pos) bool {
 // groupOf names a struct literal, whose fields may describe each other.
 func (w *walker) groupOf(lit *ast.CompositeLit) string {
 	return fmt.Sprintf("{%d}", w.base.Offset(lit.Pos()))
+}
+
+// typeLabels are the names of a type that speak about its values: its own, and
+// that of its package (attitude.Quaternion).
+func typeLabels(t types.Type) []label {
+	if p, ok := types.Unalias(t).(*types.Pointer); ok {
+		t = p.Elem()
+	}
+	var list []label
+	for {
+		alias, ok := t.(*types.Alias)
+		if !ok {
+			break
+		}
+		list = append(list, namesOf(alias.Obj())...)
+		t = alias.Rhs()
+	}
+	if named, ok := t.(*types.Named); ok {
+		list = append(list, namesOf(named.Obj())...)
+	}
+	return list
+}
+
+func namesOf(object *types.TypeName) []label {
+	list := []label{{text: object.Name(), kind: ofType}}
+	if pkg := object.Pkg(); pkg != nil {
+		list = append(list, label{text: pkg.Name(), kind: ofPackage})
+	}
+	return list
+}
+
+// writtenType are the names of a literal's type as written, for types that
+// could not be resolved.
+func writtenType(lit *ast.CompositeLit) []label {
+	switch t := lit.Type.(type) {
+	case *ast.Ident:
+		return []label{{text: t.Name, kind: ofType}}
+	case *ast.SelectorExpr:
+		return []label{{text: t.Sel.Name, kind: ofType}, {text: types.ExprString(t.X), kind: ofPackage}}
+	}
+	return nil
 }

@@ -6,6 +6,7 @@ import (
 	"go/token"
 	"go/types"
 	"math"
+	"slices"
 	"strconv"
 
 	"dextral/core/tolerance"
@@ -106,30 +107,41 @@ func isFloat(t types.Type) bool {
 }
 
 // text is a number as it is written, where it is a number that is written:
-// signs, parentheses and conversions around it are dropped. The digits of an
-// expression are those of the coarsest number in it, so that 2*0.7071 counts
-// as known to four digits and math.Sqrt2/2 as exact.
+// parentheses and conversions around it are dropped. The digits of an expression
+// are those of the coarsest number in it, so that 2*0.35355 counts as known to
+// five digits and math.Sqrt2/2 as exact.
 func (w *walker) text(e ast.Expr, x float64) string {
 	if sign, lit := w.written(e); lit != nil {
 		return sign + lit.Value
 	}
-	digits := -1
+	shortest := strconv.FormatFloat(x, 'g', -1, 64)
+	if digits := coarsest(e); digits > 0 {
+		if coarse := strconv.FormatFloat(x, 'g', digits, 64); len(coarse) < len(shortest) {
+			return coarse
+		}
+	}
+	return shortest
+}
+
+// coarsest is the number of digits of the coarsest number in an expression; 0
+// if all are exact. Factors such as 0.5 and 0.25 are, and so are arguments of
+// functions: nobody rounds before taking a root or a cosine.
+func coarsest(e ast.Expr) int {
+	const fewest = 3
+	digits := 0
 	ast.Inspect(e, func(n ast.Node) bool {
-		if lit, ok := n.(*ast.BasicLit); ok && lit.Kind == token.FLOAT {
-			if read, ok := tolerance.Read(lit.Value); ok && !read.Integer() && (digits < 0 || read.Significant < digits) {
+		switch n := n.(type) {
+		case *ast.CallExpr:
+			return false
+		case *ast.BasicLit:
+			read, ok := tolerance.Read(n.Value)
+			if ok && !read.Integer() && read.Significant >= fewest && (digits == 0 || read.Significant < digits) {
 				digits = read.Significant
 			}
 		}
 		return true
 	})
-	shortest := strconv.FormatFloat(x, 'g', -1, 64)
-	if digits < 0 {
-		return shortest
-	}
-	if coarse := strconv.FormatFloat(x, 'g', digits, 64); len(coarse) < len(shortest) {
-		return coarse
-	}
-	return shortest
+	return digits
 }
 
 // written finds the literal under signs, parentheses and conversions.
@@ -171,34 +183,28 @@ func (w *walker) read(e ast.Expr) (block, bool) {
 	if !ok || len(entries) == 0 || len(entries) > 16 {
 		return block{}, false
 	}
-	var all block
+	parts := make([]block, len(entries))
+	var shape *block
 	for i, entry := range entries {
-		part := block{numbers: []rules.Number{w.zero(lit)}}
-		if entry != nil {
-			if part, ok = w.read(entry); !ok {
-				return block{}, false
-			}
+		if entry == nil {
+			continue
 		}
-		if i == 0 {
-			all.dims = append([]int{len(entries)}, part.dims...)
-		} else if !equalDims(all.dims[1:], part.dims) {
+		if parts[i], ok = w.read(entry); !ok || shape != nil && !slices.Equal(shape.dims, parts[i].dims) {
 			return block{}, false
 		}
-		all.numbers = append(all.numbers, part.numbers...)
+		shape = &parts[i]
 	}
-	return all, len(all.dims) <= 2
-}
-
-func equalDims(a, b []int) bool {
-	if len(a) != len(b) {
-		return false
+	if shape == nil || len(shape.dims) > 1 {
+		return block{}, false
 	}
-	for i := range a {
-		if a[i] != b[i] {
-			return false
+	all := block{dims: append([]int{len(entries)}, shape.dims...)}
+	for i, entry := range entries {
+		if entry == nil { // left out: zeros
+			parts[i].numbers = slices.Repeat([]rules.Number{w.zero(lit)}, len(shape.numbers))
 		}
+		all.numbers = append(all.numbers, parts[i].numbers...)
 	}
-	return true
+	return all, true
 }
 
 // zero is an entry that the literal leaves out: Go makes it 0.

@@ -6,107 +6,94 @@ import (
 	"slices"
 	"strings"
 
-	"dextral/core/angle"
+	"dextral/analyzers/claims"
 	"dextral/core/convention"
 	"dextral/rules"
 )
 
-// roleOf names what a member is called after: one of three angles.
-var roleOf = map[string]angle.Role{
-	"roll": angle.RoleRoll, "pitch": angle.RolePitch, "yaw": angle.RoleYaw, "heading": angle.RoleYaw, "bank": angle.RoleRoll,
-	"phi": angle.RoleNone, "theta": angle.RoleNone, "psi": angle.RoleNone,
-}
-
-// unitOf are units as the last words of names.
-var unitOf = map[string]convention.Unit{
-	"deg": convention.Degree, "degs": convention.Degree, "degree": convention.Degree, "degrees": convention.Degree,
-	"rad": convention.Radian, "rads": convention.Radian, "radian": convention.Radian, "radians": convention.Radian,
-}
-
-// slot is a member's part in a group: its key within the group, and what is
-// left of its name.
-type slot struct {
-	part string // roll, w, axis
-	stem string // the other words, which the members of a group share
-	unit string // the unit word, if the name ends with one
-}
-
-// slotOf reads a member's name as [stem] part [unit]; false if no word is a part.
-func slotOf(name string, isPart func(stem []string, word string) bool) (slot, bool) {
-	words := split(name)
-	unit := ""
-	if n := len(words); n > 1 && unitOf[words[n-1]] != convention.UnitUnstated {
-		unit, words = words[n-1], words[:n-1]
-	}
-	if len(words) == 0 {
-		return slot{}, false
-	}
-	stem, last := words[:len(words)-1], words[len(words)-1]
-	if !isPart(stem, last) || hasAny(stem, otherWords) {
-		return slot{}, false
-	}
-	return slot{part: last, stem: strings.Join(stem, " "), unit: unit}, true
-}
-
-// scattered finds orientations spread over several members: roll, pitch and
-// yaw in three fields, qw, qx, qy and qz in four, an axis and its angle in two.
-// It returns the names of the members that need no reading of their own.
+// scattered finds orientations that are spread over several members: roll,
+// pitch and yaw in three fields, qw, qx, qy and qz in four, an axis and its
+// angle in two. It returns the names of the members that need no reading of
+// their own.
 func (w *walker) scattered(s site, members []member) map[string]bool {
-	used := map[string]bool{}
-	w.triples(s, members)
-	w.quadruples(s, members)
-	w.axisAngles(s, members, used)
-	return used
-}
-
-// gather groups members whose names differ in one part alone.
-func gather(members []member, isPart func(stem []string, word string) bool) (groups map[slot][]member, order []slot) {
-	groups = map[slot][]member{}
+	groups := map[string][]component{}
+	var order []string
 	for _, m := range members {
-		at, ok := slotOf(m.name, isPart)
-		if !ok {
+		c, ok := w.nameOf(m.name).Component()
+		if !ok || !w.belongs(s, m, c) {
 			continue
 		}
-		at.part = ""
-		if groups[at] == nil {
-			order = append(order, at)
+		key := c.Group + "\x00" + string(rune('0'+c.Set))
+		if groups[key] == nil {
+			order = append(order, key)
 		}
-		groups[at] = append(groups[at], m)
+		groups[key] = append(groups[key], component{c, m})
 	}
-	return groups, order
+	for _, key := range order {
+		if group := groups[key]; isLiteral(group[0].value) {
+			w.triad(s, group)
+		} else {
+			w.components(s, group)
+		}
+	}
+	return w.axisAngles(s, members)
 }
 
-// partOf is the part that a member plays.
-func partOf(m member) string {
-	words := split(m.name)
-	if n := len(words); n > 1 && unitOf[words[n-1]] != convention.UnitUnstated {
-		return words[n-2]
-	}
-	return words[len(words)-1]
+// component is a member that plays a part in a value.
+type component struct {
+	claims.Component
+	member
 }
 
-// triples finds three angles. Their order is that in which they are written.
-func (w *walker) triples(s site, members []member) {
-	groups, order := gather(members, func(_ []string, word string) bool { _, ok := roleOf[word]; return ok })
-	for _, at := range order {
-		group := groups[at]
-		parts := make([]string, len(group))
-		for i, m := range group {
-			parts[i] = partOf(m)
-		}
-		slices.Sort(parts)
-		switch strings.Join(parts, " ") {
-		case "pitch roll yaw", "heading pitch roll", "bank heading pitch", "phi psi theta":
-		default:
-			continue
-		}
-		slices.SortStableFunc(group, func(a, b member) int { return position(a) - position(b) })
-		value := &rules.Value{Form: convention.Angles}
-		for i, m := range group {
-			value.Roles[i] = roleOf[partOf(m)]
-		}
-		w.group(s, at, group, value)
+// belongs reports a name that is that of a component here: roll and qw speak
+// for themselves; w and q0 need words of orientation before or around them, and
+// x, y and z are axes in what is called a frame.
+func (w *walker) belongs(s site, m member, c claims.Component) bool {
+	switch c.Set {
+	case claims.Turns, claims.QLetters:
+		return true
+	case claims.AxisSet:
+		return isLiteral(m.value)
+	case claims.Letters:
+		return c.Lead != "" && w.nameOf(c.Lead).Orients() ||
+			c.Index > 0 && isLiteral(m.value) && slices.ContainsFunc(s.labels, func(l label) bool { return w.nameOf(l.text).SpeaksOfAxes() })
+	case claims.QDigits:
+		return slices.ContainsFunc(s.labels, func(l label) bool { return w.nameOf(l.text).Orients() })
 	}
+	return false
+}
+
+func isLiteral(e ast.Expr) bool {
+	_, ok := e.(*ast.CompositeLit)
+	return ok
+}
+
+// components makes a value of the members of a group, if they are all there.
+// Angles come in the order in which they are written, quaternions scalar first.
+func (w *walker) components(s site, group []component) {
+	size, form := 4, convention.Quaternion
+	if group[0].Set == claims.Turns {
+		size, form = 3, convention.Angles
+	}
+	byIndex := slices.SortedFunc(slices.Values(group), func(a, b component) int { return a.Index - b.Index })
+	if len(group) != size {
+		return
+	}
+	for i, c := range byIndex {
+		if c.Index != i {
+			return
+		}
+	}
+	value := &rules.Value{Form: form}
+	if form == convention.Quaternion {
+		group = byIndex
+	} else {
+		slices.SortStableFunc(group, func(a, b component) int { return position(a.member) - position(b.member) })
+		for i, c := range group {
+			value.Roles[i] = c.Role
+		}
+	}
+	w.assemble(s, group, value)
 }
 
 // position orders members as they are written; those left out come last.
@@ -117,86 +104,67 @@ func position(m member) int {
 	return int(m.value.Pos())
 }
 
-// quadruples finds the four components of a quaternion among other members:
-// qw, or w after a word that says so.
-func (w *walker) quadruples(s site, members []member) {
-	groups, order := gather(members, func(stem []string, word string) bool {
-		if len(word) == 2 && word[0] == 'q' {
-			return strings.Contains("wxyz", word[1:])
-		}
-		return len(word) == 1 && strings.Contains("wxyz", word) && (hasAny(stem, quaternionWords) || hasAny(stem, rotationWords) || len(stem) == 1 && stem[0] == "q")
-	})
-	for _, at := range order {
-		group := groups[at]
-		if len(group) != 4 {
-			continue
-		}
-		slices.SortFunc(group, func(a, b member) int { return strings.Compare(letterOf(a), letterOf(b)) })
-		if letterOf(group[0]) != "0" || letterOf(group[1]) != "x" || letterOf(group[2]) != "y" || letterOf(group[3]) != "z" {
-			continue
-		}
-		w.group(s, at, group, &rules.Value{Form: convention.Quaternion})
-	}
-}
-
-// letterOf is a component's letter, with the scalar before the others.
-func letterOf(m member) string {
-	part := partOf(m)
-	letter := part[len(part)-1:]
-	if letter == "w" {
-		return "0"
-	}
-	return letter
-}
-
-// group makes one value of the members of a group.
-func (w *walker) group(s site, at slot, group []member, value *rules.Value) {
-	numbers, extent, state := w.collect(group)
-	if state == absent {
+// assemble makes one value of the members of a group.
+func (w *walker) assemble(s site, group []component, value *rules.Value) {
+	numbers, extent, st := w.collect(group)
+	if st == absent {
 		return
 	}
-	first := group[slices.IndexFunc(group, func(m member) bool { return m.value != nil })]
-	if state == computed || s.loose && s.group == "" {
+	first := group[slices.IndexFunc(group, func(c component) bool { return c.value != nil })]
+	inner := site{key: join(s.key, first.key()), group: s.group, labels: append([]label{first.label()}, s.labels...), onType: s.onType}
+	for _, c := range group {
+		inner.comments = append(inner.comments, c.comments...)
+	}
+	said := w.speech(inner)
+	if said.denied() {
+		return
+	}
+	if st == computed {
 		w.skipped(extent, NotConstant)
 		return
 	}
-	s.key = join(s.key, at.name(first))
-	s.labels = append([]label{first.label()}, s.labels...)
-	s.object = nil
-	s.remarks = nil
-	for _, m := range group {
-		s.remarks = append(s.remarks, m.remarks...)
-	}
 	value.Numbers, value.Place = numbers, extent
 	if value.Form == convention.Quaternion {
-		value.Claims = append(value.Claims, scalarFirst(extent))
+		value.Claims = append(value.Claims, named4(convention.ScalarFirst, extent))
+		said.ordered = true
 	}
-	if unit := unitOf[at.unit]; unit != convention.UnitUnstated {
-		value.Claims = append(value.Claims, rules.Claim{Says: unit, Source: rules.Label, Text: first.name, Place: w.labelPlace(s.labels[0], value)})
+	said.labels[0].name = w.nameOf(first.Lead) // the stem is that of all
+	if unit := w.nameOf(first.name).Unit; unit != 0 {
+		w.claim(value, unit, rules.Label, first.name, inner.labels[0].at)
 	}
-	by := s.labels[0]
-	w.finish(s, stated(value.Form, &by), value)
+	w.finish(inner, said, inner.labels[0].stated(value.Form), value)
 }
 
-// scalarFirst is what names of components say.
-func scalarFirst(at rules.Place) rules.Claim {
-	return rules.Claim{Says: convention.ScalarFirst, Source: rules.Label, Text: "named components", Place: at}
+// key is the words that the members of a group share, or the first one's name.
+func (c component) key() string {
+	if c.Lead != "" {
+		return c.Lead
+	}
+	return c.name
 }
 
-// name is the key of a group: the words its members share, or the first name.
-func (at slot) name(first member) string {
-	if at.stem != "" {
-		return strings.ReplaceAll(at.stem, " ", "_")
-	}
-	return first.name
+// named4 is what names of components say.
+func named4(order convention.ScalarPlace, at rules.Place) rules.Claim {
+	return rules.Claim{Says: order, Source: rules.Label, Text: "named components", Place: at}
 }
 
-func (m member) label() label {
-	l := label{text: m.name, kind: ofValue}
-	if m.ident != nil {
-		l.from, l.to = m.ident.Pos(), m.ident.End()
+// triad makes a value of three axes, each of three numbers.
+func (w *walker) triad(s site, group []component) {
+	slices.SortFunc(group, func(a, b component) int { return a.Index - b.Index })
+	value := &rules.Value{Form: convention.Triad}
+	for i, c := range group {
+		x, ok := w.read(c.value)
+		if len(group) != 3 || c.Index%3 != (group[0].Index+i)%3 || !isLiteral(c.value) || !ok || len(x.numbers) != 3 {
+			return
+		}
+		value.Numbers = append(value.Numbers, x.numbers...)
+		value.Place = cover(value.Place, w.place(c.value.Pos(), c.value.End()))
 	}
-	return l
+	inner := site{key: join(s.key, group[0].key()), group: alone, labels: append([]label{group[0].label()}, s.labels...)}
+	said := w.speech(inner)
+	if !said.denied() {
+		w.finish(inner, said, inner.labels[0].inferred(value.Form), value)
+	}
 }
 
 // state says what can be read of a group's numbers.
@@ -210,27 +178,24 @@ const (
 
 // collect reads the numbers of a group; those left out are zero. The extent
 // reaches from the first to the last that is written.
-func (w *walker) collect(group []member) (numbers []rules.Number, extent rules.Place, st state) {
-	st = absent
-	for i, m := range group {
+func (w *walker) collect(group []component) (numbers []rules.Number, extent rules.Place, st state) {
+	for _, c := range group {
 		numbers = append(numbers, rules.Number{Text: "0"})
-		if m.value == nil {
+		if c.value == nil {
 			continue
 		}
-		if !w.isNumber(m.value) {
+		if !w.isNumber(c.value) {
 			return nil, extent, absent
 		}
-		at := w.place(m.value.Pos(), m.value.End())
-		switch n, ok := w.number(m.value); {
+		extent = cover(extent, w.place(c.value.Pos(), c.value.End()))
+		n, ok := w.number(c.value)
+		switch {
 		case !ok:
 			st = computed
 		case st == absent:
 			st = known
-			fallthrough
-		default:
-			numbers[i] = n
 		}
-		extent = cover(extent, at)
+		numbers[len(numbers)-1] = n
 	}
 	for i := range numbers {
 		if numbers[i].Place.Path == "" {
@@ -265,40 +230,64 @@ func (w *walker) isNumber(e ast.Expr) bool {
 }
 
 // axisAngles finds an axis and its angle in two members whose names agree in
-// their other words: Axis and AngleDeg, hingeAxis and hingeAngle.
-func (w *walker) axisAngles(s site, members []member, used map[string]bool) {
+// their other words: Axis and AngleDeg, hingeAxis and hingeAngle. It returns the
+// names of the axes.
+func (w *walker) axisAngles(s site, members []member) map[string]bool {
+	used := map[string]bool{}
 	for _, axis := range members {
-		a, ok := slotOf(axis.name, func(_ []string, word string) bool { return word == "axis" })
 		lit, isLit := axis.value.(*ast.CompositeLit)
-		if !ok || !isLit {
+		lead, ok := cutFold(axis.name, "axis")
+		if !isLit || !ok {
 			continue
 		}
-		for _, angle := range members {
-			b, ok := slotOf(angle.name, func(_ []string, word string) bool { return word == "angle" })
-			if !ok || b.stem != a.stem || angle.value == nil {
+		for _, turn := range members {
+			if !isAngle(turn.name, lead) || turn.value == nil {
 				continue
 			}
 			x, okAxis := w.read(lit)
-			n, okAngle := w.number(angle.value)
-			if !okAxis || !okAngle || len(x.numbers) != 3 {
-				continue
+			n, okAngle := w.number(turn.value)
+			if okAxis && okAngle && len(x.numbers) == 3 {
+				used[axis.name] = true
+				w.axisAngle(s, lead, axis, turn, append(x.numbers, n))
 			}
-			used[axis.name] = true
-			w.axisAngle(s, b, axis, angle, append(x.numbers, n))
 		}
 	}
+	return used
 }
 
-func (w *walker) axisAngle(s site, at slot, axis, angle member, numbers []rules.Number) {
-	s.key = join(s.key, axis.name)
-	s.labels = []label{axis.label()}
-	s.object = nil
-	s.remarks = append(slices.Clip(axis.remarks), angle.remarks...)
-	extent := cover(w.place(axis.value.Pos(), axis.value.End()), numbers[3].Place)
-	value := &rules.Value{Form: convention.AxisAngle, Numbers: numbers, Place: extent}
-	if unit := unitOf[at.unit]; unit != convention.UnitUnstated {
-		by := angle.label()
-		value.Claims = append(value.Claims, rules.Claim{Says: unit, Source: rules.Label, Text: angle.name, Place: w.labelPlace(by, value)})
+// isAngle reports the name of the angle that belongs to an axis: the same
+// words, then angle, then perhaps a unit.
+func isAngle(name, lead string) bool {
+	if len(name) < len(lead) || !strings.EqualFold(name[:len(lead)], lead) {
+		return false
 	}
-	w.finish(s, inferred(value.Form, &s.labels[0]), value)
+	switch strings.ToLower(name[len(lead):]) {
+	case "angle", "angledeg", "anglerad", "angledegrees", "angleradians":
+		return true
+	}
+	return false
+}
+
+func cutFold(name, suffix string) (string, bool) {
+	at := len(name) - len(suffix)
+	if at < 0 || !strings.EqualFold(name[at:], suffix) {
+		return "", false
+	}
+	return name[:at], true
+}
+
+func (w *walker) axisAngle(s site, lead string, axis, turn member, numbers []rules.Number) {
+	inner := site{key: join(s.key, axis.name), group: s.group, labels: []label{axis.label()}}
+	inner.comments = append(slices.Clone(axis.comments), turn.comments...)
+	said := w.speech(inner)
+	if said.denied() {
+		return
+	}
+	value := &rules.Value{Form: convention.AxisAngle, Numbers: numbers}
+	value.Place = cover(w.place(axis.value.Pos(), axis.value.End()), numbers[3].Place)
+	if unit := w.nameOf(turn.name).Unit; unit != 0 {
+		w.claim(value, unit, rules.Label, turn.name, turn.label().at)
+	}
+	said.labels[0].name = w.nameOf(lead) // the stem is that of both
+	w.finish(inner, said, axis.label().inferred(value.Form), value)
 }

@@ -5,6 +5,7 @@ import (
 	"go/types"
 	"slices"
 	"strconv"
+	"strings"
 
 	"dextral/core/angle"
 	"dextral/core/convention"
@@ -16,7 +17,14 @@ func (w *walker) literal(s site, lit *ast.CompositeLit) {
 	if len(lit.Elts) == 0 {
 		return // a zero value states nothing
 	}
-	s.labels = append(slices.Clip(s.labels), w.typeLabels(w.pass.TypesInfo.TypeOf(lit))...)
+	if !s.denied && len(s.labels) > 0 {
+		name := w.nameOf(s.labels[0].text)
+		s.denied = name.Not != "" && name.Deep
+	}
+	if s.denied {
+		return
+	}
+	s.labels = append(slices.Clip(s.labels), typeLabels(w.pass.TypesInfo.TypeOf(lit))...)
 	switch t := w.typeOf(lit).(type) {
 	case *types.Struct:
 		w.structure(s, lit, t)
@@ -39,7 +47,7 @@ func (w *walker) unknown(s site, lit *ast.CompositeLit) {
 		names[i] = m.name
 	}
 	if set, ok := fourFields(names); ok {
-		w.four(s, lit, byName(members, set[:]...), true)
+		w.four(s, lit, byName(members, set[:]...), convention.ScalarFirst)
 		return
 	}
 	w.members(s, lit, members)
@@ -51,8 +59,8 @@ func (w *walker) structure(s site, lit *ast.CompositeLit, t *types.Struct) {
 	members := fieldsOf(t, lit)
 	switch {
 	case isQuaternionShape(t):
-		set, _ := fourFields(fieldNames(t))
-		w.four(s, lit, byName(members, set[:]...), true)
+		entries, order := arranged(fieldNames(t), members, lit)
+		w.four(s, lit, entries, order)
 	case isVector(t):
 		w.three(s, lit, []angle.Role{angle.RoleX, angle.RoleY, angle.RoleZ})
 	case w.parts(s, lit, t, members):
@@ -89,7 +97,7 @@ func (w *walker) parts(s site, lit *ast.CompositeLit, t *types.Struct, members [
 	} else if find(vectors) != nil {
 		return true // a vector that is computed: no constants, nothing inside
 	}
-	w.four(s, lit, entries, true)
+	w.four(s, lit, entries, convention.ScalarFirst)
 	return true
 }
 
@@ -101,38 +109,27 @@ func (w *walker) members(s site, lit *ast.CompositeLit, members []member) {
 	for i := range members {
 		if members[i].value != nil {
 			written++
-			members[i].remarks = append(w.beside(members[i].value), w.fieldRemarks(lit, members[i].name)...)
+			members[i].comments = w.beside(members[i].value)
 		}
 	}
-	paired := w.scattered(site{key: s.key, group: group, labels: s.labels}, members)
+	paired := w.scattered(site{key: s.key, group: group, labels: s.labels, onType: w.withType(site{}, lit).onType}, members)
 	for _, m := range members {
 		if m.value == nil || paired[m.name] {
 			continue
 		}
-		inner := site{key: join(s.key, m.name), group: group, remarks: m.remarks}
-		inner.labels = []label{{text: m.name, kind: ofValue}}
-		if m.ident != nil {
-			inner.labels[0].from, inner.labels[0].to = m.ident.Pos(), m.ident.End()
-		}
-		inner.labels = append(inner.labels, outer(s.labels, len(members) == 1)...)
+		inner := site{key: join(s.key, m.name), group: group, comments: append(m.comments, w.onField(lit, m.name)...)}
+		inner.labels = append([]label{m.label()}, outer(s.labels, len(members) == 1)...)
 		w.value(inner, m.value)
 	}
 }
 
-// outer are the labels that a value takes over from what it stands in. A
-// wrapper of one field says what its field is; a record only gives a hint.
+// outer are the labels that a value takes over from what it stands in: a
+// wrapper of one field says what its field is.
 func outer(labels []label, wrapper bool) []label {
-	var list []label
-	for _, l := range labels {
-		switch {
-		case wrapper:
-			list = append(list, l)
-		case l.kind == ofType && hasAny(split(l.text), transformWords):
-			l.kind = ofOuter
-			list = append(list, l)
-		}
+	if !wrapper {
+		return nil
 	}
-	return list
+	return labels
 }
 
 // list reads an array or slice literal: numbers, or elements that the list's
@@ -147,7 +144,7 @@ func (w *walker) list(s site, lit *ast.CompositeLit) {
 		return
 	}
 	if numbers := w.typeOf(lit); isNumbers(numbers) && len(entries) == 4 {
-		w.four(s, lit, entries, false)
+		w.four(s, lit, entries, convention.ScalarUnstated)
 		return
 	} else if isNumbers(numbers) && len(entries) == 3 {
 		w.three(s, lit, nil)
@@ -182,7 +179,7 @@ func (w *walker) children(s site, lit *ast.CompositeLit) {
 
 // element is the site of an element of a list or table.
 func (w *walker) element(s site, index string, e ast.Expr) site {
-	inner := site{key: s.key + index, remarks: append(w.beside(e), s.remarks...), loose: s.loose}
+	inner := site{key: s.key + index, group: alone, comments: append(w.beside(e), s.comments...), onType: s.onType, loose: s.loose}
 	for _, l := range s.labels {
 		if l.kind == ofValue {
 			l.kind = ofOuter
@@ -203,7 +200,7 @@ func (w *walker) table(s site, lit *ast.CompositeLit) {
 		}
 		name := w.keyText(kv.Key)
 		inner := w.element(s, "["+name+"]", kv.Value)
-		inner.labels = append([]label{{name, kv.Key.Pos(), kv.Key.End(), ofValue}}, inner.labels...)
+		inner.labels = append([]label{{text: name, at: span{kv.Key.Pos(), kv.Key.End()}}}, inner.labels...)
 		inner.loose = false
 		w.value(inner, kv.Value)
 	}
@@ -219,9 +216,30 @@ func (w *walker) keyText(e ast.Expr) string {
 	return types.ExprString(e)
 }
 
-// four reads four numbers, scalar first where they are named.
-func (w *walker) four(s site, lit *ast.CompositeLit, entries []ast.Expr, named bool) {
-	v := speechOf(s.labels).ofFour(named)
+// arranged are the entries of a literal of four named fields, and where the
+// scalar stands among them: with keys, scalar first; without, as they are written.
+func arranged(names []string, members []member, lit *ast.CompositeLit) ([]ast.Expr, convention.ScalarPlace) {
+	set, _ := fourFields(names)
+	entries := byName(members, set[:]...)
+	last := append(slices.Clone(set[1:]), set[0])
+	if isKeyed(lit) || !slices.EqualFunc(names, last, strings.EqualFold) {
+		return entries, convention.ScalarFirst
+	}
+	return append(entries[1:4:4], entries[0]), convention.ScalarLast
+}
+
+func isKeyed(lit *ast.CompositeLit) bool {
+	_, ok := lit.Elts[0].(*ast.KeyValueExpr)
+	return ok
+}
+
+// four reads four numbers; order is the place of the scalar where they are
+// named. What comments say about the order of a type's fields is then of no
+// concern, and neither is what they say of keyed ones.
+func (w *walker) four(s site, lit *ast.CompositeLit, entries []ast.Expr, order convention.ScalarPlace) {
+	named := order != convention.ScalarUnstated
+	said := w.speech(w.withType(s, lit))
+	v := said.ofFour(named)
 	if v.form == convention.NoForm {
 		return
 	}
@@ -230,25 +248,30 @@ func (w *walker) four(s site, lit *ast.CompositeLit, entries []ast.Expr, named b
 		w.skip(lit, s, ok)
 		return
 	}
-	if v.from == rules.Name && v.by.kind == ofType && v.why == "" && looksAlgebraic(numbers) {
+	if v.from == rules.Name && !v.at.from.IsValid() && v.why == "" && looksAlgebraic(numbers, order) {
 		v.why = "only its type speaks of a quaternion, and its numbers do not look like a rotation"
 	}
 	value := &rules.Value{Form: v.form, Numbers: numbers}
 	if named {
-		value.Claims = append(value.Claims, scalarFirst(w.place(lit.Lbrace, lit.End())))
+		value.Claims = append(value.Claims, named4(order, w.place(lit.Lbrace, lit.End())))
+		said.ordered = order == convention.ScalarFirst && isKeyed(lit)
 	}
-	w.keep(s, lit, v, value)
+	w.keep(s, said, lit, v, value)
 }
 
 // looksAlgebraic reports whole numbers, or a zero scalar, off the unit sphere:
 // an integer quaternion or a vector in quaternion's clothes.
-func looksAlgebraic(numbers []rules.Number) bool {
+func looksAlgebraic(numbers []rules.Number, order convention.ScalarPlace) bool {
 	norm, whole := 0.0, true
 	for _, n := range numbers {
 		norm += n.Value * n.Value
 		whole = whole && n.Value == float64(int64(n.Value))
 	}
-	return norm != 0 && (whole && norm != 1 || numbers[0].Value == 0 && (norm < 0.99 || norm > 1.01))
+	scalar := numbers[0].Value
+	if order == convention.ScalarLast {
+		scalar = numbers[3].Value
+	}
+	return norm != 0 && (whole && norm != 1 || scalar == 0 && (norm < 0.99 || norm > 1.01))
 }
 
 // numbers reads entries that are all constant.
@@ -270,8 +293,9 @@ func (w *walker) numbers(lit *ast.CompositeLit, entries []ast.Expr) ([]rules.Num
 
 // three reads three numbers of a list or x-y-z struct.
 func (w *walker) three(s site, lit *ast.CompositeLit, roles []angle.Role) {
-	v := speechOf(s.labels).ofThree()
-	if v.by == nil {
+	said := w.speech(w.withType(s, lit))
+	v := said.ofThree()
+	if v.form == convention.NoForm && v.why == "" {
 		return
 	}
 	block, ok := w.read(lit)
@@ -283,7 +307,7 @@ func (w *walker) three(s site, lit *ast.CompositeLit, roles []angle.Role) {
 	if v.form == convention.Angles {
 		copy(value.Roles[:], roles)
 	}
-	w.keep(s, lit, v, value)
+	w.keep(s, said, lit, v, value)
 }
 
 // matrix reads nine, twelve or sixteen numbers, nested or flat.
@@ -296,7 +320,8 @@ func (w *walker) matrix(s site, lit *ast.CompositeLit) bool {
 	if !ok {
 		return false
 	}
-	v := speechOf(s.labels).ofMatrix(rows, cols)
+	said := w.speech(w.withType(s, lit))
+	v := said.ofMatrix(rows, cols, b.numbers)
 	if v.form == convention.NoForm {
 		return true
 	}
@@ -304,7 +329,7 @@ func (w *walker) matrix(s site, lit *ast.CompositeLit) bool {
 		w.skip(lit, s, true)
 		return true
 	}
-	w.keep(s, lit, v, &rules.Value{Form: v.form, Numbers: b.numbers, Rows: rows, Cols: cols})
+	w.keep(s, said, lit, v, &rules.Value{Form: v.form, Numbers: b.numbers, Rows: rows, Cols: cols})
 	return true
 }
 

@@ -4,10 +4,12 @@ import (
 	"go/ast"
 	"go/token"
 	"go/types"
+	"regexp"
 	"strings"
 
 	"golang.org/x/tools/go/analysis"
 
+	"dextral/analyzers/claims"
 	"dextral/analyzers/source"
 	"dextral/rules"
 )
@@ -21,48 +23,47 @@ type walker struct {
 	declared map[types.Object][]*ast.CommentGroup
 
 	// of the file at hand
-	base   *token.File
-	inTest bool
-	keys   map[string]int            // how often each key was given away
-	lines  map[int]*ast.CommentGroup // comments by the line on which they end
-	values []*rules.Value
-	stems  map[*rules.Value]twin
+	base     *token.File
+	inTest   bool
+	keys     map[string]int            // how often each key was given away
+	lines    map[int]*ast.CommentGroup // comments by the line on which they end
+	names    map[string]*claims.Name   // by text
+	comments map[*ast.CommentGroup]*claims.Comment
+	values   []*rules.Value
+	stems    map[*rules.Value]twin
 }
 
 // A site is a place in the program that names a value: a variable, a field, an
 // element, a function's result.
 type site struct {
-	key     string              // place in the structure: DefaultRig.Cameras.front.Mount
-	group   string              // the struct literal or scope whose members may describe each other; alone for none
-	labels  []label             // names that speak about the value, the nearest first
-	remarks []*ast.CommentGroup // doc comment and comment on the line
-	object  types.Object        // the local variable, if it is one
-	loose   bool                // nothing names it: an argument or an operand
-	normal  bool                // it is made unit at once
+	key      string              // place in the structure: DefaultRig.Cameras.front.Mount
+	group    string              // the struct literal or scope whose members may describe each other; alone for none
+	labels   []label             // names that speak about the value, the nearest first
+	comments []*ast.CommentGroup // doc comment, comment on the line, comments on the declaration of its field
+	onType   []*ast.CommentGroup // comments on the declaration of its type
+	object   types.Object        // the variable, if it is one
+	loose    bool                // nothing names it: an argument or an operand
+	normal   bool                // it is made unit at once
+	denied   bool                // it stands under a name that says that nothing below is an orientation
 }
 
 // label is a name, and where it stands.
 type label struct {
-	text     string
-	from, to token.Pos // token.NoPos for names that stand elsewhere, such as those of types
-	kind     labelKind
+	text string
+	at   span // empty for names that stand elsewhere, such as those of types
+	kind labelKind
+	name *claims.Name // what it says; set by walker.speech
 }
 
 // labelKind says what a label names.
 type labelKind uint8
 
 const (
-	ofValue labelKind = iota // the variable, field, key or function
-	ofType                   // the value's type
-	ofOuter                  // what the value is wrapped in, or the list it is an element of
+	ofValue   labelKind = iota // the variable, field, key or function
+	ofOuter                    // what the value is wrapped in, or the list it is an element of
+	ofType                     // the value's type
+	ofPackage                  // the package that declares the type
 )
-
-func (s site) name() string {
-	if len(s.labels) == 0 {
-		return ""
-	}
-	return s.labels[0].text
-}
 
 // enter walks one file.
 func (w *walker) enter(f *ast.File) {
@@ -70,6 +71,8 @@ func (w *walker) enter(f *ast.File) {
 	w.inTest = strings.HasSuffix(w.base.Name(), "_test.go")
 	w.keys = map[string]int{}
 	w.lines = map[int]*ast.CommentGroup{}
+	w.names = map[string]*claims.Name{}
+	w.comments = map[*ast.CommentGroup]*claims.Comment{}
 	w.values, w.stems = nil, map[*rules.Value]twin{}
 	for _, group := range f.Comments {
 		w.lines[w.line(group.End())] = group
@@ -122,11 +125,11 @@ func (w *walker) declaration(d *ast.GenDecl, prefix string) {
 		}
 		for i, name := range v.Names {
 			s := w.variable(name, prefix)
-			s.remarks = remarks(v.Doc, v.Comment)
+			s.comments = present(v.Doc, v.Comment)
 			if len(d.Specs) == 1 {
-				s.remarks = append(s.remarks, remarks(d.Doc)...)
+				s.comments = append(s.comments, present(d.Doc)...)
 			}
-			scalars = append(scalars, member{name.Name, name, v.Values[i], s.remarks})
+			scalars = append(scalars, member{name.Name, name, v.Values[i], s.comments})
 			w.value(s, v.Values[i])
 		}
 	}
@@ -138,11 +141,15 @@ func (w *walker) declaration(d *ast.GenDecl, prefix string) {
 func (w *walker) variable(name *ast.Ident, prefix string) site {
 	return site{
 		key: join(prefix, name.Name), group: prefix, object: w.pass.TypesInfo.ObjectOf(name),
-		labels: []label{{name.Name, name.Pos(), name.End(), ofValue}},
+		labels: []label{nameLabel(name)},
 	}
 }
 
-func remarks(groups ...*ast.CommentGroup) []*ast.CommentGroup {
+func nameLabel(name *ast.Ident) label {
+	return label{text: name.Name, at: span{name.Pos(), name.End()}}
+}
+
+func present(groups ...*ast.CommentGroup) []*ast.CommentGroup {
 	var list []*ast.CommentGroup
 	for _, g := range groups {
 		if g != nil {
@@ -196,15 +203,15 @@ func (w *walker) assignment(n *ast.AssignStmt, key string) {
 			}
 		case *ast.SelectorExpr:
 			s = site{key: join(key, types.ExprString(x)), group: alone,
-				labels: []label{{x.Sel.Name, x.Sel.Pos(), x.Sel.End(), ofValue}}}
+				labels: []label{nameLabel(x.Sel)}}
 		case *ast.IndexExpr:
 			s = site{key: join(key, types.ExprString(x)), group: alone, labels: []label{
-				{w.keyText(x.Index), x.Index.Pos(), x.Index.End(), ofValue},
-				{types.ExprString(x.X), x.X.Pos(), x.X.End(), ofOuter}}}
+				{text: w.keyText(x.Index), at: span{x.Index.Pos(), x.Index.End()}},
+				{text: types.ExprString(x.X), at: span{x.X.Pos(), x.X.End()}, kind: ofOuter}}}
 		default:
 			s = site{key: key, loose: true}
 		}
-		s.remarks = w.beside(n)
+		s.comments = w.beside(n)
 		w.value(s, n.Rhs[i])
 	}
 }
@@ -215,7 +222,7 @@ func (w *walker) beside(n ast.Node) []*ast.CommentGroup {
 	if group := w.lines[w.line(n.Pos())-1]; group != nil && w.startsLine(group.Pos()) {
 		above = group
 	}
-	return remarks(w.lines[w.line(n.End())], above)
+	return present(w.lines[w.line(n.End())], above)
 }
 
 // results walks a return statement: a function's name speaks about what it
@@ -223,12 +230,17 @@ func (w *walker) beside(n ast.Node) []*ast.CommentGroup {
 func (w *walker) results(n *ast.ReturnStmt, name *ast.Ident, signature *ast.FuncType, key string, doc *ast.CommentGroup) {
 	for i, e := range n.Results {
 		s := site{key: key, loose: true}
-		if name != nil && i == 0 && len(n.Results) == signature.Results.NumFields() {
-			s = site{key: key, group: alone, remarks: append(w.beside(n), remarks(doc)...),
-				labels: []label{{name.Name, name.Pos(), name.End(), ofValue}}}
+		if name != nil && i == 0 && len(n.Results) == signature.Results.NumFields() && w.orients(name.Name) {
+			s = site{key: key, group: alone, comments: append(w.beside(n), present(doc)...), labels: []label{nameLabel(name)}}
 		}
 		w.value(s, e)
 	}
+}
+
+// orients reports a function's name that says what it returns.
+func (w *walker) orients(name string) bool {
+	n := w.nameOf(name)
+	return n.Orients() || saysMount(n) || n.Form(claims.Nine).Form != 0 || n.Form(claims.Three).Form != 0
 }
 
 // operands walks expressions that nothing names.
@@ -269,7 +281,7 @@ func (w *walker) value(s site, e ast.Expr) {
 // normalised at once is not judged; arguments and receivers are operands.
 func (w *walker) call(s site, x *ast.CallExpr) {
 	if tv, ok := w.pass.TypesInfo.Types[x.Fun]; ok && tv.IsType() && len(x.Args) == 1 {
-		s.labels = append(s.labels, w.typeLabels(tv.Type)...)
+		s.labels = append(s.labels, typeLabels(tv.Type)...)
 		w.value(s, x.Args[0])
 		return
 	}
@@ -290,13 +302,13 @@ func (w *walker) call(s site, x *ast.CallExpr) {
 	}
 }
 
+var constructor = regexp.MustCompile(`^(\w+\.)?New(Dense|Mat|Matrix)([34]|[34]x[34])?(Data|From\w+)?$`)
+
 // constructed reads a matrix that a constructor makes of a list of numbers:
 // mat.NewDense(3, 3, []float64{...}), r3.NewMat([]float64{...}). It is false
 // for any other call.
 func (w *walker) constructed(s site, x *ast.CallExpr) bool {
-	name := types.ExprString(x.Fun)
-	words := split(name[strings.LastIndexByte(name, '.')+1:])
-	if s.loose || len(words) < 2 || words[0] != "new" || !hasAny(words, matrixWords) || len(x.Args) == 0 {
+	if s.loose || len(x.Args) == 0 || !constructor.MatchString(types.ExprString(x.Fun)) {
 		return false
 	}
 	lit, ok := x.Args[len(x.Args)-1].(*ast.CompositeLit)

@@ -1,0 +1,3 @@
+module tern.example
+
+go 1.26
