@@ -27,6 +27,7 @@ const (
 	NotFinite             = "not-finite"
 	SignJump              = "sign-jump"
 	NormLoss              = "norm-loss"
+	StampsNotIncreasing   = "stamps-not-increasing"
 	SequenceMislabelled   = "sequence-mislabelled"
 	MovingFixedSwapped    = "moving-fixed-swapped"
 	ScalarMisplaced       = "scalar-misplaced"
@@ -55,6 +56,7 @@ var catalogue = []Rule{
 	{NotFinite, "An orientation contains a number that is not finite.", Error},
 	{SignJump, "A logged rotor jumps from R to -R while the rotation barely moves.", Warning},
 	{NormLoss, "A logged quaternion loses its unit norm.", Warning},
+	{StampsNotIncreasing, "The time stamps of an attitude log stand still or run backwards.", Warning},
 	{SequenceMislabelled, "Angles and a twin value agree only if the turns are taken in another order than stated.", Error},
 	{MovingFixedSwapped, "Angles and a twin value agree only if the turns are about fixed axes instead of moving ones, or the reverse.", Error},
 	{ScalarMisplaced, "A quaternion and a twin value agree only if its scalar stands at the other end.", Error},

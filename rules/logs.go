@@ -12,11 +12,17 @@ import (
 // CheckSeries judges one orientation channel of a log by the fold of its rows.
 func CheckSeries(s *Series) []*Finding {
 	found := conflicts(&s.Value)
-	if !s.Value.Decided() || s.Value.Form != convention.Quaternion {
+	if !s.Value.Decided() {
 		return found
 	}
-	found = add(found, normLoss(s))
-	return add(found, signJumps(s))
+	switch s.Value.Form {
+	case convention.Quaternion:
+		found = add(found, normLoss(s))
+		found = add(found, signJumps(s))
+	case convention.Rotation, convention.Transform:
+		found = add(found, matrixRows(s))
+	}
+	return found
 }
 
 // at is the place of a row, with row number and time stamp.
@@ -88,10 +94,71 @@ func signJumps(s *Series) *Finding {
 	if rest := c.JumpCount - kinematics.MaxJumps; rest > 0 {
 		f.Evidence = append(f.Evidence, Evidence{What: fmt.Sprintf("and %d more rows", rest)})
 	}
-	f.Remedy = "R and -R are one rotation: choose the sign of each sample so that its scalar product with the one before is not negative"
+	f.Remedy = "R and -R are one rotation: choose the sign of each sample so that its scalar product with the sample before is not negative"
 	if c.ForcedScalar() {
 		f.Evidence = append(f.Evidence, Evidence{What: "rows with a negative scalar", Computed: Plain(0)})
 		f.Remedy += "; the scalar is nowhere negative, so the recorder seems to force its sign"
 	}
 	return f
+}
+
+// matrixRows judges the matrices of a channel: mirrors first, then the row
+// that is farthest from orthonormal.
+func matrixRows(s *Series) *Finding {
+	m := &s.Matrices
+	claim, claimed := s.Value.FormClaim()
+	if m.Count == 0 || !claimed {
+		return nil
+	}
+	precision := tolerance.Precision{Half: s.Half, Double: s.Value.Double}
+	switch {
+	case m.Mirrors.Count > 0:
+		f := finding(MirroredRotation, &s.Value, claim, "%s claims a %s, but in %d of %d rows, first row %d, its determinant is negative (%.4g at the least): it mirrors; %s",
+			s.Value.name(), s.Value.Form, m.Mirrors.Count, m.Count, m.Mirrors.First.Row, m.Det.Min.Value, mirrorEffect)
+		f.Place = s.at(m.Mirrors.First)
+		f.Evidence = []Evidence{
+			{What: "least determinant, " + s.row(m.Det.Min.Place), Stated: Plain(1), Computed: Plain(m.Det.Min.Value), Residual: Plain(m.Det.Min.Value - 1)},
+			{What: "greatest determinant, " + s.row(m.Det.Max.Place), Stated: Plain(1), Computed: Plain(m.Det.Max.Value), Residual: Plain(m.Det.Max.Value - 1)},
+		}
+		return f
+	case m.Defect.Value > precision.Defect():
+		// |M^T M - 1| = d bounds the angle between a column and that of the nearest
+		// rotation by d/2 to first order (M = R (1+S), S symmetric, d = 2|S|).
+		f := hazard(MatrixNotOrthonormal, s, m.Defect.Place, "%s does not stay orthonormal: |M^T M - 1| is %s at row %d, so that an axis can be off by %s",
+			s.Value.name(), digits(m.Defect.Value), m.Defect.Row, degrees(m.Defect.Value/2))
+		f.Evidence = []Evidence{
+			{What: "greatest defect |M^T M - 1|, " + s.row(m.Defect.Place), Stated: Plain(0), Computed: Plain(m.Defect.Value)},
+			{What: "defect that the digits written allow", Computed: Plain(precision.Defect())},
+		}
+		f.Remedy = "make it orthonormal where it is integrated or filtered, not where it is used"
+		return f
+	}
+	return nil
+}
+
+// CheckClock judges the time stamps of a log that holds orientations.
+func CheckClock(s *Series) []*Finding {
+	c := s.Clock
+	if c == nil || c.NonIncreasing() == 0 {
+		return nil
+	}
+	first := c.Repeated.First
+	if c.Repeated.Count == 0 || c.Reversed.Count > 0 && c.Reversed.First.Row < first.Row {
+		first = c.Reversed.First
+	}
+	f := hazard(StampsNotIncreasing, s, first, "of %d time stamps %d repeat the one before and %d run backwards, first at row %d; a rate taken from neighbouring rows there is infinite or has the wrong sign",
+		c.Count, c.Repeated.Count, c.Reversed.Count, first.Row)
+	f.Key = c.Column
+	f.Claim = "time stamps increase"
+	for _, kind := range []struct {
+		word  string
+		tally kinematics.Tally
+		at    [MaxStamps]kinematics.Place
+	}{{"repeated", c.Repeated, c.RepeatedAt}, {"reversed", c.Reversed, c.ReversedAt}} {
+		for _, p := range kind.at[:min(kind.tally.Count, 3)] {
+			f.Evidence = append(f.Evidence, Evidence{What: kind.word, Computed: Words(s.row(p))})
+		}
+	}
+	f.Remedy = "drop repeated rows and sort by time before taking differences; look for two recorders writing one file"
+	return []*Finding{f}
 }
