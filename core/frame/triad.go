@@ -3,7 +3,6 @@ package frame
 import (
 	"fmt"
 	"math"
-	"strings"
 
 	"dextral/core/convention"
 	"dextral/core/matrix"
@@ -70,21 +69,13 @@ func (t Triad) Handedness() convention.Hand {
 // Same reports whether the axes are the same ones.
 func (t Triad) Same(other Triad) bool { return t.ways() == other.ways() }
 
-// Code is the three letters of a triad of a body or of the local level, such as FLU
-// and NED; "" for others.
+// Code is the three letters of a triad of a body or of the local level, such
+// as FLU and NED; "" for others.
 func (t Triad) Code() string {
-	code := ""
-	for _, w := range t.ways() {
-		for letter, way := range letters {
-			if way == w {
-				code += string(letter)
-			}
-		}
-	}
-	if len(code) < 3 {
+	if s := t.Setting(); s != Body && s != Level {
 		return ""
 	}
-	return code
+	return string([]byte{letters[t.X], letters[t.Y], letters[t.Z]})
 }
 
 // String is the axes in words, with the code if there is one.
@@ -94,49 +85,6 @@ func (t Triad) String() string {
 		return code + " (" + words + ")"
 	}
 	return words
-}
-
-// names are triads known by other names than their letters. Sources stand
-// in the package's test data (frame_axes.csv).
-var names = map[string]Triad{
-	"optical": {X: Right, Y: Down, Z: Forward},
-	"sez":     {X: South, Y: East, Z: Up},
-	"rsw":     {X: Up, Y: AlongTrack, Z: OrbitNormal},
-	"rtn":     {X: Up, Y: AlongTrack, Z: OrbitNormal},
-	"ric":     {X: Up, Y: AlongTrack, Z: OrbitNormal},
-	"qsw":     {X: Up, Y: AlongTrack, Z: OrbitNormal},
-	"vvlh":    {X: AlongTrack, Y: AntiNormal, Z: Down},
-	"tnw":     {X: AlongTrack, Y: Down, Z: OrbitNormal},
-	"ntw":     {X: Up, Y: AlongTrack, Z: OrbitNormal},
-	"vnc":     {X: AlongTrack, Y: OrbitNormal, Z: Up},
-}
-
-// ParseTriad reads a code such as FLU or NED, a name such as optical, words in
-// order (forward-left-up), or words by axis (x forward, y left, z up). With
-// right- or left-handed stated, two of the axes are enough.
-func ParseTriad(text string) (Triad, error) {
-	lower := strings.ToLower(strings.TrimSpace(text))
-	if t, ok := names[lower]; ok {
-		return t, nil
-	}
-	if t, ok := parseCode(lower); ok {
-		return t, nil
-	}
-	t, err := parseWords(lower)
-	if err != nil {
-		return Triad{}, fmt.Errorf("triad %q: %w", text, err)
-	}
-	return t, nil
-}
-
-// parseCode reads three letters.
-func parseCode(lower string) (Triad, bool) {
-	if len(lower) != 3 {
-		return Triad{}, false
-	}
-	upper := strings.ToUpper(lower)
-	t := Triad{X: letters[upper[0]], Y: letters[upper[1]], Z: letters[upper[2]]}
-	return t, t.Valid()
 }
 
 // AxisMap is the signed permutation P with v_to = P v_from; its determinant is -1

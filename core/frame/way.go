@@ -89,7 +89,7 @@ var wayWords = map[string]Way{
 	"forward": Forward, "forwards": Forward, "front": Forward, "fwd": Forward, "ahead": Forward, "nose": Forward, "fore": Forward,
 	"back": Back, "backward": Back, "backwards": Back, "rear": Back, "aft": Back, "tail": Back,
 	"left": Left, "port": Left, "right": Right, "starboard": Right,
-	"up": Up, "upward": Up, "upwards": Up, "zenith": Up, "radial": Up, "radialout": Up,
+	"up": Up, "top": Up, "upward": Up, "upwards": Up, "zenith": Up, "radial": Up, "radialout": Up,
 	"down": Down, "downward": Down, "downwards": Down, "nadir": Down, "bottom": Down,
 	"north": North, "south": South, "east": East, "west": West,
 	"alongtrack": AlongTrack, "velocity": AlongTrack, "againsttrack": AgainstTrack,
@@ -104,8 +104,8 @@ func ParseWay(text string) (Way, bool) {
 	return w, ok
 }
 
-// letters are the ways as triad codes abbreviate them.
-var letters = map[byte]Way{
-	'F': Forward, 'B': Back, 'L': Left, 'R': Right, 'U': Up, 'D': Down,
-	'N': North, 'S': South, 'E': East, 'W': West,
-}
+// letters are the ways as triad codes abbreviate them, at the place of the way.
+const letters = ".FBLRUDNSEW"
+
+// letter is the way of a code letter in upper case; NoWay if it has none.
+func letter(c byte) Way { return Way(max(0, strings.IndexByte(letters, c))) }

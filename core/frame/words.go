@@ -3,6 +3,8 @@ package frame
 import (
 	"errors"
 	"fmt"
+	"regexp"
+	"slices"
 	"strings"
 
 	"dextral/core/convention"
@@ -14,56 +16,160 @@ var (
 	ErrTriad   = errors.New("is not a triad of perpendicular axes")
 )
 
-// parseWords reads ways in order or by axis, and a stated hand.
-func parseWords(lower string) (Triad, error) {
-	words := strings.FieldsFunc(lower, func(r rune) bool { return strings.ContainsRune(" ,;:=-_/()+", r) })
-	var ways [3]Way
-	hand := convention.HandUnstated
-	axis, next := -1, 0
-	for at := 0; at < len(words); at++ {
-		w := words[at]
-		if k := strings.Index("xyz", w); k >= 0 && len(w) == 1 {
-			axis = k
-			continue
-		}
-		if used, h := handWords(words[at:]); used > 0 {
-			hand, at = h, at+used-1
-			continue
-		}
-		used, way := wayOf(words[at:])
-		if used == 0 {
-			if w == "axis" || w == "axes" || w == "is" || w == "points" || w == "and" || w == "frame" || w == "the" || w == "to" {
-				continue
-			}
-			return Triad{}, fmt.Errorf("%w: unknown word %q", ErrNoTriad, w)
-		}
-		at += used - 1
-		if axis < 0 {
-			axis = next
-		}
-		if axis > 2 || ways[axis] != NoWay {
-			return Triad{}, fmt.Errorf("%w: an axis has two directions", ErrTriad)
-		}
-		ways[axis], axis, next = way, -1, axis+1
+// named are triads known by other names than their letters. RSW, RTN, RIC and
+// QSW are one triad; LVLH is two in common use. Orbital triads are those of a
+// circular orbit (CCSDS and Orekit usage, see frame_axes.csv of the check values).
+var named = map[string][]Triad{
+	"optical": {{X: Right, Y: Down, Z: Forward}}, // robotics: suffix of camera frames
+	"sez":     {{X: South, Y: East, Z: Up}},
+	"rsw":     {radial}, "rtn": {radial}, "ric": {radial}, "qsw": {radial}, "ntw": {radial},
+	"vvlh": {nadirPointing},
+	"lvlh": {radial, nadirPointing},
+	"tnw":  {{X: AlongTrack, Y: Down, Z: OrbitNormal}},
+	"vnc":  {{X: AlongTrack, Y: OrbitNormal, Z: Up}},
+}
+
+var (
+	radial        = Triad{X: Up, Y: AlongTrack, Z: OrbitNormal}
+	nadirPointing = Triad{X: AlongTrack, Y: AntiNormal, Z: Down}
+)
+
+// ordinary are codes that are also words; they are codes in capitals only.
+var ordinary = []string{"bur", "den", "des", "end", "fur", "rub", "sed", "sue", "use"}
+
+// ParseTriad reads a code such as FLU or NED, a name such as optical, ways in
+// order (forward-left-up), or by axis (x forward, y left, z up). With right- or
+// left-handed stated, two of the axes are enough; with all three the statement
+// is kept in Hand, true or not.
+//
+// An error wraps ErrNoTriad (other words, or too few) or ErrTriad (axes that are
+// not perpendicular, a name with two meanings, a code that the words contradict).
+func ParseTriad(text string) (Triad, error) {
+	t, err := parse(strings.TrimSpace(text))
+	if err != nil {
+		return Triad{}, fmt.Errorf("triad %q: %w", text, err)
 	}
-	return complete(ways, hand)
+	return t, nil
+}
+
+func parse(text string) (Triad, error) {
+	switch triads := named[strings.ToLower(text)]; len(triads) {
+	case 0:
+		return parseWords(text)
+	case 1:
+		return triads[0], nil
+	default:
+		return Triad{}, fmt.Errorf("%w: the name is in use for %s and for %s; name the axes", ErrTriad, triads[0], triads[1])
+	}
+}
+
+// parseCode reads three letters.
+func parseCode(word string) (Triad, bool) {
+	code := strings.ToUpper(word)
+	if len(code) != 3 || slices.Contains(ordinary, word) {
+		return Triad{}, false
+	}
+	t := Triad{X: letter(code[0]), Y: letter(code[1]), Z: letter(code[2])}
+	return t, t.Valid()
+}
+
+// links are words between the ways.
+var links = []string{"axis", "axes", "is", "points", "pointing", "and", "frame", "the", "to", "towards"}
+
+// minus finds an axis with a sign, as in "-z forward".
+var minus = regexp.MustCompile(`(?i)(^|[^\w])-([xyz])\b`)
+
+// A description is what has been read of the words for a triad.
+type description struct {
+	code     Triad // what a code says
+	ways     [3]Way
+	hand     convention.Hand
+	axis     int  // named, and waiting for its way; -1 for none
+	next     int  // the axis whose turn it is where axes are not named
+	opposite bool // the named axis has a minus
+}
+
+// parseWords reads a code, ways in order or by axis, and a stated hand.
+func parseWords(text string) (Triad, error) {
+	separated := minus.ReplaceAllString(text, "$1 minus $2")
+	words := strings.FieldsFunc(separated, func(r rune) bool { return strings.ContainsRune(" ,;:=-_/()+>\u2192", r) })
+	d := description{axis: -1}
+	for len(words) > 0 {
+		used, err := d.take(words)
+		if err != nil {
+			return Triad{}, err
+		}
+		words = words[used:]
+	}
+	if d.code.Valid() {
+		if d.ways == [3]Way{} {
+			d.ways = d.code.ways()
+		}
+		if d.ways != d.code.ways() {
+			return Triad{}, fmt.Errorf("%w: its words are not those of %s", ErrTriad, d.code)
+		}
+	}
+	return complete(d.ways, d.hand)
+}
+
+// take reads the first word, or several that belong together, and reports how many.
+func (d *description) take(words []string) (used int, err error) {
+	w := strings.ToLower(words[0])
+	if k := strings.Index("xyz", w); k >= 0 && len(w) == 1 {
+		d.axis = k
+		return 1, nil
+	}
+	if w == "minus" {
+		d.opposite = true
+		return 1, nil
+	}
+	if used, hand := handWords(words); used > 0 {
+		d.hand = hand
+		return used, nil
+	}
+	if t, ok := parseCode(words[0]); ok && !d.code.Valid() {
+		d.code = t
+		return 1, nil
+	}
+	if used, way := wayOf(words); used > 0 {
+		return used, d.point(way)
+	}
+	if slices.Contains(links, w) {
+		return 1, nil
+	}
+	return 0, fmt.Errorf("%w: unknown word %q", ErrNoTriad, w)
+}
+
+// point gives the axis that was named, or whose turn it is, its way.
+func (d *description) point(way Way) error {
+	at := d.axis
+	if at < 0 {
+		at = d.next
+	}
+	if at > 2 || d.ways[at] != NoWay {
+		return fmt.Errorf("%w: an axis has two directions", ErrTriad)
+	}
+	if d.opposite {
+		way = way.Opposite()
+	}
+	d.ways[at] = way
+	d.axis, d.next, d.opposite = -1, at+1, false
+	return nil
 }
 
 // handWords reads right-handed, left hand and the like.
 func handWords(words []string) (used int, hand convention.Hand) {
-	if len(words) >= 2 && (words[1] == "handed" || words[1] == "hand") || words[0] == "righthanded" || words[0] == "lefthanded" {
-		used = 2
-		if strings.HasSuffix(words[0], "handed") {
-			used = 1
-		}
-		switch {
-		case strings.HasPrefix(words[0], "right"):
-			return used, convention.RightHanded
-		case strings.HasPrefix(words[0], "left"):
-			return used, convention.LeftHanded
-		}
+	first, used := strings.ToLower(words[0]), 1
+	if len(words) > 1 && slices.Contains([]string{"handed", "hand"}, strings.ToLower(words[1])) {
+		first, used = first+"handed", 2
 	}
-	return 0, hand
+	switch first {
+	case "righthanded":
+		return used, convention.RightHanded
+	case "lefthanded":
+		return used, convention.LeftHanded
+	}
+	return 0, convention.HandUnstated
 }
 
 // wayOf reads the longest way that the words begin with.
