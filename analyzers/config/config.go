@@ -1,0 +1,78 @@
+// Package config finds the orientations in a configuration or calibration file.
+//
+// A reader of the format turns the text into a tree (package tree); here the
+// tree is walked, and every group of numbers that has the shape of an
+// orientation is looked up in the lexicon (package claims): what its key says,
+// what the keys beside it say, what the comments say. Where nothing says that
+// the numbers are an orientation, they are none; where the words leave two
+// readings, the value is returned with a reason and stays undecided.
+//
+// # Adding a format
+//
+// A format is one package that turns a source.File into a tree.Document, and one
+// line in the table of formats. If its specification fixes conventions (glTF
+// does), a table of those goes beside it: see specification.
+package config
+
+import (
+	"path"
+	"strings"
+
+	"dextral/analyzers/config/jsondoc"
+	"dextral/analyzers/config/tree"
+	"dextral/analyzers/config/yamldoc"
+	"dextral/analyzers/source"
+	"dextral/rules"
+)
+
+// Result is what a file says about orientations.
+type Result struct {
+	Values   []*rules.Value // in the order in which they stand
+	Warnings []Warning
+}
+
+// Warning is something about a file that is not a finding but that whoever
+// trusts the result should know: a key that stands twice, a list that is none.
+type Warning struct {
+	Place   rules.Place
+	Message string
+}
+
+// format is a format that can be read.
+type format struct {
+	name string
+	read func(*source.File) (*tree.Document, error)
+	spec specification // what the format itself fixes; nil for nothing
+}
+
+var formats = map[string]format{
+	".yaml":  {"YAML", yamldoc.Read, nil},
+	".yml":   {"YAML", yamldoc.Read, nil},
+	".json":  {"JSON", jsondoc.Read, nil},
+	".jsonc": {"JSON", jsondoc.Read, nil},
+	".gltf":  {"glTF", jsondoc.Read, gltf},
+}
+
+// Format names the format of a file by its name; "" if it is none that is read.
+func Format(name string) string { return formats[strings.ToLower(path.Ext(name))].name }
+
+// Read reads a file whose Format is known. The error is of type *source.Error,
+// with the place of the fault and what to do; the values found before it are
+// not returned.
+func Read(name string, text []byte) (Result, error) {
+	f := source.New(name, text)
+	if err := f.CheckText(); err != nil {
+		return Result{}, err
+	}
+	format, ok := formats[strings.ToLower(path.Ext(name))]
+	if !ok {
+		return Result{}, f.ErrorAt(source.Span{}, "this format is not read", "give the file the usual ending of its format")
+	}
+	doc, err := format.read(f)
+	if err != nil {
+		return Result{}, err
+	}
+	w := newWalker(doc, format.spec)
+	w.walk()
+	return w.result(), nil
+}

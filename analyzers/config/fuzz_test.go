@@ -1,0 +1,74 @@
+package config
+
+import (
+	"testing"
+
+	"github.com/stretchr/testify/require"
+
+	"dextral/analyzers/source"
+	"dextral/core/convention"
+	"dextral/rules"
+)
+
+// Laws of Read, for any text in any format: no panic; an error says where and
+// what to do; every number stands where its place says; what is decided has as
+// many numbers as its form, and a claim that decides it.
+func FuzzRead(f *testing.F) {
+	for _, text := range []string{
+		"q: [1, 0, 0, 0] # x y z w\n", "a: {roll: 1, pitch: 2, yaw: 3, units: deg}\nR: [[1, 0, 0], [0, 1, 0], [0, 0, 1]]\n",
+		"%YAML:1.0\nR: !!opencv-matrix\n  rows: 3\n  cols: 3\n  data: [1., 0, 0, 0, 1, 0, 0, 0, 1]\n", "axes: x forward, y left, z up\naxis_map: +y,+x,-z\n",
+		"{\"T\": {\"qx\": 0, \"qy\": 0, \"qz\": 0, \"qw\": 1}, \"rpy\": [NaN, 1e999, 2]}", "nodes: [{rotation: [1, 1, 1, 1]}]",
+		"h: {axis: [0, 0, 1], angle_deg: 3}\nc: {x_axis: [1, 0, 0], y_axis: [0, 1, 0], z_axis: [0, 0, 1]}\n", "b: &b {rpy: [1, 2, 3]}\nc: {<<: *b}\n",
+		"euler_zyx: \"1 2 3\" # moving axes\norientation: {type: quaternion, value: {w: 1, x: 0, y: 0, z: 0}}\n", "rotation: [0 0 0 1]\n",
+	} {
+		for kind := range byte(3) {
+			f.Add(kind, []byte(text))
+		}
+	}
+	f.Fuzz(func(t *testing.T, kind byte, text []byte) {
+		name := []string{"m.yaml", "m.json", "m.gltf"}[kind%3]
+		file := source.New(name, text)
+		result, err := Read(name, text)
+		if err != nil {
+			var e *source.Error
+			require.ErrorAs(t, err, &e)
+			require.NotEmpty(t, e.Remedy)
+			require.LessOrEqual(t, e.Place.Line, file.Lines())
+			return
+		}
+		for _, v := range result.Values {
+			for _, n := range v.Numbers {
+				require.Equal(t, n.Text, at(file, n.Place))
+			}
+			require.NotEmpty(t, at(file, v.Place))
+			for _, c := range v.Claims {
+				require.NotNil(t, c.Says)
+			}
+			if !v.Decided() {
+				require.Empty(t, v.Of)
+				continue
+			}
+			want := map[convention.Form]int{convention.Quaternion: 4, convention.Rotation: 9, convention.Angles: 3, convention.RotationVector: 3,
+				convention.AxisAngle: 4, convention.Axis: 3, convention.Triad: 9, convention.AxisMap: 9, convention.Transform: v.Rows * v.Cols}
+			require.Len(t, v.Numbers, want[v.Form], "%s", v.Form)
+			_, ok := v.FormClaim()
+			require.True(t, ok)
+		}
+	})
+}
+
+// at cuts a place out of a file by its line spans.
+func at(f *source.File, p rules.Place) string {
+	offset := func(line, column int) int {
+		span := f.LineSpan(line)
+		at := span.From
+		for range []rune(f.Slice(source.Span{From: span.From, To: len(f.Text)})) {
+			if l, c := f.Position(at); l > line || l == line && c >= column {
+				break
+			}
+			at++
+		}
+		return at
+	}
+	return f.Slice(source.Span{From: offset(p.Line, p.Column), To: offset(p.EndLine, p.EndColumn)})
+}
