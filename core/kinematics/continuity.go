@@ -22,9 +22,9 @@ const MaxJumps = 16
 // Rows that are zero or not finite are tallied and otherwise passed over: the
 // rows on either side of them count as neighbours.
 //
-// The state consists of counts, of first rows, and of least and greatest values with the
-// first row that has them. There are no sums to depend on an order, so the
-// fold over parts, merged in order, equals the fold over the whole to the
+// The state consists of counts, of first rows, and of least and greatest values
+// with the first row that has them. There are no sums to depend on an order, so
+// the fold over parts, merged in order, equals the fold over the whole to the
 // byte, however the series was split.
 type Continuity struct {
 	Rows      int64 // all of them

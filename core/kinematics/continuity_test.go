@@ -75,8 +75,8 @@ func TestNoJump(t *testing.T) {
 	}
 }
 
-// TestWide: from 90 degrees on nobody can tell a changed sign from a turn the long
-// way round.
+// TestWide: from 90 degrees on nobody can tell a changed sign from a turn the
+// long way round.
 func TestWide(t *testing.T) {
 	c := fold(roll(3, math.Pi/2-1e-9))
 	assert.Zero(t, c.JumpCount)

@@ -3,9 +3,10 @@
 //
 // # Rates
 //
-// A rotor R here maps the coordinates of a body to those of the space it turns in,
-// v_space = R v_body R~. Its angular rate is one vector with two sets of
-// coordinates, omega_space = R omega_body R~, and as bivectors, Omega = I omega,
+// A rotor R here maps the coordinates of a body to those of the space it turns
+// in, v_space = R v_body R~. Its angular rate is one vector with two sets of
+// coordinates, omega_space = R omega_body R~, and as bivectors, Omega = I
+// omega,
 //
 //	R' = -R Omega_body / 2 = -Omega_space R / 2
 //
@@ -27,8 +28,8 @@
 // The rate between two orientations h apart is that of the middle of the
 // interval up to terms in h^2. Integrating a gyro by [Increment] is right to
 // the same order, and to h^4 where the rate is linear in time. [Interpolate]
-// between orientations and a gyro is right to h^3, where interpolation at constant rate is
-// right to h^2.
+// between orientations and a gyro is right to h^3, where interpolation at
+// constant rate is right to h^2.
 //
 // # Series
 //

@@ -15,10 +15,11 @@
 //
 // # What is a rotation
 //
-// Nine numbers are a rotation when M^T M = 1 and det M = 1. [Defect] measures the
-// first, [Mat3.Det] the second, and both are needed: a mirror has no defect.
-// [Nearest] finds the rotation that the numbers are closest to, [Scale] does
-// that up to a common factor, and [NearestOrthogonal] up to a mirror. For a small error E in every element,
-// M = R + E, the defect is at most about twice the norm of E, and the distance
-// to the nearest rotation at most the norm of E.
+// Nine numbers are a rotation when M^T M = 1 and det M = 1. [Defect] measures
+// the first, [Mat3.Det] the second, and both are needed: a mirror has no
+// defect. [Nearest] finds the rotation that the numbers are closest to, [Scale]
+// does that up to a common factor, and [NearestOrthogonal] up to a mirror. For
+// a small error E in every element, M = R + E, the defect is at most about
+// twice the norm of E, and the distance to the nearest rotation at most the
+// norm of E.
 package matrix

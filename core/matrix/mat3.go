@@ -29,7 +29,8 @@ func FromFlat(nine []float64, order convention.Storage) (Mat3, bool) {
 	return m, true
 }
 
-// FromColumns returns the matrix with the given columns: the images of e1, e2 and e3.
+// FromColumns returns the matrix with the given columns: the images of e1, e2
+// and e3.
 func FromColumns(x, y, z rotor.Vec) Mat3 {
 	return Mat3{{x.X, y.X, z.X}, {x.Y, y.Y, z.Y}, {x.Z, y.Z, z.Z}}
 }
@@ -80,7 +81,8 @@ func (m Mat3) Transpose() Mat3 {
 // e2 and e3.
 func (m Mat3) Det() float64 { return m.Column(0).Dot(m.Column(1).Cross(m.Column(2))) }
 
-// Trace returns the sum of the diagonal; of a rotation by angle a it is 1 + 2 cos a.
+// Trace returns the sum of the diagonal; of a rotation by angle a it is 1 + 2
+// cos a.
 func (m Mat3) Trace() float64 { return m[0][0] + m[1][1] + m[2][2] }
 
 // Apply returns m v.
@@ -103,7 +105,8 @@ func (m Mat3) Column(j int) rotor.Vec { return rotor.Vec{X: m[0][j], Y: m[1][j],
 // Finite reports whether no element is NaN or infinite.
 func (m Mat3) Finite() bool { return m.Row(0).Finite() && m.Row(1).Finite() && m.Row(2).Finite() }
 
-// Norm returns the Frobenius norm: the root of the sum of the squares of the elements.
+// Norm returns the Frobenius norm: the root of the sum of the squares of the
+// elements.
 func (m Mat3) Norm() float64 {
 	return math.Hypot(math.Hypot(m.Row(0).Norm(), m.Row(1).Norm()), m.Row(2).Norm())
 }

@@ -35,8 +35,9 @@ func FromRows34(rows [3][4]float64) Rigid {
 	return g
 }
 
-// FromFlat12 fills a 3x4 transform [R | T] with twelve numbers in the given storage
-// order. It reports false when there are not twelve or the order is unstated.
+// FromFlat12 fills a 3x4 transform [R | T] with twelve numbers in the given
+// storage order. It reports false when there are not twelve or the order is
+// unstated.
 func FromFlat12(twelve []float64, order convention.Storage) (Rigid, bool) {
 	var rows [3][4]float64
 	if len(twelve) != 12 || order == convention.StorageUnstated {
@@ -55,8 +56,8 @@ func FromFlat12(twelve []float64, order convention.Storage) (Rigid, bool) {
 // FromFlat16 fills a 4x4 transform with sixteen numbers in the given storage
 // order. Bottom is how far the bottom row is from 0 0 0 1, its largest
 // deviation: a transform written for row vectors, or in the other order, has
-// its translation there. It reports false when there are not sixteen numbers or the
-// order is unstated.
+// its translation there. It reports false when there are not sixteen numbers or
+// the order is unstated.
 func FromFlat16(sixteen []float64, order convention.Storage) (g Rigid, bottom float64, ok bool) {
 	if len(sixteen) != 16 || order == convention.StorageUnstated {
 		return Rigid{}, 0, false

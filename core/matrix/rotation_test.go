@@ -85,7 +85,8 @@ func TestRotorOfRounded(t *testing.T) {
 				}
 			}
 			// A row of the table is a sum of up to four elements, each wrong by
-			// up to digit/2, in each of four components, over a norm of at least two.
+			// up to digit/2, in each of four components, over a norm of at
+			// least two.
 			within(t, 2*digit, sameRotation(n.Rotor(), r), "r = %+v, digit %g", r, digit)
 			within(t, 2*ulp, math.Abs(n.Rotor().Norm()-1), "norm, r = %+v", r)
 		}

@@ -8,8 +8,8 @@ import "math"
 // It is accurate at every angle, since nothing passes through an arc cosine,
 // which near 0 and pi loses half the digits. Between rotors of norm one small
 // angles even come out to full relative accuracy, see [Relative]; other norms
-// are divided out first, which moves each rotor by an ulp. The angle to a zero rotor is
-// zero, to one that is not finite NaN.
+// are divided out first, which moves each rotor by an ulp. The angle to a zero
+// rotor is zero, to one that is not finite NaN.
 func Angle(a, b Rotor) float64 {
 	if nearOne(a.Dot(a)) && nearOne(b.Dot(b)) {
 		return Relative(a, b).TurnAngle()
@@ -45,8 +45,8 @@ func (r Rotor) TurnAngle() float64 {
 //
 // Since a~ a is a scalar, a~ b has the bivector part of a~ (b - a) and of
 // a~ (b + a), and one of the two differences is small and, between near rotors,
-// exact. So the bivector part, which holds the axis and the angle, keeps its relative
-// accuracy however near b comes to a or to -a.
+// exact. So the bivector part, which holds the axis and the angle, keeps its
+// relative accuracy however near b comes to a or to -a.
 func Relative(a, b Rotor) Rotor {
 	cos := a.Dot(b)
 	d := b.Sub(a)

@@ -25,9 +25,9 @@
 //
 // R and -R are one rotation: -R gets there by the turn the other way round,
 // which is 2 pi - theta. So a rotor knows more than a rotation, and a
-// continuous full turn ends at -R. Functions of a rotation (Angle,
-// TurnAngle, AxisAngle, RotationVector, MRP, Gibbs, Mean) give the same answer
-// for R and -R; functions of a turn (Log, SlerpLong, Compose) heed the sign.
+// continuous full turn ends at -R. Functions of a rotation (Angle, TurnAngle,
+// AxisAngle, RotationVector, MRP, Gibbs, Mean) give the same answer for R and
+// -R; functions of a turn (Log, SlerpLong, Compose) heed the sign.
 //
 // # Quaternions
 //
@@ -38,10 +38,11 @@
 //
 // Angles are radians. Turns are active: they move vectors within one basis.
 // A rotor proper has norm one; where a function needs that, it says so, and
-// where it does not, any norm will do. Nothing panics: NaN comes out as NaN, or
-// as false where a function reports success, and infinity as either or as the
-// limit.
-// Errors are a few units in the last place of the greatest component, unless
-// a function promises more. Where the processor fuses multiplication and
-// addition, the last place may differ between platforms.
+// where it does not, any norm will do.
+//
+// Nothing panics: NaN comes out as NaN, or as false where a function reports
+// success, and infinity as either or as the limit. Errors are a few units in
+// the last place of the greatest component, unless a function promises more.
+// Where the processor fuses multiplication and addition, the last place may
+// differ between platforms.
 package rotor

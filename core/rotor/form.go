@@ -23,43 +23,40 @@ func (f *Form) AddSquare(r Rotor, weight float64) {
 // Peak is where a form is greatest over the unit rotors.
 type Peak struct {
 	At    Rotor   // of norm one; its sign is arbitrary
-	Value float64 // the greatest eigenvalue
-	Next  float64 // the second: the greatest value at right angles to At
+	Value float64 // the form at At: the greatest eigenvalue
+	Next  float64 // the greatest value at right angles to At: the second one
+	Size  float64 // the greatest magnitude of an element of the form
 }
 
-// Single reports whether the two greatest eigenvalues differ by more than the
-// given part of the greatest magnitude among Value and Next; otherwise other rotors than
-// At do as well, up to errors of that size in the form.
-func (p Peak) Single(rounding float64) bool {
-	return p.Value-p.Next > rounding*max(math.Abs(p.Value), math.Abs(p.Next))
-}
+// Single reports whether Value and Next differ by more than this many units in
+// the last place of Size. If not, rotors far from At do as well, up to an error
+// of that size in the form.
+func (p Peak) Single(ulps float64) bool { return p.Value-p.Next > ulps*0x1p-52*p.Size }
 
-// Peak returns where the form is greatest. Value and Next are accurate to a
-// few units in the last place of the largest element, and At to that over their
-// difference. It reports false when an element is not finite.
+// Peak returns where the form is greatest. Value and Next are accurate to about
+// ten units in the last place of Size, and At to that over their difference. It
+// reports false when an element is not finite.
 func (f Form) Peak() (Peak, bool) {
-	size := 0.0
+	p := Peak{At: One}
 	for _, row := range f {
 		for _, x := range row {
-			size = max(size, math.Abs(x)) // NaN if one is
+			p.Size = max(p.Size, math.Abs(x)) // NaN if one is
 		}
 	}
-	if !finite(size) {
-		return Peak{At: One}, false
+	if p.Size == 0 || !finite(p.Size) {
+		return p, p.Size == 0
 	}
-	if size == 0 {
-		return Peak{At: One}, true
-	}
-	_, exp := math.Frexp(size)
+	_, exp := math.Frexp(p.Size)
 	for i := range f {
 		for j := range f[i] {
 			f[i][j] = math.Ldexp(f[i][j], -exp)
 		}
 	}
-	vectors := f.diagonalise()
+	v := f.diagonalise()
 	first, second := f.greatest()
-	at, _ := Rotor{vectors[0][first], vectors[1][first], vectors[2][first], vectors[3][first]}.Unit()
-	return Peak{at, math.Ldexp(f[first][first], exp), math.Ldexp(f[second][second], exp)}, true
+	p.At, _ = Rotor{v[0][first], v[1][first], v[2][first], v[3][first]}.Unit()
+	p.Value, p.Next = math.Ldexp(f[first][first], exp), math.Ldexp(f[second][second], exp)
+	return p, true
 }
 
 // greatest returns the places of the two greatest diagonal elements.
@@ -91,7 +88,7 @@ func (f *Form) diagonalise() (vectors [4][4]float64) {
 		diagonal := true
 		for p := range 4 {
 			for q := p + 1; q < 4; q++ {
-				if math.Abs(f[p][q]) > 0x1p-56 { // below the rounding of the rest
+				if math.Abs(f[p][q]) > 0x1p-56 { // less is lost in the rounding of the rest
 					f.annihilate(&vectors, p, q)
 					diagonal = false
 				}

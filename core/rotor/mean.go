@@ -18,10 +18,11 @@ func Mean(rotors []Rotor) (Rotor, bool) {
 		}
 		f.AddSquare(u, 1)
 	}
-	// A sum of n squares near one is wrong by up to n roundings of n, the
-	// eigenvalues by a few more.
+	// Each element is a sum of n squares or products, wrong by up to n roundings
+	// of itself, and the norm of four by four such errors is at most four times
+	// as large. The rest is for the unit rotors and for Peak.
 	peak, ok := f.Peak()
-	if !ok || !peak.Single(float64(len(rotors)+16)*0x1p-52) {
+	if !ok || !peak.Single(float64(2*len(rotors)+32)) {
 		return One, false
 	}
 	if peak.At.Dot(rotors[0]) < 0 {

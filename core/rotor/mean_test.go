@@ -20,7 +20,8 @@ func TestMean(t *testing.T) {
 		}
 		half, ok := rotor.Mean([]rotor.Rotor{a, b.Scale(-3)})
 		assert.True(t, ok)
-		// The two eigenvalues are 1 +- |cos|: an error of a few ulp over their gap.
+		// The two eigenvalues are 1 +- |cos|: an error of a few ulp over their
+		// gap.
 		bound := 32 * ulp / math.Abs(a.Dot(b))
 		within(t, bound, sameRotation(half, rotor.Slerp(a, b, .5)), "a = %+v, b = %+v", a, b)
 		assert.GreaterOrEqual(t, half.Dot(a), 0.0, "on the side of the first")
@@ -100,8 +101,11 @@ func TestPeak(t *testing.T) {
 		within(t, 64*ulp, sameRotation(p.At, r), "r = %+v", r)
 		within(t, 64*ulp*scale, math.Abs(p.Value-3*scale), "greatest value")
 		within(t, 64*ulp*scale, math.Abs(p.Next-2*scale), "next value")
-		assert.True(t, p.Single(0.3))
-		assert.False(t, p.Single(0.4), "2 is within 0.4 of 3")
+		assert.True(t, p.Single(1000))
+		gap := (p.Value - p.Next) / (ulp * p.Size)
+		assert.True(t, p.Single(0.999*gap))
+		assert.False(t, p.Single(1.001*gap))
+		assert.LessOrEqual(t, p.Size, 5*scale*(1+8*ulp), "no element exceeds the greatest eigenvalue")
 	}
 	p, ok := rotor.Form{}.Peak()
 	assert.True(t, ok)

@@ -79,8 +79,8 @@ func (m Multivector) Grade(k int) Multivector {
 	return Multivector{}
 }
 
-// Sandwich returns r m r~ in full, for any even r: every grade keeps its grade, and
-// lengths are scaled by the square of the norm of r.
+// Sandwich returns r m r~ in full, for any even r: every grade keeps its grade,
+// and lengths are scaled by the square of the norm of r.
 func (r Rotor) Sandwich(m Multivector) Multivector {
 	return r.Multivector().Mul(m).Mul(r.Reverse().Multivector())
 }

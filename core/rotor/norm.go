@@ -11,8 +11,8 @@ const (
 )
 
 // Norm returns the square root of the scalar part of r~ r, the length of r as
-// a 4-vector. Neither overflow nor underflow spoils it unless the norm itself is
-// out of range. With a NaN component it is NaN.
+// a 4-vector. Neither overflow nor underflow spoils it unless the norm itself
+// is out of range. With a NaN component it is NaN.
 func (r Rotor) Norm() float64 { return norm(r.S, r.E23, r.E31, r.E12) }
 
 // norm is the length of four numbers.
@@ -20,12 +20,7 @@ func norm(a, b, c, d float64) float64 {
 	if sum := a*a + b*b + c*c + d*d; sum >= smallSum && sum <= largeSum {
 		return math.Sqrt(sum)
 	}
-	r := Rotor{a, b, c, d}
-	top := r.top()
-	if top == 0 || !finite(top) {
-		return top
-	}
-	r, exp := r.rescale(top)
+	r, exp := Rotor{a, b, c, d}.rescale()
 	return math.Ldexp(math.Sqrt(r.Dot(r)), exp)
 }
 
@@ -34,25 +29,19 @@ func norm(a, b, c, d float64) float64 {
 func (r Rotor) Unit() (Rotor, bool) {
 	sum := r.Dot(r)
 	if !(sum >= smallSum && sum <= largeSum) {
-		top := r.top()
-		if top == 0 || !finite(top) {
+		r, _ = r.rescale()
+		if sum = r.Dot(r); sum == 0 || !finite(sum) {
 			return Rotor{}, false
 		}
-		r, _ = r.rescale(top)
-		sum = r.Dot(r)
 	}
 	return r.Scale(1 / math.Sqrt(sum)), true
 }
 
-// top returns the greatest magnitude of a component, NaN if one is NaN.
-func (r Rotor) top() float64 {
-	return max(math.Abs(r.S), math.Abs(r.E23), math.Abs(r.E31), math.Abs(r.E12))
-}
-
 // rescale returns the s with r = 2^exp s whose greatest component is between
-// 1/2 and 1. Powers of two cost no accuracy.
-func (r Rotor) rescale(top float64) (s Rotor, exp int) {
-	_, exp = math.Frexp(top)
+// 1/2 and 1, since powers of two cost no accuracy. Zero, infinity and NaN stay
+// what they are.
+func (r Rotor) rescale() (s Rotor, exp int) {
+	_, exp = math.Frexp(max(math.Abs(r.S), math.Abs(r.E23), math.Abs(r.E31), math.Abs(r.E12)))
 	return Rotor{
 		math.Ldexp(r.S, -exp), math.Ldexp(r.E23, -exp),
 		math.Ldexp(r.E31, -exp), math.Ldexp(r.E12, -exp),

@@ -3,8 +3,8 @@ package rotor
 import "math"
 
 // FromAxisAngle returns the rotor of a right-handed turn by angle about axis,
-// which need not be a unit vector. It reports false, with One, when the
-// axis is zero or not finite or the angle is not finite.
+// which need not be a unit vector. It reports false, with One, when the axis is
+// zero or not finite or the angle is not finite.
 func FromAxisAngle(axis Vec, angle float64) (Rotor, bool) {
 	n, ok := axis.Unit()
 	if !ok || !finite(angle) {

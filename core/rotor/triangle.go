@@ -18,8 +18,8 @@ import "math"
 //	cos C = cos A cos B + sin A sin B cos AtV
 //	sin A / sin AtU = sin B / sin AtW = sin C / sin AtV
 //
-// AtV is the supplement of the angle between the axes of a and b, AtU and AtW are the
-// angles that the axis of a b makes with those of b and a.
+// AtV is the supplement of the angle between the axes of a and b, and AtU and
+// AtW are the angles that the axis of a b makes with those of b and a.
 type Triangle struct {
 	U, V, W Vec
 	// A, B and C are half the turns of a, b and a b, 0..pi: the sides V W,
@@ -29,9 +29,9 @@ type Triangle struct {
 	AtU, AtV, AtW float64
 }
 
-// Compose returns the triangle of two unit rotors and their product. It reports
-// false when one of the three is 1 or -1 and so has no plane of its own: corners and sides
-// are still right, but the angles are zero.
+// Compose returns the triangle of two unit rotors and their product a b. It
+// reports false when one of the three is 1 or -1 and so has no plane of its
+// own: corners and sides are right even then, but the angles are zero.
 func Compose(a, b Rotor) (Triangle, bool) {
 	c := a.Mul(b)
 	v := commonLine(a.Bivector(), b.Bivector())

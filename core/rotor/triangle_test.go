@@ -38,7 +38,8 @@ func TestCompose(t *testing.T) {
 	}
 }
 
-// cosines checks the law of cosines for the side c across the angle between a and b.
+// cosines checks the law of cosines for the side c across the angle between a
+// and b.
 func cosines(t *testing.T, c, a, b, angle float64) {
 	t.Helper()
 	law := math.Cos(a)*math.Cos(b) + math.Sin(a)*math.Sin(b)*math.Cos(angle)

@@ -48,8 +48,9 @@ func Between(a, b Vec) (Rotor, bool) {
 
 // openPlane is the sine of the angle below which two unit vectors span no
 // plane of their own. Each coordinate is rounded by up to 2^-54, which moves
-// each vector by up to sqrt(3) 2^-54 and their cross product by the sum, 2^-52.2.
-// A result that treats them as parallel is wrong by no more than this angle.
+// each vector by up to sqrt(3) 2^-54 and their cross product by the sum,
+// 2^-52.2. A result that treats them as parallel is wrong by no more than this
+// angle.
 const openPlane = 0x1p-51
 
 // crossUnits returns a x b of unit vectors as a x (b - a) or a x (b + a).
