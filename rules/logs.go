@@ -3,6 +3,7 @@ package rules
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"dextral/core/convention"
 	"dextral/core/kinematics"
@@ -32,14 +33,14 @@ func (s *Series) at(p kinematics.Place) Place {
 		place = s.RowPlace(p.Row)
 	}
 	place.Row = p.Row
-	if s.Unit != "" {
-		place.Time = fmt.Sprintf("%g %s", p.T, s.Unit)
+	if s.Stamp != nil {
+		place.Time = strings.TrimSpace(s.Stamp(p.T) + " " + s.Unit)
 	}
 	return place
 }
 
 func (s *Series) row(p kinematics.Place) string {
-	if s.Unit == "" {
+	if s.Stamp == nil {
 		return fmt.Sprintf("row %d", p.Row)
 	}
 	return fmt.Sprintf("row %d (%s)", p.Row, s.at(p).Time)
@@ -74,6 +75,9 @@ func normLoss(s *Series) *Finding {
 	return f
 }
 
+// listedRows bounds the rows listed under a finding on a log.
+const listedRows = 8
+
 // signJumps reports the jumps from R to -R of a channel.
 func signJumps(s *Series) *Finding {
 	c := &s.Continuity
@@ -88,10 +92,10 @@ func signJumps(s *Series) *Finding {
 	f := hazard(SignJump, s, first.Place,
 		"%s jumps from R to -R %s, first at row %d, where the rotation moves by %s; whoever interpolates or subtracts the numbers there sees a turn of %s",
 		s.Value.name(), times, first.Row, degrees(first.Moved), degrees(2*math.Pi-first.Moved))
-	for _, j := range c.Jumps[:min(c.JumpCount, kinematics.MaxJumps)] {
+	for _, j := range c.Jumps[:min(c.JumpCount, listedRows)] {
 		f.Evidence = append(f.Evidence, Evidence{What: s.row(j.Place), Stated: Degrees(j.Moved), Computed: Degrees(2 * j.Apparent), Residual: Degrees(2*j.Apparent - j.Moved)})
 	}
-	if rest := c.JumpCount - kinematics.MaxJumps; rest > 0 {
+	if rest := c.JumpCount - listedRows; rest > 0 {
 		f.Evidence = append(f.Evidence, Evidence{What: fmt.Sprintf("and %d more rows", rest)})
 	}
 	f.Remedy = "R and -R are one rotation: choose the sign of each sample so that its scalar product with the sample before is not negative"

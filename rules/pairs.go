@@ -16,7 +16,7 @@ const minRows = 3
 // CheckPair compares two channels of one log that state one orientation, row by
 // row on a sample. They contradict each other only if all rows that contradict
 // tell the same story.
-func CheckPair(p SeriesPair) []*Finding {
+func CheckPair(p *SeriesPair) []*Finding {
 	a, b := p.First.Value, p.Second.Value
 	if !a.Decided() || !b.Decided() || !a.orients() || !b.orients() {
 		return nil

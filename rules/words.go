@@ -10,11 +10,15 @@ import (
 )
 
 // degrees prints an angle given in radians as degrees, with three significant
-// digits down to a thousandth of a degree and one below.
+// digits down to a thousandth of a degree and one below. Angles under a
+// millionth print as one: what is left of two equal rotations is rounding,
+// which differs between processors.
 func degrees(rad float64) string {
 	deg := rad * 180 / math.Pi
 	if a := math.Abs(deg); a > 0 && a < 1e-3 {
-		return strconv.FormatFloat(deg, 'g', 1, 64) + " deg"
+		deg = math.Copysign(max(a, 1e-6), deg)
+		places := -int(math.Floor(math.Log10(math.Abs(deg))))
+		return strconv.FormatFloat(deg, 'f', places, 64) + " deg"
 	}
 	return significant(deg) + " deg"
 }

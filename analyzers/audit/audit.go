@@ -80,11 +80,10 @@ type found struct {
 	kind     kind
 	values   []*rules.Value
 	series   []*rules.Series
-	pairs    []rules.SeriesPair
+	pairs    []*rules.SeriesPair
 	rows     int64
-	why      string // for unreadable files
+	skipped  []report.Skipped // unreadable files
 	failures []report.Failure
-	open     []report.Undecided
 }
 
 // read reads all files. The list is in the order of the tree; Go files, which
@@ -156,19 +155,23 @@ func (a *audit) judge(list []*found) {
 	rigs := map[string][]*rules.Value{}
 	for _, f := range list {
 		out.Failed = append(out.Failed, f.failures...)
-		out.Undecided = append(out.Undecided, f.open...)
+		out.Unreadable = append(out.Unreadable, f.skipped...)
 		a.count(f)
 		for _, v := range f.values {
 			p := a.policyOf(v.Place.Path)
-			p.Declare(v)
+			if f.kind != logFile { // a log is declared upon while it is read
+				p.Declare(v)
+			}
 			if rig := p.RigOf(v.Place.Path); rig != "" {
 				rigs[p.Path+"#"+rig] = append(rigs[p.Path+"#"+rig], v)
 			}
 		}
 		out.Findings = append(out.Findings, rules.CheckValues(f.values)...)
 		for _, s := range f.series {
-			a.policyOf(s.Value.Place.Path).Declare(&s.Value)
 			out.Findings = append(out.Findings, rules.CheckSeries(s)...)
+		}
+		if len(f.series) > 0 {
+			out.Findings = append(out.Findings, rules.CheckClock(f.series[0])...)
 		}
 		for _, p := range f.pairs {
 			out.Findings = append(out.Findings, rules.CheckPair(p)...)

@@ -41,6 +41,23 @@ func kindOf(name string) kind {
 	return other
 }
 
+// unreadConfigs names formats that often hold orientations and have no reader
+// yet, by extension.
+var unreadConfigs = map[string]string{
+	".toml": "TOML", ".xml": "XML", ".urdf": "URDF", ".xacro": "URDF macro", ".sdf": "SDF", ".world": "SDF", ".launch": "launch file",
+	".ini": "INI", ".cfg": "INI", ".conf": "INI", ".properties": "properties", ".param": "parameter file", ".params": "parameter file", ".parm": "parameter file",
+	".kvn": "CCSDS KVN", ".aem": "CCSDS attitude ephemeris", ".apm": "CCSDS attitude parameter message", ".acm": "CCSDS attitude comprehensive message",
+	".tf": "SPICE frame kernel", ".tk": "SPICE text kernel", ".g2o": "pose graph", ".bvh": "motion capture (BVH)", ".mjcf": "MJCF", ".glb": "binary glTF",
+	".usd": "USD", ".usda": "USD", ".fbx": "FBX", ".dae": "COLLADA",
+}
+
+func unreadConfig(name string) string {
+	if config.Format(filepath.Base(name)) != "" {
+		return ""
+	}
+	return unreadConfigs[strings.ToLower(filepath.Ext(name))]
+}
+
 // reader reads one file.
 type reader func(context.Context, walk.File) *found
 

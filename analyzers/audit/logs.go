@@ -1,12 +1,51 @@
 package audit
 
 import (
+	"bytes"
 	"context"
+	"fmt"
 	"io"
 
+	"dextral/analyzers/series"
 	"dextral/analyzers/walk"
+	"dextral/rules"
+	"dextral/rules/report"
 )
 
+// readLog streams a file that may be a log. What its first bytes or its name
+// show to be of another kind is said so.
 func readLog(ctx context.Context, f walk.File, head []byte, r io.Reader) *found {
-	return &found{kind: other}
+	switch kind := series.Recognise(f.Path, head); {
+	case !kind.None() && !kind.Readable:
+		return &found{kind: unreadable, skipped: []report.Skipped{{Path: f.Path, Why: kind.Name}}}
+	case kind.None() && bytes.IndexByte(head, 0) >= 0:
+		return &found{kind: binary}
+	case kind.None():
+		if name := unreadConfig(f.Name); name != "" {
+			return &found{kind: unreadable, skipped: []report.Skipped{{Path: f.Path, Why: name}}}
+		}
+		return &found{kind: other}
+	}
+	read, err := series.Read(ctx, f.Path, r, series.Options{Declare: f.Policy.Declare})
+	result := &found{kind: logFile, series: read.Channels, pairs: read.Pairs, rows: read.Rows, values: read.Undecided}
+	if len(read.Channels) == 0 && len(read.Undecided) == 0 {
+		result.kind = other
+	}
+	if read.BadRows > 0 {
+		result.failures = append(result.failures, badRows(f.Path, read))
+	}
+	if err != nil && ctx.Err() == nil {
+		result.failures = append(result.failures, failure(rules.Place{Path: f.Path}, err))
+	}
+	return result
+}
+
+// badRows says in one line which rows were passed over.
+func badRows(path string, r series.Result) report.Failure {
+	first := r.FirstBad[0]
+	text := first.Reason
+	if r.BadRows > 1 {
+		text = fmt.Sprintf("%s; and %d more rows of this file could not be read; the others were audited", text, r.BadRows-1)
+	}
+	return report.Failure{Place: first.Place, Message: text}
 }
