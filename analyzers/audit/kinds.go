@@ -6,12 +6,14 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 
 	"dextral/analyzers/config"
 	"dextral/analyzers/source"
 	"dextral/analyzers/walk"
 	"dextral/rules"
+	"dextral/rules/policy"
 	"dextral/rules/report"
 )
 
@@ -23,6 +25,7 @@ const (
 	goFile                 // read with its package
 	configFile             // read whole
 	logFile                // streamed
+	sheet                  // dextral.toml, read before all else
 	unreadable             // recognised by name or first bytes, not read yet
 	binary
 )
@@ -33,8 +36,8 @@ func kindOf(name string) kind {
 	switch {
 	case strings.EqualFold(filepath.Ext(base), ".go"):
 		return goFile
-	case base == "dextral.toml" || base == ".dextral.toml":
-		return other
+	case slices.Contains(policy.Names, base):
+		return sheet
 	case config.Format(base) != "":
 		return configFile
 	}
@@ -62,8 +65,11 @@ func unreadConfig(name string) string {
 type reader func(context.Context, walk.File) *found
 
 func readerOf(f walk.File) reader {
-	if kindOf(f.Name) == configFile {
+	switch kindOf(f.Name) {
+	case configFile:
 		return readConfig
+	case sheet:
+		return func(context.Context, walk.File) *found { return &found{kind: sheet} }
 	}
 	return readByHead
 }

@@ -67,8 +67,10 @@ be audited could not be.`,
 var formatNames = []string{"text", "sarif"}
 
 var formats = map[string]func(io.Writer, *report.Report) error{
-	"text":  func(w io.Writer, r *report.Report) error { return report.Text(w, r, layout(w)) },
-	"sarif": func(w io.Writer, r *report.Report) error { return report.SARIF(w, r, version(), report.RuleInfos(rules.Catalogue())) },
+	"text": func(w io.Writer, r *report.Report) error { return report.Text(w, r, layout(w)) },
+	"sarif": func(w io.Writer, r *report.Report) error {
+		return report.SARIF(w, r, version(), report.RuleInfos(rules.Catalogue()))
+	},
 }
 
 // outcome is the exit status of an audit. What could not be audited outweighs
