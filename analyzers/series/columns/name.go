@@ -158,3 +158,19 @@ func set(words string) map[string]bool {
 	}
 	return m
 }
+
+// IsUnit reports whether a field of a header is a unit, or has the brackets of one.
+func IsUnit(text string) bool {
+	t := strings.TrimSpace(text)
+	if len(t) >= 2 && (t[0] == '[' && t[len(t)-1] == ']' || t[0] == '(' && t[len(t)-1] == ')') {
+		return true
+	}
+	if otherUnits[strings.ToLower(t)] {
+		return true
+	}
+	_, known := unitNames[strings.ToLower(t)]
+	return known
+}
+
+// otherUnits are units of quantities that stand beside orientations in logs.
+var otherUnits = set("m mm cm km m/s m/s2 m/s^2 m/s/s rad/s rad/sec deg/s deg/sec deg/s2 rad/s2 g hz v a w n pa hpa mbar c k degc t ut mg gauss % kg nm kt kts ft ft/s")

@@ -1,6 +1,7 @@
 package fold
 
 import (
+	"cmp"
 	"math"
 
 	"dextral/analyzers/series/decimal"
@@ -8,16 +9,23 @@ import (
 
 // Digits is the fold over what the digits of a channel say about its precision.
 //
-// The unit of a row is that of its finest number, whole numbers aside: a writer
-// that prints 0.5 for 0.500000 hides zeros in one number of a row, hardly in
-// all. Of the rows it is the coarsest that decides, because a log may be made of
+// Writers round to a fixed count of decimals or to a fixed count of significant
+// digits, and may then drop zeros at the end. Which of the two it is, the rows
+// vote: more numbers of a row have the same count of the one or of the other.
+// With decimals, the unit of a row is that of its finest number: 0.5 for 0.500000
+// hides zeros in one number of a row, hardly in all. With significant digits it is
+// that of the greatest number, written with as many digits as any. Whole numbers
+// show no precision.
+//
+// Of the rows it is the coarsest that decides, because a log may be made of
 // parts with different precision, but rows that are one in a thousand or less
 // do not count: a row whose every last digit happens to be zero is that rare,
 // or one in which the numbers come out even.
 type Digits struct {
-	rows       [mostDecimals + 1]int64 // by decimals of the finest number
-	wholeRows  int64                   // rows of whole numbers only
-	beyondUnit bool                    // among whole numbers there is one other than -1, 0, 1
+	decimals    [maxDecimals + 1]int64 // rows by decimals of the unit, if it is the one
+	significant [maxDecimals + 1]int64 // and if it is the other
+	votes       int64                  // rows for decimals less rows for significant digits
+	beyondUnit  bool                   // among whole numbers there is one other than -1, 0, 1
 
 	single  trial              // that the numbers are float32
 	scales  [len(scales)]trial // that they are multiples of 1/scale
@@ -50,8 +58,8 @@ func (t *trial) merge(next trial) {
 // holds reports whether the conjecture had the chance to fail often enough.
 func (t *trial) holds() bool { return t.passed >= enough }
 
-// mostDecimals is beyond what float64 can show of numbers near one.
-const mostDecimals = 24
+// maxDecimals is beyond what float64 can show of numbers near one.
+const maxDecimals = 24
 
 // scales are the denominators of quantised components in use: signed bytes and
 // 16-bit words, by either reading of full scale, and Q14.
@@ -65,7 +73,8 @@ var scales = [...]float64{127, 128, 16384, 32767, 32768}
 const enough = 64
 
 func (d *Digits) push(part []int, cells []Cell) {
-	finest := math.MaxInt
+	var decimals, significant most
+	lead := math.MinInt
 	for _, i := range part {
 		c := &cells[i]
 		v := math.Abs(c.Value())
@@ -77,10 +86,18 @@ func (d *Digits) push(part []int, cells []Cell) {
 			continue
 		}
 		e := int(c.Exponent)
+		first := e - 1
+		if c.State != Binary && c.Exact {
+			first += c.Magnitude()
+		} else {
+			first = int(math.Floor(math.Log10(v)))
+		}
 		if c.Mantissa >= 1e15 || c.State == Binary || !c.Exact {
 			e = meaningful(c, v)
 		}
-		finest = min(finest, e)
+		decimals.add(-e)
+		significant.add(first - e + 1)
+		lead = max(lead, first)
 		if !d.single.failed && (c.Mantissa >= 1e7 || c.State == Binary || !c.Exact) {
 			d.trySingle(c, v)
 		}
@@ -88,11 +105,24 @@ func (d *Digits) push(part []int, cells []Cell) {
 			d.tryScales(e, v)
 		}
 	}
-	if finest == math.MaxInt {
-		d.wholeRows++
+	if decimals.count == 0 {
 		return
 	}
-	d.rows[min(max(-finest, 0), mostDecimals)]++
+	d.votes += int64(cmp.Compare(decimals.count, significant.count))
+	d.decimals[min(max(decimals.value, 0), maxDecimals)]++
+	d.significant[min(max(significant.value-lead-1, 0), maxDecimals)]++
+}
+
+// most is the greatest of some numbers, and how often it occurs.
+type most struct{ value, count int }
+
+func (m *most) add(n int) {
+	switch {
+	case m.count == 0 || n > m.value:
+		*m = most{n, 1}
+	case n == m.value:
+		m.count++
+	}
 }
 
 // meaningful is the power of ten of the last digit of v that means something.
@@ -111,7 +141,7 @@ func meaningful(c *Cell, v float64) int {
 		}
 	}
 	if c.State == Binary || !c.Exact {
-		return -mostDecimals
+		return -maxDecimals
 	}
 	return int(c.Exponent)
 }
@@ -157,7 +187,7 @@ func (d *Digits) trySingle(c *Cell, v float64) {
 	if 2*unit > step {
 		return
 	}
-	d.single.add(math.Abs(float64(near)-v) <= unit/2 || n <= 9 && c.Mantissa%10 != 0 && shortestSingle(c, near))
+	d.single.add(math.Abs(float64(near)-v) <= unit/2+v*0x1p-53 || n <= 9 && c.Mantissa%10 != 0 && shortestSingle(c, near))
 }
 
 func shortestSingle(c *Cell, near float32) bool {
@@ -197,10 +227,11 @@ func (d *Digits) countScales() {
 }
 
 func (d *Digits) merge(next *Digits) {
-	for i, n := range next.rows {
-		d.rows[i] += n
+	for i := range d.decimals {
+		d.decimals[i] += next.decimals[i]
+		d.significant[i] += next.significant[i]
 	}
-	d.wholeRows += next.wholeRows
+	d.votes += next.votes
 	d.beyondUnit = d.beyondUnit || next.beyondUnit
 	d.single.merge(next.single)
 	for i := range d.scales {
@@ -216,8 +247,12 @@ func (d *Digits) Half() float64 {
 	if s := d.Scale(); s > 0 {
 		return 0.5 / s
 	}
+	rows := &d.decimals
+	if d.votes < 0 {
+		rows = &d.significant
+	}
 	total, coarser := int64(0), int64(0)
-	for _, n := range d.rows {
+	for _, n := range rows {
 		total += n
 	}
 	if total == 0 {
@@ -226,9 +261,9 @@ func (d *Digits) Half() float64 {
 		}
 		return 0
 	}
-	for decimals, n := range d.rows {
+	for decimals, n := range rows {
 		if coarser += n; coarser*1000 > total {
-			if decimals == mostDecimals {
+			if decimals == maxDecimals {
 				return 0
 			}
 			return 0.5 / decimal.Power10(decimals)

@@ -39,26 +39,31 @@ func StampOf(c *Cell) Stamp {
 
 // stamp is the stamp of a row, its two columns joined if there are two.
 func (l *Layout) stamp(cells []Cell) Stamp {
-	s := StampOf(&cells[l.Time])
-	if l.Fine < 0 || !s.known {
-		return s
+	if l.Fine < 0 {
+		return StampOf(&cells[l.Time])
 	}
-	fine := StampOf(&cells[l.Fine])
+	return Joined(&cells[l.Time], &cells[l.Fine], l.Per)
+}
+
+// Joined is the stamp of whole units in one cell and a fraction, in 1/per of them, in
+// another. per is a power of ten.
+func Joined(whole, fraction *Cell, per int64) Stamp {
+	s, fine := StampOf(whole), StampOf(fraction)
 	decimals := int32(0)
-	for per := l.Per; per > 1; per /= 10 {
+	for p := per; p > 1; p /= 10 {
 		decimals++
 	}
-	most := math.MaxInt64/l.Per - 1
+	most := math.MaxInt64/per - 1
 	switch {
-	case !fine.known:
+	case !s.known || !fine.known:
 		return Stamp{}
-	case s.Exact && fine.Exact && s.Exponent == 0 && fine.Exponent == 0 && s.Mantissa < most && s.Mantissa > -most && fine.Mantissa < l.Per && fine.Mantissa >= 0:
-		s.Mantissa = s.Mantissa*l.Per + fine.Mantissa
+	case s.Exact && fine.Exact && s.Exponent == 0 && fine.Exponent == 0 && s.Mantissa < most && s.Mantissa > -most && fine.Mantissa < per && fine.Mantissa >= 0:
+		s.Mantissa = s.Mantissa*per + fine.Mantissa
 		s.Exponent = -decimals
 	default:
 		s.Exact = false
 	}
-	s.Value += fine.Value / float64(l.Per)
+	s.Value += fine.Value / float64(per)
 	return s
 }
 

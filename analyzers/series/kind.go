@@ -1,0 +1,136 @@
+package series
+
+import (
+	"bytes"
+	"cmp"
+	"compress/gzip"
+	"io"
+	"path"
+	"slices"
+	"strings"
+
+	"dextral/analyzers/series/text"
+)
+
+// Kind says what sort of log a file is, if it is one. The zero Kind is none.
+type Kind struct {
+	Name     string // such as "delimited text" or "ROS bag"; "" for what is no log
+	Readable bool   // Read reads it
+}
+
+// None reports whether the file is no log.
+func (k Kind) None() bool { return k.Name == "" }
+
+// HeadSize is how much of the start of a file Recognise wants to see. It makes do with less.
+const HeadSize = text.MaxHead
+
+// magics are the first bytes of formats that hold attitude logs, or may. None
+// of them can be read yet.
+var magics = []struct{ magic, name string }{
+	{"#ROSBAG V", "ROS bag"},
+	{"\x89MCAP0\r\n", "MCAP"},
+	{"ULog\x01\x12\x35", "ULog"},
+	{"\x89HDF\r\n\x1a\n", "HDF5"},
+	{"MATLAB 7.3 MAT-file", "MAT-file"},
+	{"MATLAB 5.0 MAT-file", "MAT-file"},
+	{"PAR1", "Parquet"},
+	{"ARROW1", "Arrow"},
+	{"FEA1", "Feather"},
+	{"Obj\x01", "Avro"},
+	{"\x93NUMPY", "NumPy array"},
+	{"SQLite format 3\x00", "SQLite database"},
+	{"CDF\x01", "NetCDF"}, {"CDF\x02", "NetCDF"}, {"CDF\x05", "NetCDF"},
+	{"\xcd\xf3\x00\x01", "CDF"},
+	{"DAF/CK", "SPICE C-kernel"},
+	{"\xa3\x95\x80\x80", "ArduPilot dataflash log"},
+	{"\xd0\xcf\x11\xe0\xa1\xb1\x1a\xe1", "spreadsheet (xls)"},
+	{"BZh", "bzip2"},
+	{"\xfd7zXZ\x00", "xz"},
+	{"\x04\x22\x4d\x18", "LZ4"},
+	{"\x28\xb5\x2f\xfd", "zstd"},
+	{"7z\xbc\xaf\x27\x1c", "7z archive"},
+	{"PK\x03\x04", "zip archive"},
+	{"CCSDS_AEM_VERS", "CCSDS attitude ephemeris (KVN)"},
+}
+
+// extensions name formats whose files begin with nothing telling.
+var extensions = map[string]string{
+	".bag": "ROS bag", ".mcap": "MCAP", ".db3": "SQLite database", ".ulg": "ULog", ".px4log": "PX4 log", ".tlog": "MAVLink telemetry log",
+	".mat": "MAT-file", ".h5": "HDF5", ".hdf5": "HDF5", ".hdf": "HDF5", ".parquet": "Parquet", ".feather": "Feather", ".arrow": "Arrow",
+	".npy": "NumPy array", ".xls": "spreadsheet (xls)",
+	".bc": "SPICE C-kernel", ".tdms": "TDMS", ".mf4": "MDF", ".mdf": "MDF", ".blf": "BLF", ".asammdf": "MDF", ".rrd": "Rerun recording",
+	".svo": "SVO", ".sbg": "INS log", ".sbf": "GNSS log", ".ubx": "GNSS log", ".pcap": "packet capture", ".pcapng": "packet capture",
+}
+
+// tables are the extensions of text files that can be a log. Other text, such
+// as program code, point clouds and prose with a table in it, is none.
+var tables = []string{"", ".csv", ".tsv", ".tab", ".txt", ".dat", ".data", ".log", ".asc", ".out", ".prn", ".tum", ".kitti", ".traj", ".trj", ".pose", ".poses",
+	".gt", ".odom", ".imu", ".att", ".mocap", ".freiburg"}
+
+var jsonLines = []string{".jsonl", ".ndjson", ".jsonlines"}
+
+// Recognise says what kind of log a file is by its name and its first bytes.
+func Recognise(name string, head []byte) Kind {
+	extension := strings.ToLower(path.Ext(name))
+	for _, m := range magics {
+		if bytes.HasPrefix(head, []byte(m.magic)) {
+			return Kind{Name: cmp.Or(packed[m.name][extension], m.name)}
+		}
+	}
+	if bytes.HasPrefix(head, []byte(gzipMagic)) {
+		inner := Recognise(strings.TrimSuffix(name, path.Ext(name)), unzipped(head))
+		if inner.Name != "" {
+			inner.Name += ", gzip"
+			inner.Readable = inner.Readable && !strings.HasSuffix(inner.Name, "gzip, gzip")
+		}
+		return inner
+	}
+	switch {
+	case len(head) > 262 && string(head[257:262]) == "ustar":
+		return Kind{Name: "tar archive"}
+	case slices.Contains(tables, extension) && (bytes.HasPrefix(head, []byte("\xff\xfe")) || bytes.HasPrefix(head, []byte("\xfe\xff"))):
+		return Kind{Name: "UTF-16 text"}
+	case binary(head):
+		return Kind{Name: extensions[extension]}
+	case slices.Contains(tables, extension):
+		h, ok := text.Sniff(name, head, len(head) < HeadSize)
+		if ok && (extension == ".csv" || extension == ".tsv" || layoutOf(name, h, Options{}).any()) {
+			return Kind{"delimited text", true}
+		}
+	case slices.Contains(jsonLines, extension):
+		return Kind{Name: "JSON lines"}
+	}
+	return Kind{}
+}
+
+// packed are the formats that are an archive of their own extension.
+var packed = map[string]map[string]string{"zip archive": {
+	".npz": "NumPy archive", ".xlsx": "spreadsheet (xlsx)", ".ods": "spreadsheet (ods)",
+}}
+
+const gzipMagic = "\x1f\x8b"
+
+// unzipped is what of the start of a gzip file can be unpacked from its first bytes.
+func unzipped(head []byte) []byte {
+	z, err := gzip.NewReader(bytes.NewReader(head))
+	if err != nil {
+		return nil
+	}
+	out, _ := io.ReadAll(io.LimitReader(z, HeadSize)) // the head ends in the middle: that is no error here
+	return out
+}
+
+// binary reports whether bytes are no text: they contain NUL, or more than one in
+// twenty is a control character.
+func binary(head []byte) bool {
+	controls := 0
+	for _, b := range head {
+		switch {
+		case b == 0:
+			return true
+		case b < ' ' && b != '\n' && b != '\r' && b != '\t' && b != '\f':
+			controls++
+		}
+	}
+	return controls*20 > len(head)
+}

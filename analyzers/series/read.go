@@ -1,0 +1,202 @@
+package series
+
+import (
+	"bytes"
+	"compress/gzip"
+	"context"
+	"errors"
+	"fmt"
+	"io"
+	"math"
+
+	"dextral/analyzers/series/columns"
+	"dextral/analyzers/series/fold"
+	"dextral/analyzers/series/text"
+	"dextral/rules"
+)
+
+// Options change how logs are read. The zero value is fine.
+type Options struct {
+	// Declare adds what is declared about a channel to its value, whose key,
+	// claims, places and numbers are known. It may change the form, or take the
+	// reason away why a channel is undecided.
+	Declare func(*rules.Value)
+	// Workers is the number of blocks that are folded at a time; below 2 there is
+	// one, in the caller's goroutine.
+	Workers int
+
+	block int // size of blocks in tests
+}
+
+// MaxBadRows is the number of bad rows of which Result keeps the particulars.
+const MaxBadRows = 8
+
+// Result is what one pass found out about a log.
+type Result struct {
+	Format    string // such as "comma-separated"; "" if the file is no table of numbers
+	Channels  []*rules.Series
+	Pairs     []*rules.SeriesPair
+	Rows      int64          // rows read; 0 if there is no channel to read them for
+	Clock     *rules.Clock   // nil if there are no time stamps
+	Undecided []*rules.Value // channels that are not read, with Why; numbers of the first row
+	BadRows   int64          // rows that could not be read
+	FirstBad  []BadRow       // the first MaxBadRows of them
+}
+
+// BadRow is a row that could not be read.
+type BadRow struct {
+	Place  rules.Place
+	Reason string
+}
+
+// Read reads a log to its end. The path is the one to be printed. A file that
+// is no log, or one without orientations, gives an empty Result and no error,
+// after a look at its beginning. With an error, from the reader or because ctx was cancelled,
+// comes the result so far.
+func Read(ctx context.Context, path string, r io.Reader, opts Options) (Result, error) {
+	start, r, err := unpack(r)
+	if err != nil {
+		return Result{}, fmt.Errorf("%s: %w", path, err)
+	}
+	s, ok := text.Sniff(path, start, len(start) < HeadSize)
+	if !ok {
+		return Result{}, nil
+	}
+	l := layoutOf(path, s, opts)
+	s.Cells = l.cells
+	in := &feed{r: io.MultiReader(bytes.NewReader(start[s.Offset:]), r), cut: s.Cut, line: s.Line}
+	total, err := &part{fold: fold.New(&l.fold)}, error(nil)
+	if len(l.channels) > 0 {
+		total, err = run(ctx, in, &l.fold, opts, func() *folder {
+			return &folder{parser: &delimited{s.Table}, origin: s.Line - 1, cells: make([]fold.Cell, l.width())}
+		})
+	}
+	if err != nil && !errors.Is(err, ctx.Err()) {
+		err = fmt.Errorf("%s: reading stopped after line %d: %w", path, in.line, err)
+	}
+	return l.result(path, formatNames[s.Delimiter], s.Line-1, total), err
+}
+
+var formatNames = map[byte]string{',': "comma-separated", ';': "semicolon-separated", '\t': "tab-separated", '|': "bar-separated", ' ': "blank-separated"}
+
+// delimited is the parser of delimited text.
+type delimited struct{ text.Table }
+
+// Blank reports whether a record is none.
+func (*delimited) Blank(record []byte) bool { return text.Blank(record) }
+
+// unpack reads the start of a file, unzipped if it is a gzip file, and returns
+// it with the reader of the rest.
+func unpack(r io.Reader) ([]byte, io.Reader, error) {
+	start, err := readHead(r)
+	if err != nil || !bytes.HasPrefix(start, []byte(gzipMagic)) {
+		return start, r, err
+	}
+	z, err := gzip.NewReader(io.MultiReader(bytes.NewReader(start), r))
+	if err != nil {
+		return nil, nil, fmt.Errorf("gzip: %w", err)
+	}
+	start, err = readHead(z)
+	return start, z, err
+}
+
+func readHead(r io.Reader) ([]byte, error) {
+	start := make([]byte, HeadSize)
+	n, err := io.ReadFull(r, start)
+	if err == io.EOF || err == io.ErrUnexpectedEOF {
+		err = nil
+	}
+	return start[:n], err
+}
+
+// layoutOf plans a table of delimited text.
+func layoutOf(path string, s *text.Head, opts Options) *layout {
+	h := &head{path: path, width: s.Width}
+	for _, fields := range s.Headers {
+		var header []columns.Column
+		for _, f := range fields {
+			header = append(header, columns.Column{Text: f.Text, Place: f.Place})
+		}
+		h.headers = append(h.headers, header)
+	}
+	for _, row := range s.Rows {
+		h.rows = append(h.rows, s.Loose(row))
+	}
+	h.number = func(row, column int) rules.Number {
+		n := rules.Number{Value: math.NaN()}
+		if fields := s.Fields(path, s.Rows[row]); column < len(fields) {
+			n.Text, n.Place = fields[column].Text, fields[column].Place
+		}
+		if h.rows[row] != nil {
+			n.Value = h.rows[row][column].Value()
+		}
+		return n
+	}
+	return plan(h, opts)
+}
+
+// result puts the folds in the form that rules judge.
+func (l *layout) result(path, format string, origin int64, total *part) Result {
+	f := total.fold
+	r := Result{Format: format, Rows: f.Rows, Clock: l.clockOf(&f.Clock), Undecided: l.undecided, BadRows: total.bad.count}
+	place := func(row int64) rules.Place {
+		line := int(origin + row)
+		return rules.Place{Path: path, Line: line, Column: 1, EndLine: line + 1, EndColumn: 1, Row: row}
+	}
+	for i := range l.channels {
+		s := l.series(i, &f.Channels[i], place)
+		s.Rows, s.Clock = f.Rows, r.Clock
+		if r.Clock != nil {
+			s.Unit = r.Clock.Unit
+			s.Stamp = func(t float64) string { return l.fold.Start.After(t).String() }
+		}
+		r.Channels = append(r.Channels, s)
+	}
+	for i, p := range l.fold.Pairs {
+		pair := &rules.SeriesPair{First: r.Channels[p[0]], Second: r.Channels[p[1]]}
+		for k := range f.Pairs[i].Count {
+			a, b := f.Pairs[i].Split(k, &l.fold.Channels[p[0]], &l.fold.Channels[p[1]])
+			pair.Samples = append(pair.Samples, rules.PairSample{Row: f.Pairs[i].Rows[k], First: a, Second: b})
+		}
+		r.Pairs = append(r.Pairs, pair)
+	}
+	for _, b := range total.bad.first[:min(total.bad.count, MaxBadRows)] {
+		r.FirstBad = append(r.FirstBad, BadRow{place(b.row), l.reason(b.fault)})
+	}
+	return r
+}
+
+func (l *layout) series(i int, f *fold.Summary, place func(int64) rules.Place) *rules.Series {
+	s := &rules.Series{
+		Value: l.channels[i].Value, Columns: l.names[i],
+		Half: f.Digits.Half(), Float32: f.Digits.Single(), Scale: f.Digits.Scale(),
+		Gaps: f.Gaps, Continuity: f.Continuity, Matrices: f.Matrices.Rules(), RowPlace: place,
+	}
+	for k := range f.Ranges {
+		s.Ranges = append(s.Ranges, f.Ranges[k].Range)
+	}
+	if s.Continuity.Rows > 0 && f.Digits.Integers() {
+		s.Value.Why = fmt.Sprintf("its numbers are whole, of norm %.6g to %.6g: a quaternion times a scale that nothing states",
+			s.Continuity.MinNorm.Value, s.Continuity.MaxNorm.Value)
+	}
+	return s
+}
+
+// reason says what is wrong with a row.
+func (l *layout) reason(f text.Fault) string {
+	switch f.Kind {
+	case text.Ragged:
+		return fmt.Sprintf("has %d columns; %d are expected", f.Column, len(l.cells))
+	case text.NotNumber:
+		for i := range l.channels {
+			for k, c := range l.channels[i].Columns {
+				if c == f.Column {
+					return fmt.Sprintf("column %d (%s) is no number", c+1, l.names[i][k])
+				}
+			}
+		}
+		return fmt.Sprintf("column %d is no number", f.Column+1)
+	default:
+		return fmt.Sprintf("is longer than %d bytes", text.MaxRecord)
+	}
+}

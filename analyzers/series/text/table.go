@@ -1,0 +1,189 @@
+package text
+
+import (
+	"bytes"
+
+	"dextral/analyzers/series/fold"
+)
+
+// Table says how the rows of a file are read.
+type Table struct {
+	Delimiter byte  // ' ' for runs of blanks and tabs
+	Point     byte  // '.' or ','
+	Width     int   // columns of a row
+	Cells     []int // for each column the cell that it goes to, or -1
+}
+
+// Fault says why a row is not read.
+type Fault struct {
+	Kind   FaultKind
+	Column int // NotNumber: the column, from 0; Ragged: the columns the row has
+}
+
+// FaultKind is the kind of a fault.
+type FaultKind uint8
+
+// The faults.
+const (
+	None      FaultKind = iota
+	Ragged              // more or fewer columns than the header has
+	NotNumber           // words where a number is expected
+	TooLong             // longer than MaxRecord
+)
+
+// Row reads the cells of a record. What it leaves in cells when there is a
+// fault has no meaning.
+func (t *Table) Row(record []byte, cells []fold.Cell) Fault {
+	if len(record) > MaxRecord {
+		return Fault{Kind: TooLong}
+	}
+	if t.Delimiter == ' ' {
+		return t.blankRow(record, cells)
+	}
+	i := 0
+	for column := 0; ; column++ {
+		if column < t.Width && t.Cells[column] >= 0 {
+			c := &cells[t.Cells[column]]
+			// Nearly always a number and a delimiter come next.
+			for i < len(record) && record[i] == ' ' {
+				i++
+			}
+			end := c.Scan(record, i, t.Point)
+			if end > i && (end == len(record) || record[end] == t.Delimiter) {
+				c.State = fold.Written
+				i = end
+			} else {
+				from := i
+				i = t.fieldEnd(record, from)
+				if !t.read(record[from:i], c) {
+					return Fault{NotNumber, column}
+				}
+			}
+		} else {
+			i = t.fieldEnd(record, i)
+		}
+		if i == len(record) {
+			return t.width(column+1, false)
+		}
+		i++
+		if i == len(record) { // a delimiter at the end of the line
+			if column+1 < t.Width && t.Cells[column+1] >= 0 {
+				cells[t.Cells[column+1]].State = fold.Gap
+			}
+			return t.width(column+2, true)
+		}
+	}
+}
+
+// width judges the number of columns. An empty one may follow the last.
+func (t *Table) width(columns int, emptyLast bool) Fault {
+	if columns == t.Width || emptyLast && columns == t.Width+1 {
+		return Fault{}
+	}
+	return Fault{Ragged, columns}
+}
+
+// fieldEnd is where the field that begins at i ends.
+func (t *Table) fieldEnd(record []byte, i int) int {
+	start := i
+	for start < len(record) && record[start] == ' ' {
+		start++
+	}
+	if start < len(record) && record[start] == '"' {
+		if behind := closing(record, start); behind > 0 && t.ends(record, behind) {
+			i = behind
+		}
+	}
+	if n := bytes.IndexByte(record[i:], t.Delimiter); n >= 0 {
+		return i + n
+	}
+	return len(record)
+}
+
+// ends reports whether only blanks stand between i and a delimiter or the end.
+func (t *Table) ends(record []byte, i int) bool {
+	for i < len(record) && record[i] == ' ' {
+		i++
+	}
+	return i == len(record) || record[i] == t.Delimiter || record[i] == '\r'
+}
+
+// closing is the offset behind the quote that closes the one at i, or 0.
+func closing(record []byte, i int) int {
+	for {
+		n := bytes.IndexByte(record[i+1:], '"')
+		if n < 0 {
+			return 0
+		}
+		i += n + 1
+		if i+1 == len(record) || record[i+1] != '"' {
+			return i + 1
+		}
+		i++
+	}
+}
+
+// blankRow reads a record whose columns are set off by blanks.
+func (t *Table) blankRow(record []byte, cells []fold.Cell) Fault {
+	columns := 0
+	for i := 0; ; columns++ {
+		for i < len(record) && (record[i] == ' ' || record[i] == '\t') {
+			i++
+		}
+		if i == len(record) {
+			return t.width(columns, false)
+		}
+		from := i
+		if columns < t.Width && t.Cells[columns] >= 0 {
+			c := &cells[t.Cells[columns]]
+			i = c.Scan(record, from, t.Point)
+			if i > from && (i == len(record) || record[i] == ' ' || record[i] == '\t') {
+				c.State = fold.Written
+				continue
+			}
+			i = blankEnd(record, from)
+			if !t.read(record[from:i], c) {
+				return Fault{NotNumber, columns}
+			}
+			continue
+		}
+		i = blankEnd(record, from)
+	}
+}
+
+func blankEnd(record []byte, i int) int {
+	if record[i] == '"' {
+		if behind := closing(record, i); behind > 0 {
+			i = behind
+		}
+	}
+	for i < len(record) && record[i] != ' ' && record[i] != '\t' {
+		i++
+	}
+	return i
+}
+
+// read reads a field that is not plainly a number: one with blanks or quotes
+// around it, a word, a time of day, or nothing.
+func (t *Table) read(field []byte, c *fold.Cell) bool {
+	field = Unquote(field)
+	if len(field) == 0 {
+		c.State = fold.Gap
+		return true
+	}
+	if end := c.Scan(field, 0, t.Point); end == len(field) {
+		c.State = fold.Written
+		return true
+	}
+	return readWord(field, c) || readTime(field, c)
+}
+
+// Unquote takes blanks and one pair of quotes off a field, and blanks inside
+// them. Doubled quotes are left as they are.
+func Unquote(field []byte) []byte {
+	field = bytes.Trim(field, " \t")
+	if n := len(field); n >= 2 && (field[0] == '"' || field[0] == '\'') && field[n-1] == field[0] {
+		field = bytes.Trim(field[1:n-1], " \t")
+	}
+	return field
+}
