@@ -5,8 +5,7 @@
 //
 // A rotor R here maps the coordinates of a body to those of the space it turns
 // in, v_space = R v_body R~. Its angular rate is one vector with two sets of
-// coordinates, omega_space = R omega_body R~, and as bivectors, Omega = I
-// omega,
+// coordinates, omega_space = R omega_body R~. With the bivectors Omega = I omega
 //
 //	R' = -R Omega_body / 2 = -Omega_space R / 2
 //

@@ -81,8 +81,7 @@ func (m Mat3) Transpose() Mat3 {
 // e2 and e3.
 func (m Mat3) Det() float64 { return m.Column(0).Dot(m.Column(1).Cross(m.Column(2))) }
 
-// Trace returns the sum of the diagonal; of a rotation by angle a it is 1 + 2
-// cos a.
+// Trace returns the sum of the diagonal: 1 + 2 cos a of a rotation by angle a.
 func (m Mat3) Trace() float64 { return m[0][0] + m[1][1] + m[2][2] }
 
 // Apply returns m v.

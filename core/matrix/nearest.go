@@ -8,7 +8,8 @@ import "dextral/core/rotor"
 const rounding = 32
 
 // Defect returns the Frobenius norm of m^T m - 1: zero when the columns of m
-// are orthonormal, whatever the sign of the determinant.
+// are orthonormal, whatever the sign of the determinant. Of a matrix that is
+// not finite it is NaN or infinite.
 func Defect(m Mat3) float64 { return m.Transpose().Mul(m).Sub(Identity).Norm() }
 
 // Nearest returns the proper rotation nearest to m, and how far it is, in the
