@@ -34,8 +34,10 @@ const (
 	unit                        // of length one
 	axisKind                    // moving, fixed
 	linking                     // to, from
+	leadsFrames                 // first word of a key that names a frame
 	camera                      // camera
 	filler                      // says nothing: params
+	phrase                      // part of a phrase of package phrases
 	not                         // no orientation
 	headNot                     // no orientation if the name is about it: rates, but not rate_gyro
 	deepNot                     // of a name that is about it: nothing below is an orientation either
@@ -89,6 +91,7 @@ func init() {
 		{unit, "unit"},
 		{axisKind, "intrinsic extrinsic moving fixed static rotating"},
 		{linking, "to from"},
+		{leadsFrames, "frame header parent child to from target source"},
 		{camera, "camera cam"},
 		{filler, "param params parameter parameters config cfg settings options"},
 	} {
@@ -119,6 +122,20 @@ func init() {
 		for _, w := range strings.Fields(l.words) {
 			lexicon[w] |= l.tags
 			notWhy[w] = l.why
+		}
+	}
+	tagPhrases(scalarPhrases)
+	tagPhrases(storagePhrases)
+	tagPhrases(productPhrases)
+	tagPhrases(handPhrases)
+}
+
+// tagPhrases marks the words of phrases, so that names without any are not
+// searched for them.
+func tagPhrases[T comparable](known phrases[T]) {
+	for text := range known {
+		for _, w := range strings.Fields(text) {
+			lexicon[w] |= phrase
 		}
 	}
 }

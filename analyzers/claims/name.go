@@ -48,14 +48,17 @@ func Read(name string) *Name {
 // read as one; the stem is that of the inner name in any case.
 func ReadIn(outer, name string) *Name {
 	n := Read(name)
+	if outer == "" {
+		return n
+	}
 	const little = generic | matrixWord | mapping | angleWord | vector | degree | radian | scalarOrder
 	for _, w := range n.words {
 		if lexicon[w.text]&little == 0 {
 			return n
 		}
 	}
-	both := Read(outer + "_" + name)
-	both.Text, both.Stem = name, n.Stem
+	both := Read(outer + "." + name)
+	both.Stem = n.Stem
 	return both
 }
 
@@ -140,10 +143,12 @@ func (n *Name) readTerms() {
 			n.BadUnit = w.text
 		}
 	}
-	n.Scalar = one(texts, scalarPhrases)
-	n.Storage = one(texts, storagePhrases)
-	n.Product = one(texts, productPhrases)
-	n.Hand = one(texts, handPhrases)
+	if n.any(phrase) {
+		n.Scalar = one(texts, scalarPhrases)
+		n.Storage = one(texts, storagePhrases)
+		n.Product = one(texts, productPhrases)
+		n.Hand = one(texts, handPhrases)
+	}
 	n.readAngles(texts)
 }
 

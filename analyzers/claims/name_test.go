@@ -192,7 +192,9 @@ func TestReadIn(t *testing.T) {
 	assert.Equal(t, convention.Quaternion, ReadIn("quaternion", "data").Form(Four).Form)
 	assert.Equal(t, convention.NoForm, ReadIn("quaternion", "offset").Form(Four).Form, "a name with words of its own stands alone")
 	assert.Empty(t, ReadIn("mount", "matrix").Stem)
-	assert.Equal(t, "matrix", ReadIn("mount", "matrix").Text)
+	assert.Equal(t, "mount.matrix", ReadIn("mount", "matrix").Text)
+	assert.Equal(t, "rpy", ReadIn("mount", "rpy").Text)
+	assert.Equal(t, "matrix", ReadIn("", "matrix").Text)
 }
 
 func TestComponents(t *testing.T) {
@@ -242,6 +244,6 @@ func TestAnyName(t *testing.T) {
 		n.Component()
 		n.AxisAnglePart()
 		SubscriptFrames(name)
-		ReadNeighbour(name, "zyx deg")
+		n.Neighbour("zyx deg")
 	})
 }

@@ -38,24 +38,23 @@ var neighbourWords = map[string]func(n *Neighbour, value string){
 // neighbourFillers are words of such keys that name what is told about.
 const neighbourFillers = euler | rotation | angleWord | quaternion | matrixWord | orientation | storage | scalarOrder | generic | axes | role
 
-// ReadNeighbour reads a key with its text. It reports false for a key that
-// tells nothing about others.
-func ReadNeighbour(key, value string) (Neighbour, bool) {
+// Neighbour reads a key of this name with its text. It reports false for a key
+// that tells nothing about others.
+func (k *Name) Neighbour(value string) (Neighbour, bool) {
 	var n Neighbour
-	words := split(key)
-	if len(words) == 0 || len(value) > 200 {
+	if len(k.words) == 0 || len(value) > 200 {
 		return n, false
 	}
-	if n.frames(words, value) || n.flags(words, value) {
+	if n.frames(k.words, value) || n.flags(k, value) {
 		return n, true
 	}
-	last := words[len(words)-1]
-	read := neighbourWords[last.text]
+	last := len(k.words) - 1
+	read := neighbourWords[k.words[last].text]
 	if read == nil {
 		return n, false
 	}
 	var stem []string
-	for _, w := range words[:len(words)-1] {
+	for _, w := range k.words[:last] {
 		if w.text == "angular" || lexicon[w.text]&(angleWord|euler|rotation) != 0 {
 			n.Angular = true
 		} else if lexicon[w.text]&neighbourFillers == 0 {
@@ -127,26 +126,25 @@ func wordsOf(text string) []string {
 }
 
 // flags reads degrees: true, radians: false, scalar_first: true.
-func (n *Neighbour) flags(words []word, value string) bool {
+func (n *Neighbour) flags(k *Name, value string) bool {
 	yes := value == "true" || value == "True" || value == "yes"
 	if !yes && value != "false" && value != "False" && value != "no" {
 		return false
 	}
-	name := &Name{}
-	text := ""
-	for _, w := range words {
-		name.tags |= lexicon[w.text]
-		text += w.text + " "
+	first, last := convention.ScalarFirst, convention.ScalarLast
+	deg, rad := convention.Degree, convention.Radian
+	if !yes {
+		first, last, deg, rad = last, first, rad, deg
 	}
-	switch {
-	case text == "scalar first ":
-		n.Scalar = map[bool]convention.ScalarPlace{true: convention.ScalarFirst, false: convention.ScalarLast}[yes]
-	case text == "scalar last ":
-		n.Scalar = map[bool]convention.ScalarPlace{true: convention.ScalarLast, false: convention.ScalarFirst}[yes]
-	case name.any(degree) && !name.any(radian):
-		n.Unit = map[bool]convention.Unit{true: convention.Degree, false: convention.Radian}[yes]
-	case name.any(radian) && !name.any(degree):
-		n.Unit = map[bool]convention.Unit{true: convention.Radian, false: convention.Degree}[yes]
+	switch text := joined(k.words); {
+	case text == "scalar first":
+		n.Scalar = first
+	case text == "scalar last":
+		n.Scalar = last
+	case k.any(degree) && !k.any(radian):
+		n.Unit = deg
+	case k.any(radian) && !k.any(degree):
+		n.Unit = rad
 	default:
 		return false
 	}
@@ -158,20 +156,25 @@ func (n *Neighbour) flags(words []word, value string) bool {
 // (REP 105 and the URDF joint element, from memory); the target frame of a
 // lookup is the one that coordinates go to.
 func (n *Neighbour) frames(words []word, value string) bool {
-	if value == "" {
+	if value == "" || len(words) > 3 || lexicon[words[0].text]&leadsFrames == 0 {
 		return false
 	}
-	text := ""
-	for _, w := range words {
-		text += w.text + " "
-	}
-	switch text {
-	case "frame id ", "header frame id ", "parent ", "parent frame ", "parent frame id ", "parent link ", "to frame ", "target frame ", "to ":
+	switch joined(words) {
+	case "frame id", "header frame id", "parent", "parent frame", "parent frame id", "parent link", "to frame", "target frame", "to":
 		n.To = value
-	case "child frame id ", "child ", "child frame ", "child link ", "from frame ", "source frame ", "from ":
+	case "child frame id", "child", "child frame", "child link", "from frame", "source frame", "from":
 		n.From = value
 	default:
 		return false
 	}
 	return true
+}
+
+// joined is the words with spaces between them.
+func joined(words []word) string {
+	text := words[0].text
+	for _, w := range words[1:] {
+		text += " " + w.text
+	}
+	return text
 }

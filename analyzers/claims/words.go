@@ -39,12 +39,18 @@ func splitChunk(chunk string) []word {
 			return []word{{lower[:i], chunk[:i]}, {lower[i:], chunk[i:]}}
 		}
 	}
-	for _, pattern := range []*regexp.Regexp{linked, capsTo} {
+	for _, pattern := range [...]struct {
+		mark string
+		*regexp.Regexp
+	}{{"2", linked}, {"to", capsTo}} {
+		if !strings.Contains(chunk, pattern.mark) {
+			continue
+		}
 		if m := pattern.FindStringSubmatch(chunk); m != nil {
 			return []word{{strings.ToLower(m[1]), m[1]}, {"to", "to"}, {strings.ToLower(m[2]), m[2]}}
 		}
 	}
-	if m := letters.FindStringSubmatch(chunk); m != nil && m[2] != m[3] {
+	if m := findLetters(chunk); m != nil && m[2] != m[3] {
 		return []word{{strings.ToLower(m[1]), m[1]}, {m[2], m[2]}, {m[3], m[3]}}
 	}
 	var words []word
@@ -52,6 +58,14 @@ func splitChunk(chunk string) []word {
 		words = append(words, word{strings.ToLower(part), part})
 	}
 	return words
+}
+
+// findLetters matches letters, which few chunks are short enough for.
+func findLetters(chunk string) []string {
+	if len(chunk) > 4 {
+		return nil
+	}
+	return letters.FindStringSubmatch(chunk)
 }
 
 // splitCase cuts where a capital follows a small letter or digit, and before the

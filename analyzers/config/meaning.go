@@ -50,13 +50,13 @@ func (w *walker) meaning(s *spot, shape claims.Shape) reading {
 		m.Why = "angles in " + s.name.BadUnit + " are not read"
 	}
 	if m.Form == convention.NoForm || m.Form == convention.Matrix {
-		return w.told(s, shape, m, r)
+		return w.toldBy(s, shape, m, r)
 	}
 	return m
 }
 
-// told looks for somebody who says what the key does not.
-func (w *walker) told(s *spot, shape claims.Shape, m reading, r []remark) reading {
+// toldBy looks for somebody who says what the key does not.
+func (w *walker) toldBy(s *spot, shape claims.Shape, m reading, r []remark) reading {
 	says := reading{}
 	w.eachNeighbour(s, func(n claims.Neighbour, _ rules.Claim) {
 		if form := fitting(n.Form, shape); form != convention.NoForm && says.Form == convention.NoForm {

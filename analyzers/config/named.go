@@ -67,6 +67,9 @@ func (w *walker) named(s *spot) map[int]bool {
 
 // part reads an entry as a component.
 func (w *walker) part(s *spot, i int, e tree.Entry) (part, bool) {
+	if !mayBePart(e.Value) {
+		return part{}, false
+	}
 	name := w.name("", e.Key)
 	c, ok := name.Component()
 	if !ok {
@@ -77,11 +80,20 @@ func (w *walker) part(s *spot, i int, e tree.Entry) (part, bool) {
 		p.Set, p.Index = claims.AxisSet, c.Index-1
 	}
 	if p.Set == claims.AxisSet {
-		p.vector = w.doc.Numbers(e.Value, 3)
-		return p, len(p.vector) == 3
+		p.vector = w.vector(e.Value)
+		return p, p.vector != nil
 	}
 	p.number, ok = w.doc.Number(e.Value)
 	return p, ok
+}
+
+// mayBePart reports whether a node may be a number or a vector of three. It looks
+// at no word, which most entries of a file are thus spared.
+func mayBePart(n *tree.Node) bool {
+	if n.Kind == tree.Scalar {
+		return n.Text != "" && strings.IndexByte("0123456789+-.NnIi", n.Text[0]) >= 0
+	}
+	return n.Kind == tree.List && len(n.Items) <= 3
 }
 
 // quaternion reads four components, or the x, y, z of something else.
@@ -192,9 +204,12 @@ func (w *walker) triad(s *spot, parts []part, done map[int]bool) {
 // axisAngles reads pairs of keys such as axis and angle_deg.
 func (w *walker) axisAngles(s *spot, done map[int]bool) {
 	for i, e := range s.node.Entries {
+		axis := w.vector(e.Value)
+		if axis == nil {
+			continue
+		}
 		kind, lead := w.name("", e.Key).AxisAnglePart()
-		axis := w.doc.Numbers(e.Value, 3)
-		if kind != claims.AxisPart || len(axis) != 3 {
+		if kind != claims.AxisPart {
 			continue
 		}
 		for j, f := range s.node.Entries {
@@ -216,6 +231,17 @@ func (w *walker) axisAngles(s *spot, done map[int]bool) {
 			break
 		}
 	}
+}
+
+// vector reads three numbers; nil for anything else.
+func (w *walker) vector(n *tree.Node) []rules.Number {
+	if n.Kind == tree.Scalar && len(n.Text) < len("0 0 1") {
+		return nil
+	}
+	if x := w.doc.Numbers(n, 3); len(x) == 3 {
+		return x
+	}
+	return nil
 }
 
 // inOrder sorts parts by their index; nil if they are not so many different ones.
@@ -279,7 +305,7 @@ func (w *walker) onlyParts(s *spot, parts []part) bool {
 		if slices.ContainsFunc(parts, func(p part) bool { return p.entry == i }) {
 			continue
 		}
-		if _, ok := claims.ReadNeighbour(e.Key, scalarText(e.Value)); !ok {
+		if !slices.ContainsFunc(w.tellers(s.node), func(t teller) bool { return t.key == e.KeyAt }) {
 			return false
 		}
 	}

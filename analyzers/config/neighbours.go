@@ -5,34 +5,58 @@ import (
 
 	"dextral/analyzers/claims"
 	"dextral/analyzers/config/tree"
+	"dextral/analyzers/source"
 	"dextral/core/angle"
 	"dextral/core/convention"
 	"dextral/rules"
 )
 
-// eachNeighbour calls see for every key beside a spot, and inside it, that tells
-// about values: with what it says, and a claim to be filled in.
-func (w *walker) eachNeighbour(s *spot, see func(claims.Neighbour, rules.Claim)) {
-	holder := s.holder()
-	if s.node.Kind == tree.Map {
-		w.tellers(s.node, s, see)
-	}
-	if holder != nil && holder.node != s.node {
-		w.tellers(holder.node, s, see)
-	}
+// teller is an entry of a map that tells about values beside it.
+type teller struct {
+	claims.Neighbour
+	claim rules.Claim // to be filled in with what it says
+	key   source.Span
 }
 
-// tellers are the entries of a map that tell about a value.
-func (w *walker) tellers(m *tree.Node, s *spot, see func(claims.Neighbour, rules.Claim)) {
+// tellers are the tellers of a map, found once.
+func (w *walker) tellers(m *tree.Node) []teller {
+	found, done := w.told[m]
+	if done {
+		return found
+	}
 	for _, e := range m.Entries {
-		if e.Value.Kind != tree.Scalar || e.KeyAt == s.keyAt || e.KeyAt.Empty() {
+		key, value := e.Key, e.Value
+		if key == "header" && value.Kind == tree.Map { // the stamp of a ROS message
+			key, value = "frame_id", value.Get("frame_id")
+		}
+		if value == nil || value.Kind != tree.Scalar || e.KeyAt.Empty() {
 			continue
 		}
-		n, ok := claims.ReadNeighbour(e.Key, e.Value.Text)
-		if !ok || n.Stem != "" && n.Stem != s.name.Stem {
-			continue
+		if n, ok := w.name("", key).Neighbour(value.Text); ok {
+			found = append(found, teller{n, rules.Claim{Source: rules.Sibling, Text: key + ": " + value.Text,
+				Place: w.doc.File.Place(e.KeyAt.Cover(value.Span))}, e.KeyAt})
 		}
-		see(n, rules.Claim{Source: rules.Sibling, Text: e.Key + ": " + e.Value.Text, Place: w.doc.File.Place(e.KeyAt.Cover(e.Value.Span))})
+	}
+	w.told[m] = found
+	return found
+}
+
+// eachNeighbour calls see for every key beside a spot, and inside it, that tells
+// about its value: with what it says, and a claim to be filled in.
+func (w *walker) eachNeighbour(s *spot, see func(claims.Neighbour, rules.Claim)) {
+	var maps []*tree.Node
+	if s.node.Kind == tree.Map {
+		maps = append(maps, s.node)
+	}
+	if h := s.holder(); h != nil && h.node != s.node {
+		maps = append(maps, h.node)
+	}
+	for _, m := range maps {
+		for _, t := range w.tellers(m) {
+			if t.key != s.keyAt && (t.Stem == "" || t.Stem == s.name.Stem) {
+				see(t.Neighbour, t.claim)
+			}
+		}
 	}
 }
 
@@ -55,24 +79,13 @@ func (w *walker) neighbourTerms(s *spot, f convention.Form, v *rules.Value) {
 // head of a file.
 func (w *walker) farUnit(s *spot, f convention.Form, v *rules.Value) {
 	for h := s.holder(); h != nil; h = h.holder() {
-		for _, e := range h.node.Entries {
-			n, ok := claims.ReadNeighbour(e.Key, scalarText(e.Value))
-			if ok && n.Angular && n.Stem == "" {
-				w.addTerm(f, v, rules.Claim{Says: n.Unit, Source: rules.Sibling, Text: e.Key + ": " + e.Value.Text,
-					Place: w.doc.File.Place(e.KeyAt.Cover(e.Value.Span))})
+		for _, t := range w.tellers(h.node) {
+			if t.Angular && t.Stem == "" {
+				t.claim.Says = t.Unit
+				w.addTerm(f, v, t.claim)
 			}
 		}
-		if h.in == nil {
-			return
-		}
 	}
-}
-
-func scalarText(n *tree.Node) string {
-	if n.Kind == tree.Scalar {
-		return n.Text
-	}
-	return ""
 }
 
 // frames looks for the two frames of a transform: beside the value, or around
@@ -98,39 +111,27 @@ func (w *walker) frames(s *spot, f convention.Form, v *rules.Value) {
 	}
 }
 
+// framesIn reads the two frames that a map names.
 func (w *walker) framesIn(m *tree.Node) (convention.Direction, rules.Claim) {
 	var d convention.Direction
 	c := rules.Claim{Source: rules.Sibling}
-	for _, e := range m.Entries {
-		key, value := e.Key, scalarText(e.Value)
-		if e.Key == "header" {
-			key, value = "frame_id", scalarText(orEmpty(e.Value.Get("frame_id")))
-		}
-		n, ok := claims.ReadNeighbour(key, value)
-		if !ok || n.To+n.From == "" {
+	for _, t := range w.tellers(m) {
+		if t.To+t.From == "" {
 			continue
 		}
-		if n.To != "" {
-			d.To = n.To
+		if t.To != "" {
+			d.To = t.To
 		} else {
-			d.From = n.From
+			d.From = t.From
 		}
-		c.Text = strings.TrimPrefix(c.Text+", "+key+": "+value, ", ")
-		place := w.doc.File.Place(e.KeyAt.Cover(e.Value.Span))
+		c.Text = strings.TrimPrefix(c.Text+", "+t.claim.Text, ", ")
 		if c.Place.Line == 0 {
-			c.Place = place
+			c.Place = t.claim.Place
 		} else {
-			c.Place = c.Place.To(place)
+			c.Place = c.Place.To(t.claim.Place)
 		}
 	}
 	return d, c
-}
-
-func orEmpty(n *tree.Node) *tree.Node {
-	if n == nil {
-		return &tree.Node{}
-	}
-	return n
 }
 
 // axisKind is the word for the kind of axes that a neighbouring key of its own

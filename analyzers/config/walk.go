@@ -17,6 +17,7 @@ type walker struct {
 	spec     specification
 	names    map[[2]string]*claims.Name
 	comments map[source.Span]*claims.Comment
+	told     map[*tree.Node][]teller
 	members  []member
 	warnings []Warning
 }
@@ -29,7 +30,10 @@ type member struct {
 }
 
 func newWalker(doc *tree.Document, spec specification) *walker {
-	return &walker{doc: doc, spec: spec, names: map[[2]string]*claims.Name{}, comments: map[source.Span]*claims.Comment{}}
+	return &walker{
+		doc: doc, spec: spec,
+		names: map[[2]string]*claims.Name{}, comments: map[source.Span]*claims.Comment{}, told: map[*tree.Node][]teller{},
+	}
 }
 
 // spot is a node with what stands around it.
@@ -171,10 +175,14 @@ func (w *walker) warnTwice(holder, s *spot) {
 	if !w.doc.UniqueKeys || s.keyAt.Empty() {
 		return
 	}
+	first := map[string]tree.Entry{}
 	for _, e := range holder.node.Entries {
-		if e.KeyAt != s.keyAt && !e.KeyAt.Empty() && e.Key == s.name.Text && e.KeyAt.From < s.keyAt.From {
+		before, twice := first[e.Key]
+		if !twice {
+			first[e.Key] = e
+		} else if e.KeyAt == s.keyAt && !before.KeyAt.Empty() {
 			w.warnings = append(w.warnings, Warning{w.doc.File.Place(s.keyAt),
-				fmt.Sprintf("the key %s stands on line %d already; programs keep one of the two, and not all the same one", e.Key, w.doc.File.Line(e.KeyAt.From))})
+				fmt.Sprintf("the key %s stands on line %d already; programs keep one of the two, and not all the same one", e.Key, w.doc.File.Line(before.KeyAt.From))})
 		}
 	}
 }
