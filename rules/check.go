@@ -35,8 +35,10 @@ func checkOne(v *Value) []*Finding {
 		found = add(found, axisUnit(v, v.Floats()))
 	case convention.AxisAngle:
 		found = add(found, axisUnit(v, v.Floats()[:3]))
-	case convention.Rotation, convention.Transform:
+	case convention.Rotation:
 		found = add(found, properRotation(v))
+	case convention.Transform:
+		found = add(add(found, properRotation(v)), storedByRows(v))
 	case convention.Triad:
 		found = add(found, triadHand(v))
 	case convention.AxisMap:
