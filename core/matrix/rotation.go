@@ -6,9 +6,9 @@ import (
 	"dextral/core/rotor"
 )
 
-// FromRotor returns the matrix of a unit rotor as an active rotation: m v is r
-// v r~. The passive matrix, which re-expresses a fixed vector in turned axes,
-// is its transpose.
+// FromRotor returns the matrix of a unit rotor as an active rotation, whose
+// product with v is r v r~. The passive matrix, which re-expresses a fixed
+// vector in turned axes, is its transpose.
 func FromRotor(r rotor.Rotor) Mat3 {
 	s, a, b, c := r.S, r.E23, r.E31, r.E12
 	a2, b2, c2 := 2*a, 2*b, 2*c
