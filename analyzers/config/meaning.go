@@ -31,11 +31,11 @@ func (w *walker) meaning(s *spot, shape claims.Shape) reading {
 	if w.spec != nil {
 		return w.spec.meaning(s, shape)
 	}
-	if s.not != "" {
+	if w.otherwise(s) {
 		return reading{}
 	}
-	m := reading{Meaning: s.name.Form(shape)}
-	if s.name.Not != "" {
+	m := reading{Meaning: w.nameOf(s).Form(shape)}
+	if w.nameOf(s).Not != "" {
 		return m
 	}
 	r := w.remarks(s)
@@ -46,8 +46,8 @@ func (w *walker) meaning(s *spot, shape claims.Shape) reading {
 			return reading{}
 		}
 	}
-	if s.name.BadUnit != "" && (m.Form == convention.Angles || m.Form == convention.RotationVector) {
-		m.Why = "angles in " + s.name.BadUnit + " are not read"
+	if w.nameOf(s).BadUnit != "" && (m.Form == convention.Angles || m.Form == convention.RotationVector) {
+		m.Why = "angles in " + w.nameOf(s).BadUnit + " are not read"
 	}
 	if m.Form == convention.NoForm || m.Form == convention.Matrix {
 		return w.toldBy(s, shape, m, r)

@@ -6,7 +6,6 @@ import (
 
 	"dextral/analyzers/claims"
 	"dextral/analyzers/config/tree"
-	"dextral/analyzers/source"
 	"dextral/core/angle"
 	"dextral/core/convention"
 	"dextral/rules"
@@ -30,7 +29,7 @@ type part struct {
 // entries were taken whole.
 func (w *walker) named(s *spot) map[int]bool {
 	done := map[int]bool{}
-	if s.not != "" || s.name.Deep || w.spec != nil {
+	if w.spec != nil {
 		return done
 	}
 	w.axisAngles(s, done)
@@ -47,13 +46,16 @@ func (w *walker) named(s *spot) map[int]bool {
 		}
 		groups[key] = append(groups[key], p)
 	}
+	if len(groups) == 0 || w.barren(s) {
+		return done
+	}
 	for _, key := range order {
 		parts := groups[key]
 		switch parts[0].Set {
 		case claims.QLetters, claims.QDigits, claims.Letters:
 			w.quaternion(s, parts)
 		case claims.RLetters:
-			if s.name.Turning() && len(parts) == 3 {
+			if w.nameOf(s).Turning() && len(parts) == 3 {
 				w.turnsAboutXYZ(s, parts)
 			}
 		case claims.Turns:
@@ -64,6 +66,10 @@ func (w *walker) named(s *spot) map[int]bool {
 	}
 	return done
 }
+
+// barren reports whether nothing in a map is an orientation, by its own name or
+// by one around it.
+func (w *walker) barren(s *spot) bool { return w.nameOf(s).Deep || w.otherwise(s) }
 
 // part reads an entry as a component.
 func (w *walker) part(s *spot, i int, e tree.Entry) (part, bool) {
@@ -76,7 +82,7 @@ func (w *walker) part(s *spot, i int, e tree.Entry) (part, bool) {
 		return part{}, false
 	}
 	p := part{Component: c, entry: i, name: name}
-	if c.Set == claims.Letters && s.name.Directional() && c.Lead == "" && e.Value.Kind == tree.List {
+	if c.Set == claims.Letters && w.nameOf(s).Directional() && c.Lead == "" && e.Value.Kind == tree.List {
 		p.Set, p.Index = claims.AxisSet, c.Index-1
 	}
 	if p.Set == claims.AxisSet {
@@ -99,8 +105,8 @@ func mayBePart(n *tree.Node) bool {
 // quaternion reads four components, or the x, y, z of something else.
 func (w *walker) quaternion(s *spot, parts []part) {
 	lead := w.name("", parts[0].Lead)
-	if parts[0].Set == claims.Letters && !s.name.Orients() && !lead.Orients() && w.typeBeside(s) != convention.Quaternion {
-		if s.name.Turning() && len(parts) == 3 {
+	if parts[0].Set == claims.Letters && !w.nameOf(s).Orients() && !lead.Orients() && w.typeBeside(s) != convention.Quaternion {
+		if w.nameOf(s).Turning() && len(parts) == 3 {
 			w.turnsAboutXYZ(s, parts)
 		}
 		return
@@ -209,7 +215,7 @@ func (w *walker) axisAngles(s *spot, done map[int]bool) {
 			continue
 		}
 		kind, lead := w.name("", e.Key).AxisAnglePart()
-		if kind != claims.AxisPart {
+		if kind != claims.AxisPart || w.barren(s) {
 			continue
 		}
 		for j, f := range s.node.Entries {
@@ -285,13 +291,14 @@ func (w *walker) together(s *spot, parts []part) *spot {
 	keys, _ := w.keys(s, parts)
 	name := *w.name("", parts[0].Lead)
 	if parts[0].Lead != "" {
-		at.path = join(s.path, parts[0].Lead)
-	} else if s.name.Text != "" {
+		at.where = join(s.path(), parts[0].Lead)
+	} else if w.nameOf(s).Text != "" {
 		stem := name.Stem
-		name = *s.name // what holds the parts may say more: lidar_to_imu: {x, y, z, qw, qx, qy, qz}
+		name = *w.nameOf(s) // what holds the parts may say more: lidar_to_imu: {x, y, z, qw, qx, qy, qz}
 		name.Stem, keys = stem, name.Text+": "+keys
+		at.where = s.path()
 	} else {
-		at.path = join(s.path, keys)
+		at.where = join(s.path(), keys)
 	}
 	name.Text = keys
 	at.name = &name
@@ -329,8 +336,5 @@ func (w *walker) place(s, at *spot, parts []part, v *rules.Value) {
 	for _, p := range parts {
 		span = span.Cover(s.node.Entries[p.entry].Value.Span)
 	}
-	v.Place, v.Key = w.doc.File.Place(span), at.path
-	if span.From < 0 {
-		v.Place = w.doc.File.Place(source.Span{})
-	}
+	v.Place, v.Key = w.doc.File.Place(span), at.path()
 }

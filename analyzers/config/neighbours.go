@@ -53,7 +53,7 @@ func (w *walker) eachNeighbour(s *spot, see func(claims.Neighbour, rules.Claim))
 	}
 	for _, m := range maps {
 		for _, t := range w.tellers(m) {
-			if t.key != s.keyAt && (t.Stem == "" || t.Stem == s.name.Stem) {
+			if t.key != s.keyAt && (t.Stem == "" || t.Stem == w.nameOf(s).Stem) {
 				see(t.Neighbour, t.claim)
 			}
 		}

@@ -34,6 +34,9 @@ func sizeOf(count int) (shape claims.Shape, rows, cols int, ok bool) {
 // numbers reads a list of numbers, or a text of several. It reports whether the
 // node is one, be it an orientation or not.
 func (w *walker) numbers(s *spot) bool {
+	if s.node.Kind == tree.Scalar && !strings.ContainsAny(s.node.Text, " \t\n,;") {
+		return false
+	}
 	numbers := w.doc.Numbers(s.node, maxNumbers)
 	if numbers == nil || s.node.Kind == tree.Scalar && len(numbers) == 1 {
 		return false
@@ -43,7 +46,7 @@ func (w *walker) numbers(s *spot) bool {
 		return true
 	}
 	m := w.meaning(s, shape)
-	if m.Form == convention.Matrix && !s.name.SpeaksOfMatrix() {
+	if m.Form == convention.Matrix && !w.nameOf(s).SpeaksOfMatrix() {
 		return true // a list of biases has no rows and columns
 	}
 	if m.Form != convention.NoForm || m.Why != "" {
@@ -62,7 +65,7 @@ func (w *walker) numbers(s *spot) bool {
 func (w *walker) warnCommas(s *spot) {
 	if s.node.Kind == tree.List && len(s.node.Items) == 1 {
 		w.warnings = append(w.warnings, Warning{w.doc.File.Place(s.node.Span),
-			fmt.Sprintf("%s has no commas between its numbers: programs read one text, not a list of numbers", s.path)})
+			fmt.Sprintf("%s has no commas between its numbers: programs read one text, not a list of numbers", s.path())})
 	}
 }
 
@@ -134,15 +137,15 @@ func (w *walker) block(s *spot) bool {
 	}
 	numbers := w.doc.Numbers(data, maxNumbers)
 	if len(numbers) != rows*cols {
-		if m := s.name.Form(claims.Shape(shape)); m.Form != convention.NoForm && m.Why == "" && s.not == "" {
+		if m := w.nameOf(s).Form(claims.Shape(shape)); m.Form != convention.NoForm && m.Why == "" && !w.otherwise(s) {
 			w.warnings = append(w.warnings, Warning{w.doc.File.Place(data.Span),
-				fmt.Sprintf("%s states %d rows and %d columns, but its data are not %d numbers; it is not read", s.path, rows, cols, rows*cols)})
+				fmt.Sprintf("%s states %d rows and %d columns, but its data are not %d numbers; it is not read", s.path(), rows, cols, rows*cols)})
 		}
 		return true
 	}
 	taken := len(w.members)
 	w.matrix(s, numbers, rows, cols)
-	if len(w.members) == taken && s.not == "" && shape >= int(claims.Nine) {
+	if len(w.members) == taken && !w.otherwise(s) && shape >= int(claims.Nine) {
 		// The format says that this is a matrix, and nothing says of what kind.
 		w.describe(s, open(convention.Matrix, rules.Shape, "nothing says that this matrix is a rotation"),
 			&rules.Value{Numbers: numbers, Rows: rows, Cols: cols})

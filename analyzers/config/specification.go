@@ -35,7 +35,7 @@ var gltf = specification{
 // at is the rule for a spot.
 func (spec specification) at(s *spot, shape claims.Shape) *rule {
 	for i := range spec {
-		if r := &spec[i]; r.shape == shape && r.path.MatchString(s.path) {
+		if r := &spec[i]; r.shape == shape && r.path.MatchString(s.path()) {
 			return r
 		}
 	}

@@ -160,7 +160,7 @@ func (w *walker) sequences(s *spot, v *rules.Value, r []remark) {
 		}
 		found = append(found, c)
 	}
-	if label, err := angle.ParseLabel(s.name.Sequence, v.Roles); err == nil {
+	if label, err := angle.ParseLabel(w.nameOf(s).Sequence, v.Roles); err == nil {
 		keep(w.claim(s, label, rules.Label))
 	}
 	for _, c := range r {

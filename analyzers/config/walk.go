@@ -18,6 +18,7 @@ type walker struct {
 	names    map[[2]string]*claims.Name
 	comments map[source.Span]*claims.Comment
 	told     map[*tree.Node][]teller
+	twice    map[*tree.Node]map[source.Span]source.Span
 	members  []member
 	warnings []Warning
 }
@@ -33,28 +34,68 @@ func newWalker(doc *tree.Document, spec specification) *walker {
 	return &walker{
 		doc: doc, spec: spec,
 		names: map[[2]string]*claims.Name{}, comments: map[source.Span]*claims.Comment{}, told: map[*tree.Node][]teller{},
+		twice: map[*tree.Node]map[source.Span]source.Span{},
 	}
 }
 
-// spot is a node with what stands around it.
+// spot is a node with what stands around it. Most spots of a file are left
+// without a look at their names, so names and paths are worked out when asked for.
 type spot struct {
 	node  *tree.Node
-	name  *claims.Name // of its key, or, in a list, of the list's key
-	keyAt source.Span  // where that key stands; empty if there is none
-	path  string
-	parts []source.Span // of a value written name by name: where its numbers stand with their names
 	in    *spot         // what holds it; nil for a root
-	not   string        // why nothing here is an orientation; "" if something may be
+	key   string        // of an entry
+	index int           // of an item or a root; -1 for an entry
+	keyAt source.Span   // where the key stands, of a list for its items; empty if there is none
+	parts []source.Span // of a value written name by name: where its numbers stand with their names
+	name  *claims.Name  // see nameOf
+	where string        // see path
 }
 
 func (w *walker) walk() {
 	for i, root := range w.doc.Roots {
-		path := ""
-		if i > 0 {
-			path = fmt.Sprintf("document %d", i+1)
-		}
-		w.visit(&spot{node: root, name: w.name("", ""), path: path})
+		w.visit(&spot{node: root, index: i})
 	}
+}
+
+// nameOf is the name that the numbers of a spot go by: that of its key or, in a
+// list, of the list.
+func (w *walker) nameOf(s *spot) *claims.Name {
+	switch {
+	case s.name != nil:
+	case s.in == nil:
+		s.name = w.name("", "")
+	case s.index >= 0:
+		s.name = w.nameOf(s.in)
+	default:
+		s.name = w.name(w.nameOf(s.in).Text, s.key)
+	}
+	return s.name
+}
+
+// path is where a spot stands in the structure of the file.
+func (s *spot) path() string {
+	switch {
+	case s.where != "":
+	case s.in == nil && s.index == 0:
+	case s.in == nil:
+		s.where = fmt.Sprintf("document %d", s.index+1)
+	case s.index >= 0:
+		s.where = fmt.Sprintf("%s[%d]", s.in.path(), s.index)
+	default:
+		s.where = join(s.in.path(), s.key)
+	}
+	return s.where
+}
+
+// otherwise reports whether something around a spot says that nothing below it
+// is an orientation: gains, noise.
+func (w *walker) otherwise(s *spot) bool {
+	for p := s.in; p != nil; p = p.in {
+		if w.nameOf(p).Deep {
+			return true
+		}
+	}
+	return false
 }
 
 // result puts the values in file order and tells the twins.
@@ -90,17 +131,13 @@ func (w *walker) comment(span source.Span, text string) *claims.Comment {
 }
 
 // entry is the spot of a map's entry.
-func (w *walker) entry(s *spot, e tree.Entry) *spot {
-	child := &spot{node: e.Value, name: w.name(s.name.Text, e.Key), keyAt: e.KeyAt, path: join(s.path, e.Key), in: s, not: s.not}
-	if s.name.Deep && child.not == "" {
-		child.not = s.name.Not
-	}
-	return child
+func (s *spot) entry(e *tree.Entry) *spot {
+	return &spot{node: e.Value, in: s, key: e.Key, index: -1, keyAt: e.KeyAt}
 }
 
-// item is the spot of a list's item: it goes by the name of the list.
-func (w *walker) item(s *spot, i int) *spot {
-	return &spot{node: s.node.Items[i], name: s.name, keyAt: s.keyAt, path: fmt.Sprintf("%s[%d]", s.path, i), in: s, not: s.not}
+// item is the spot of a list's item.
+func (s *spot) item(i int) *spot {
+	return &spot{node: s.node.Items[i], in: s, index: i, keyAt: s.keyAt}
 }
 
 func join(path, key string) string {
@@ -123,23 +160,22 @@ func (s *spot) holder() *spot {
 func (w *walker) visit(s *spot) {
 	switch s.node.Kind {
 	case tree.Scalar:
-		w.numbers(s)
-		w.words(s)
+		_ = w.numbers(s) || w.words(s)
 	case tree.List:
 		if w.numbers(s) || w.rows(s) || w.words(s) {
 			return
 		}
 		for i := range s.node.Items {
-			w.visit(w.item(s, i))
+			w.visit(s.item(i))
 		}
 	case tree.Map:
 		if w.block(s) {
 			return
 		}
 		done := w.named(s)
-		for i, e := range s.node.Entries {
+		for i := range s.node.Entries {
 			if !done[i] {
-				w.visit(w.entry(s, e))
+				w.visit(s.entry(&s.node.Entries[i]))
 			}
 		}
 	}
@@ -150,7 +186,7 @@ func (w *walker) visit(s *spot) {
 func (w *walker) add(s *spot, m reading, v *rules.Value) {
 	v.Form, v.Why = m.Form, m.Why
 	if v.Key == "" {
-		v.Key = s.path
+		v.Key = s.path()
 	}
 	if !s.keyAt.Empty() && v.KeyAt == (rules.Place{}) {
 		v.KeyAt = w.doc.File.Place(s.keyAt)
@@ -159,14 +195,14 @@ func (w *walker) add(s *spot, m reading, v *rules.Value) {
 		v.Place = w.doc.File.Place(s.node.Span)
 	}
 	if v.Why == "" {
-		v.Why = doubt(v, s.name)
+		v.Why = doubt(v, w.nameOf(s))
 	}
 	in := ""
 	if h := s.holder(); h != nil {
-		in = h.path
+		in = h.path()
 		w.warnTwice(h, s)
 	}
-	w.members = append(w.members, member{v, in, s.name.Stem})
+	w.members = append(w.members, member{v, in, w.nameOf(s).Stem})
 }
 
 // warnTwice warns of a key that stands twice in a map, of which programs keep
@@ -175,21 +211,39 @@ func (w *walker) warnTwice(holder, s *spot) {
 	if !w.doc.UniqueKeys || s.keyAt.Empty() {
 		return
 	}
-	first := map[string]tree.Entry{}
-	for _, e := range holder.node.Entries {
-		before, twice := first[e.Key]
-		if !twice {
-			first[e.Key] = e
-		} else if e.KeyAt == s.keyAt && !before.KeyAt.Empty() {
-			w.warnings = append(w.warnings, Warning{w.doc.File.Place(s.keyAt),
-				fmt.Sprintf("the key %s stands on line %d already; programs keep one of the two, and not all the same one", e.Key, w.doc.File.Line(before.KeyAt.From))})
+	twice, done := w.twice[holder.node]
+	if !done {
+		twice = repeated(holder.node)
+		w.twice[holder.node] = twice
+	}
+	if before, ok := twice[s.keyAt]; ok {
+		w.warnings = append(w.warnings, Warning{w.doc.File.Place(s.keyAt),
+			fmt.Sprintf("the key %s stands on line %d already; programs keep one of the two, and not all the same one", w.doc.File.Slice(s.keyAt), w.doc.File.Line(before.From))})
+	}
+}
+
+// repeated finds the keys of a map that stood there before, with where.
+func repeated(m *tree.Node) map[source.Span]source.Span {
+	var found map[source.Span]source.Span
+	first := make(map[string]source.Span, len(m.Entries))
+	for _, e := range m.Entries {
+		before, again := first[e.Key]
+		switch {
+		case e.KeyAt.Empty():
+		case !again:
+			first[e.Key] = e.KeyAt
+		case found == nil:
+			found = map[source.Span]source.Span{e.KeyAt: before}
+		default:
+			found[e.KeyAt] = before
 		}
 	}
+	return found
 }
 
 // claim makes a claim by the key of a spot.
 func (w *walker) claim(s *spot, says convention.Term, source rules.Source) rules.Claim {
-	c := rules.Claim{Says: says, Source: source, Text: s.name.Text}
+	c := rules.Claim{Says: says, Source: source, Text: w.nameOf(s).Text}
 	if !s.keyAt.Empty() {
 		c.Place = w.doc.File.Place(s.keyAt)
 	}

@@ -1,6 +1,8 @@
 package config
 
 import (
+	"strings"
+
 	"dextral/analyzers/claims"
 	"dextral/analyzers/config/tree"
 	"dextral/core/convention"
@@ -12,14 +14,18 @@ import (
 // -z). Each number of the value stands where the word is that it comes from. It
 // reports whether the node is one of these.
 func (w *walker) words(s *spot) bool {
-	if s.not != "" || w.spec != nil || !s.name.SpeaksOfAxes() && !s.name.SpeaksOfAxisMap(true) {
+	if w.spec != nil || !mayBeWords(s.node) {
+		return false
+	}
+	name := w.nameOf(s)
+	if !name.SpeaksOfAxes() && !name.SpeaksOfAxisMap(true) || w.otherwise(s) {
 		return false
 	}
 	words := w.texts(s.node)
 	if len(words) == 0 || len(words) > 12 {
 		return false
 	}
-	if m, signed, ok := claims.AxisMap(spelled(words)); ok && s.name.SpeaksOfAxisMap(signed) {
+	if m, signed, ok := claims.AxisMap(spelled(words)); ok && name.SpeaksOfAxisMap(signed) {
 		v := &rules.Value{Rows: 3, Cols: 3}
 		for row, word := range words {
 			v.Numbers = append(v.Numbers, w.inWord(word, m[row])...)
@@ -28,7 +34,7 @@ func (w *walker) words(s *spot) bool {
 		return true
 	}
 	triad, ok := w.triadIn(s.node, words)
-	if !ok || !s.name.SpeaksOfAxes() {
+	if !ok || !name.SpeaksOfAxes() {
 		return false
 	}
 	m := triad.Matrix()
@@ -45,6 +51,19 @@ func (w *walker) words(s *spot) bool {
 	}
 	w.describe(s, read(convention.Triad, rules.Label), v)
 	return true
+}
+
+// mayBeWords reports whether a node may be axes in words, without a look at them.
+func mayBeWords(n *tree.Node) bool {
+	if n.Kind == tree.List {
+		return len(n.Items) == 3
+	}
+	const longest = 120 // "x to the right wing, y ..." is half as long
+	if n.Kind != tree.Scalar || len(n.Text) < len("FLU") || len(n.Text) > longest {
+		return false
+	}
+	first := strings.TrimLeft(n.Text[:2], "+- ")
+	return first != "" && (first[0]|0x20 >= 'a' && first[0]|0x20 <= 'z')
 }
 
 // texts are the words of a scalar or of a list of scalars, without brackets

@@ -84,6 +84,10 @@ func (r reader) literal(n *tree.Node) {
 	if strings.HasPrefix(n.Text, `"`) {
 		quoted := n.Text
 		raw = inside(n.Span)
+		if strings.IndexByte(quoted, '\\') < 0 {
+			n.Text, n.Raw = quoted[1:len(quoted)-1], raw
+			return
+		}
 		// The parser has accepted the string, so that this cannot fail but for
 		// a lone surrogate, which becomes U+FFFD.
 		if json.Unmarshal([]byte(quoted), &n.Text) != nil {

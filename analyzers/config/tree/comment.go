@@ -22,12 +22,16 @@ func (d *Document) OnLines(s source.Span) []Comment {
 	return beside
 }
 
+// maxAbove is the most lines of comment above a key that can speak of it; what
+// stands further up speaks of more.
+const maxAbove = 20
+
 // Above returns the comments that have the lines directly above a line to
 // themselves, from the top, up to the first line that is anything else.
 func (d *Document) Above(line int) []Comment {
 	end := d.commentAt(d.File.LineSpan(line).From)
 	begin := end
-	for begin > 0 && d.File.Line(d.Comments[begin-1].Span.From) == line-1 && d.alone(d.Comments[begin-1]) {
+	for begin > 0 && end-begin < maxAbove && d.File.Line(d.Comments[begin-1].Span.From) == line-1 && d.alone(d.Comments[begin-1]) {
 		begin--
 		line--
 	}

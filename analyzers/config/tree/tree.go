@@ -90,16 +90,16 @@ func (n *Node) Get(key string) *Node {
 
 // SetRaw makes span the place of a scalar's words if the same words stand there.
 func (n *Node) SetRaw(f *source.File, span source.Span) {
-	if !span.Empty() && sameWords(f.Slice(span), n.Text) {
+	if span.Empty() {
+		return
+	}
+	if raw := f.Text[span.From:span.To]; string(raw) == n.Text || sameWords(string(raw), n.Text) {
 		n.Raw = span
 	}
 }
 
 // sameWords reports whether two texts differ in white space only.
 func sameWords(a, b string) bool {
-	if a == b {
-		return true
-	}
 	wordsA, wordsB := strings.Fields(a), strings.Fields(b)
 	if len(wordsA) != len(wordsB) {
 		return false

@@ -1,0 +1,56 @@
+package config
+
+import (
+	"os"
+	"path/filepath"
+	"testing"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+)
+
+// corpus is a folder of public files that stands beside the project. They are
+// not ours to copy; without the folder the tests that use it are skipped.
+const corpus = "../../../shared/corpus/configs"
+
+// What each file holds, counted by hand from its text: values that are read, and
+// values that are rightly left undecided.
+func TestCorpus(t *testing.T) {
+	for name, want := range map[string][2]int{
+		"apollo_imu_localization_extrinsics.yaml": {1, 0},
+		"basalt_euroc_ds_calib.json":              {4, 0},
+		"euroc_cam0_sensor.yaml":                  {1, 0},
+		"gltf_matrix_trs.gltf":                    {0, 1}, // the matrix may have a scale
+		"gltf_rotation_non_unit.gltf":             {1, 0},
+		"json_vlmap_extrinsics.json":              {15, 0},
+		"liosam_params.yaml":                      {2, 0},
+		"openvins_rpng_sim_imucam.yaml":           {4, 0},
+		"openvins_t265_imucam.yaml":               {3, 0},
+		"viam_frame.json":                         {1, 1}, // an orientation vector, which is no axis and angle
+		"vins_d435i.yaml":                         {2, 0},
+	} {
+		t.Run(name, func(t *testing.T) {
+			text, err := os.ReadFile(filepath.Join(corpus, name))
+			if os.IsNotExist(err) {
+				t.Skipf("%s is not beside the project", name)
+			}
+			require.NoError(t, err)
+			r, err := Read(name, text)
+			require.NoError(t, err)
+			var got [2]int
+			for _, v := range r.Values {
+				if v.Decided() {
+					got[0]++
+				} else {
+					got[1]++
+				}
+				assert.Empty(t, v.Of, "%s: no file of these states an orientation twice in one map", v.Key)
+				for _, n := range v.Numbers {
+					assert.Equal(t, n.Text, cut(t, string(text), n.Place))
+				}
+			}
+			assert.Equal(t, want, got)
+			assert.Empty(t, r.Warnings)
+		})
+	}
+}
