@@ -39,6 +39,11 @@ const (
 	ParametersMistaken    = "parameters-mistaken"
 	AxesSwapped           = "axes-swapped"
 	RepresentationsDiffer = "representations-differ"
+	StatedTwice           = "stated-twice"
+	InversePairBroken     = "inverse-pair-broken"
+	LoopOpen              = "loop-open"
+	ParentCycle           = "parent-cycle"
+	ChildOfTwo            = "child-of-two"
 	ClaimsConflict        = "claims-conflict"
 	WaiverExpired         = "waiver-expired"
 	WaiverUnused          = "waiver-unused"
@@ -68,6 +73,11 @@ var catalogue = []Rule{
 	{ParametersMistaken, "Three numbers and a twin value agree only if they are another kind of parameters than stated.", Error},
 	{AxesSwapped, "Two values of one orientation agree only after an exchange of axes.", Error},
 	{RepresentationsDiffer, "Two values that state the same orientation differ, and no customary reading reconciles them.", Error},
+	{StatedTwice, "The orientation between two frames is stated twice with different values.", Error},
+	{InversePairBroken, "Two values that ought to be the inverse of each other are not.", Error},
+	{LoopOpen, "Orientations around a loop of frames do not come back to where they began.", Error},
+	{ParentCycle, "A frame is its own ancestor in a tree of parents and children.", Warning},
+	{ChildOfTwo, "A frame has two parents in a tree of parents and children.", Warning},
 	{ClaimsConflict, "Two stated claims about one value contradict each other.", Error},
 	{WaiverExpired, "A waiver has passed its last day.", Warning},
 	{WaiverUnused, "A waiver matches no finding.", Warning},

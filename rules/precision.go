@@ -10,15 +10,20 @@ import (
 // precision is what the digits of the value, or a declaration, say about its
 // rounding.
 func (v *Value) precision() tolerance.Precision {
-	numbers := make([]tolerance.Number, 0, len(v.Numbers))
-	for _, n := range v.rotationNumbers() {
+	p := precisionOf(v.rotationNumbers())
+	p.Double, p.Declared = v.Double, v.Uncertainty
+	return p
+}
+
+// precisionOf is what the digits of a group of numbers say.
+func precisionOf(group []Number) tolerance.Precision {
+	numbers := make([]tolerance.Number, 0, len(group))
+	for _, n := range group {
 		if read, ok := tolerance.Read(n.Text); ok {
 			numbers = append(numbers, read)
 		}
 	}
-	p := tolerance.Of(numbers...)
-	p.Double, p.Declared = v.Double, v.Uncertainty
-	return p
+	return tolerance.Of(numbers...)
 }
 
 // tolerance is how far, in radians, the orientation may be from the one that

@@ -20,17 +20,18 @@ type Number struct {
 // triad the numbers are its first, second and third axis, one after the other.
 // An axis map is its 3x3, row by row.
 type Value struct {
-	Form    convention.Form
-	Key     string        // where it stands in the structure of the file: cameras.front.q_body_cam
-	Of      string        // the orientation it states: values of one file with equal non-empty Of state the same one
-	Place   Place         // from the first to the last number, or the whole bracket
-	KeyAt   Place         // where the key stands; zero if there is none
-	Numbers []Number      // see above
-	Rows    int           // matrices: 3 or 4
-	Cols    int           // matrices: 3 or 4
-	Roles   [3]angle.Role // angles: what the numbers are called, in written order
-	Claims  Claims
-	Why     string // why it is undecided; "" if it is read
+	Form      convention.Form
+	Key       string        // where it stands in the structure of the file: cameras.front.q_body_cam
+	Of        string        // the orientation it states: values of one file with equal non-empty Of state the same one
+	Subscript [2]string     // the two frames of a key such as T_a_b, in written order; which of them the coordinates come from is open
+	Place     Place         // from the first to the last number, or the whole bracket
+	KeyAt     Place         // where the key stands; zero if there is none
+	Numbers   []Number      // see above
+	Rows      int           // matrices: 3 or 4
+	Cols      int           // matrices: 3 or 4
+	Roles     [3]angle.Role // angles: what the numbers are called, in written order
+	Claims    Claims
+	Why       string // why it is undecided; "" if it is read
 
 	Uncertainty float64 // declared uncertainty of the orientation in radians; 0 = none declared
 	Double      bool    // declared to carry double precision

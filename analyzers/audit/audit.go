@@ -13,6 +13,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"maps"
 	"os"
 	"runtime"
 	"slices"
@@ -41,6 +42,7 @@ type Result struct {
 	Report report.Report
 	Values []*rules.Value  // of files and Go packages, in order of place
 	Series []*rules.Series // channels of logs, in order of place
+	Chains []*rules.Chain  // frames and what joins them, file by file, then rig by rig
 }
 
 // Run audits. The error is that of the context; everything else that goes wrong
@@ -167,6 +169,11 @@ func (a *audit) judge(list []*found) {
 			}
 		}
 		out.Findings = append(out.Findings, rules.CheckValues(f.values)...)
+		for _, chain := range chains(f) {
+			a.result.Chains = append(a.result.Chains, chain)
+			out.Findings = append(out.Findings, rules.CheckChain(chain)...)
+			out.Findings = append(out.Findings, rules.CheckParents(chain)...)
+		}
 		for _, s := range f.series {
 			out.Findings = append(out.Findings, rules.CheckSeries(s)...)
 		}
@@ -179,8 +186,11 @@ func (a *audit) judge(list []*found) {
 		a.result.Values = append(a.result.Values, f.values...)
 		a.result.Series = append(a.result.Series, f.series...)
 	}
-	for _, rig := range rigs {
-		out.Findings = append(out.Findings, rules.CheckRig(rig)...)
+	for _, name := range slices.Sorted(maps.Keys(rigs)) {
+		if rig := rules.NewRig(rigs[name]); rig != nil {
+			a.result.Chains = append(a.result.Chains, rig)
+			out.Findings = append(out.Findings, rules.CheckChain(rig)...)
+		}
 	}
 }
 

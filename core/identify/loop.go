@@ -30,9 +30,10 @@ type Repair struct {
 }
 
 // String says what is changed.
-func (r Repair) String() string { return fmt.Sprintf("edge %d %s", r.Edge+1, r.words()) }
+func (r Repair) String() string { return fmt.Sprintf("edge %d %s", r.Edge+1, r.Words()) }
 
-func (r Repair) words() string {
+// Words says what is changed, without naming the edge.
+func (r Repair) Words() string {
 	if slices.Contains(r.Changes, Transposed) {
 		return "with its rotation transposed and its translation kept"
 	}

@@ -1,0 +1,135 @@
+package report
+
+import (
+	"fmt"
+	"io"
+	"math"
+	"strconv"
+	"strings"
+
+	"dextral/core/identify"
+	"dextral/rules"
+)
+
+// FrameGraph is one chain of frames, ready to be drawn.
+type FrameGraph struct {
+	Title string // the file, or the files of a rig
+	Sense string // what keys such as T_a_b mean here; "" if there are none
+	Parts [][]string
+	Edges []FrameEdge
+	Loops []FrameLoop
+}
+
+// FrameEdge is one orientation between two frames.
+type FrameEdge struct {
+	To, From string
+	Key      string
+	Place    rules.Place
+	Assumed  bool // the direction rests on a key whose meaning is open
+}
+
+// FrameLoop is one loop with what it leaves open.
+type FrameLoop struct {
+	Frames  []string
+	Degrees float64
+	Open    float64 // degrees that the digits leave open
+	Gap     float64 // in the unit of the translations
+	Verdict string
+}
+
+// FrameGraphs draws up chains.
+func FrameGraphs(chains []*rules.Chain) []FrameGraph {
+	var graphs []FrameGraph
+	for _, c := range chains {
+		g := FrameGraph{Title: title(c), Parts: c.Graph.Parts()}
+		if c.Sense != rules.NoSubscripts {
+			g.Sense = c.Sense.String()
+		}
+		for _, e := range c.Graph.Edges() {
+			l := c.Links[e.ID]
+			g.Edges = append(g.Edges, FrameEdge{To: e.To, From: e.From, Key: l.Value.Key, Place: l.Value.Place, Assumed: l.Subscript && c.Sense == rules.SenseOpen})
+		}
+		for _, l := range c.Loops() {
+			g.Loops = append(g.Loops, FrameLoop{Frames: l.Frames, Degrees: l.Result.Angle * 180 / math.Pi, Open: l.Result.Open * 180 / math.Pi,
+				Gap: l.Result.Gap, Verdict: verdict(l)})
+		}
+		graphs = append(graphs, g)
+	}
+	return graphs
+}
+
+func title(c *rules.Chain) string {
+	var paths []string
+	for _, l := range c.Links {
+		if p := l.Value.Place.Path; len(paths) == 0 || paths[len(paths)-1] != p {
+			paths = append(paths, p)
+		}
+	}
+	if c.Rig {
+		return "rig of " + strings.Join(paths, ", ")
+	}
+	return paths[0]
+}
+
+func verdict(l rules.Loop) string {
+	switch {
+	case !l.Decidable:
+		return "cannot be decided: it hangs on the meaning of keys such as T_a_b"
+	case l.Result.Verdict == identify.Agree:
+		return "closes"
+	case l.Result.Verdict == identify.Undecided:
+		return "cannot be decided: " + l.Result.Reason
+	}
+	return "does not close"
+}
+
+// FramesText prints frame graphs for people.
+func FramesText(w io.Writer, graphs []FrameGraph) error {
+	p := newPrinter(w, Options{})
+	for _, g := range graphs {
+		p.line(g.Title)
+		if g.Sense != "" {
+			p.line("  sense   " + g.Sense)
+		}
+		for _, part := range g.Parts {
+			p.line("  frames  " + strings.Join(part, ", "))
+		}
+		for _, e := range g.Edges {
+			note := ""
+			if e.Assumed {
+				note = "  (direction assumed)"
+			}
+			p.line(fmt.Sprintf("  edge    v_%s = R v_%s  %s %s%s", e.To, e.From, e.Place, e.Key, note))
+		}
+		for _, l := range g.Loops {
+			text := fmt.Sprintf("  loop    %s: %s; rotation off by %s", strings.Join(append(l.Frames, l.Frames[0]), " -> "), l.Verdict, loopNumber(l.Degrees))
+			if l.Gap > 0 {
+				text += ", translation by " + strconv.FormatFloat(l.Gap, 'g', 3, 64)
+			}
+			p.line(text)
+		}
+		p.line("")
+	}
+	p.line(fmt.Sprintf("%s of frames", plural(len(graphs), "graph")))
+	return p.Flush()
+}
+
+func loopNumber(deg float64) string { return strconv.FormatFloat(deg, 'g', 3, 64) + " deg" }
+
+// FramesDOT prints frame graphs in the DOT language, one digraph each, an arrow
+// from the frame whose coordinates go in to the one whose come out.
+func FramesDOT(w io.Writer, graphs []FrameGraph) error {
+	p := newPrinter(w, Options{})
+	for _, g := range graphs {
+		p.line("digraph " + strconv.Quote(g.Title) + " {")
+		for _, e := range g.Edges {
+			style := ""
+			if e.Assumed {
+				style = ", style=dashed"
+			}
+			p.line(fmt.Sprintf("  %s -> %s [label=%s%s];", strconv.Quote(e.From), strconv.Quote(e.To), strconv.Quote(e.Key+"\n"+e.Place.String()), style))
+		}
+		p.line("}")
+	}
+	return p.Flush()
+}
