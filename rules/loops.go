@@ -97,6 +97,13 @@ func (c *Chain) openLoop(l Loop) *Finding {
 	v := c.link(steps[at]).Value
 	f := &Finding{Rule: c.ruleOfLoop(l.Loop), Level: c.levelOfLoop(l), Place: v.Place, Key: v.Key, Claim: "closes: " + c.pathText(steps)}
 	f.Message = fmt.Sprintf("%s: %s; the rotation is off by %s", c.headline(steps), c.verdictText(steps, r), degrees(r.Angle))
+	if r.Angle <= r.Open && r.Gap > 0 {
+		f.Message = fmt.Sprintf("%s: %s; the rotation is off by %s", c.headline(steps), c.gapText(steps, r), degrees(r.Angle))
+		if c.keptTranslation(steps) {
+			f.Level = Warning
+			f.Remedy = "the inverse of (R, t) is (R~, -R~ t): invert the translation with the rotation"
+		}
+	}
 	f.Evidence = []Evidence{
 		{What: "rotation around the loop", Stated: Degrees(0), Computed: Degrees(r.Angle), Residual: Degrees(r.Angle)},
 		{What: "what the digits leave open", Computed: Degrees(r.Open)},
@@ -186,6 +193,26 @@ func (c *Chain) verdictText(steps []frame.Step, r identify.LoopResult) string {
 		texts = append(texts, c.link(steps[repair.Edge]).Value.name()+" "+repair.Words())
 	}
 	return fmt.Sprintf("it closes with %s", strings.Join(texts, ", or with "))
+}
+
+// gapText describes a loop whose rotations close and whose translations do not.
+func (c *Chain) gapText(steps []frame.Step, r identify.LoopResult) string {
+	text := fmt.Sprintf("the rotations close, but the translations miss by %s (in the unit of the file)", digits(r.Gap))
+	if c.keptTranslation(steps) {
+		text += ": the rotation was inverted and the translation kept, or only negated"
+	}
+	return text
+}
+
+// keptTranslation reports whether two transforms that ought to be the inverse of
+// each other have the same translation, or opposite ones, to their digits.
+func (c *Chain) keptTranslation(steps []frame.Step) bool {
+	if len(steps) != 2 || steps[0].Reversed != steps[1].Reversed {
+		return false
+	}
+	a, slackA, okA := c.link(steps[0]).Value.translation()
+	b, slackB, okB := c.link(steps[1]).Value.translation()
+	return okA && okB && min(a.Sub(b).Norm(), a.Add(b).Norm()) <= slackA+slackB
 }
 
 // CheckParents judges the frames that neighbouring keys name parent and child.
