@@ -1,0 +1,221 @@
+package lower
+
+import (
+	"go/types"
+
+	"golang.org/x/tools/go/ssa"
+
+	"dextral/core/tape"
+)
+
+// Package variables. A variable that no function of its package writes has the
+// value of its initialiser, which is interpreted once; any other is unknown.
+
+// globalWords returns the words of a package variable; those of kind Any are
+// unknown. It returns nil if nothing is known, not even how many there are.
+func (p *packageLowerer) globalWords(g *ssa.Global) []tape.Const {
+	if words, ok := p.globals[g]; ok {
+		return words
+	}
+	t := g.Type().Underlying().(*types.Pointer).Elem()
+	l := p.layouts.of(t)
+	if l == nil {
+		p.globals[g] = nil
+		return nil
+	}
+	if g.Pkg == p.ssaPkg {
+		p.initialise()
+		if words, ok := p.globals[g]; ok {
+			return words
+		}
+	} else if words := p.importedGlobal(g, l); words != nil {
+		p.globals[g] = words
+		return words
+	}
+	words := make([]tape.Const, len(l.fields))
+	p.globals[g] = words
+	return words
+}
+
+// importedGlobal returns the words that the package of g exported for it.
+func (p *packageLowerer) importedGlobal(g *ssa.Global, l *layout) []tape.Const {
+	fact := p.imported(g.Pkg.Pkg)
+	if fact == nil {
+		return nil
+	}
+	words := fact.global(g.Name())
+	if len(words) != len(l.fields) {
+		return nil
+	}
+	return words
+}
+
+// global returns the address of a package variable as a spot in the data.
+func (b *builder) global(g *ssa.Global) *spot {
+	if b.initials != nil {
+		return b.initialSpot(g)
+	}
+	i, ok := b.data[g]
+	if !ok {
+		words := b.globalWords(g)
+		if words == nil {
+			b.fail("uses package variable %s", g.Name())
+		}
+		i = int32(len(b.p.Data))
+		b.p.Data = append(b.p.Data, words...)
+		if len(words) == 0 {
+			b.fail("uses the address of package variable %s, which is empty", g.Name())
+		}
+		b.data[g] = i
+	}
+	return &spot{base: inData, slot: i}
+}
+
+// loadGlobal reads a variable of one word as the constant it is.
+func (b *builder) loadGlobal(in *ssa.UnOp, g *ssa.Global) bool {
+	if b.initials != nil {
+		return false
+	}
+	words := b.globalWords(g)
+	known := words != nil
+	for _, w := range words {
+		known = known && w.Kind != tape.Any
+	}
+	switch {
+	case !known:
+		b.unknown(in)
+	case len(words) == 1:
+		b.vals[in] = val{slot: b.constant(words[0].Kind, words[0].Bits), n: 1}
+	default:
+		return false
+	}
+	return true
+}
+
+// initialise interprets the initialisers of the package.
+func (p *packageLowerer) initialise() {
+	if p.initialised {
+		return
+	}
+	p.initialised = true // also while it goes on: a variable read by then is unknown
+	init := p.ssaPkg.Func("init")
+	if init == nil {
+		return
+	}
+	written := p.writtenGlobals()
+	b := p.newBuilder(init, nil, p.pkg.Path()+".init")
+	b.initials = map[*ssa.Global]*spot{}
+	if why := b.build(); why != "" {
+		return
+	}
+	for _, m := range p.ssaPkg.Members {
+		if g, ok := m.(*ssa.Global); ok && b.initials[g] == nil && !written[g] {
+			p.globals[g] = p.zeroWords(g)
+		}
+	}
+	p.drain()
+	b.p.Optimize()
+	m, err := tape.Link(b.p, p.library)
+	if err != nil {
+		return
+	}
+	batch := m.NewBatch(1)
+	m.Run(batch)
+	if batch.Outcome(0) != tape.Returned {
+		return
+	}
+	out := 0
+	for i, g := range b.vars {
+		fields := b.p.Sig.Results[i].Fields
+		words := make([]tape.Const, len(fields))
+		for k, f := range fields {
+			if batch.Known(0, out) && !written[g] {
+				words[k] = tape.Const{Kind: f.Kind, Bits: batch.OutBits(0, out)}
+			}
+			out++
+		}
+		p.globals[g] = words
+	}
+}
+
+// zeroWords returns the words of a variable that nobody sets.
+func (p *packageLowerer) zeroWords(g *ssa.Global) []tape.Const {
+	l := p.layouts.of(g.Type().Underlying().(*types.Pointer).Elem())
+	if l == nil {
+		return nil
+	}
+	words := make([]tape.Const, len(l.fields))
+	for i, f := range l.fields {
+		words[i].Kind = f.Kind
+	}
+	return words
+}
+
+// initialSpot gives a variable a place in the frame of the initialiser.
+func (b *builder) initialSpot(g *ssa.Global) *spot {
+	if s, ok := b.initials[g]; ok {
+		return s
+	}
+	t := g.Type().Underlying().(*types.Pointer).Elem()
+	n := b.words(t)
+	s := &spot{base: inFrame, slot: b.temp(n), size: n}
+	b.initials[g] = s
+	l := b.layout(t)
+	if g.Pkg != b.ssaPkg || !l.numeric && !isError(t) || n == 0 {
+		b.blocks[0] = append([]tape.Instr{{Op: tape.Unknown, Dst: s.slot, C: n}}, b.blocks[0]...)
+		return s
+	}
+	b.blocks[0] = append([]tape.Instr{{Op: tape.Zero, Dst: s.slot, C: n}}, b.blocks[0]...)
+	if g.Name() != "init$guard" {
+		b.vars = append(b.vars, g)
+		b.p.Sig.Results = append(b.p.Sig.Results, tape.Result{Name: g.Name(), Words: int(n), Fields: l.fields})
+	}
+	return s
+}
+
+// initialResults returns all variables at the end of the initialiser.
+func (b *builder) initialResults() []tape.Range {
+	var rs []tape.Range
+	for _, g := range b.vars {
+		s := b.initials[g]
+		rs = append(rs, tape.Range{Slot: s.slot, N: s.size})
+	}
+	return rs
+}
+
+// writtenGlobals finds the variables of the package that some function other
+// than the initialiser writes.
+func (p *packageLowerer) writtenGlobals() map[*ssa.Global]bool {
+	written := map[*ssa.Global]bool{}
+	for _, fn := range p.allFuncs {
+		if fn.Name() == "init" && fn.Synthetic != "" {
+			continue
+		}
+		for _, block := range fn.Blocks {
+			for _, in := range block.Instrs {
+				if s, ok := in.(*ssa.Store); ok {
+					if g := globalOf(s.Addr); g != nil {
+						written[g] = true
+					}
+				}
+			}
+		}
+	}
+	return written
+}
+
+// globalOf returns the variable that an address points into, if that is plain.
+func globalOf(v ssa.Value) *ssa.Global {
+	for {
+		switch x := v.(type) {
+		case *ssa.Global:
+			return x
+		case *ssa.FieldAddr:
+			v = x.X
+		case *ssa.IndexAddr:
+			v = x.X
+		default:
+			return nil
+		}
+	}
+}
