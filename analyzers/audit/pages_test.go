@@ -31,6 +31,8 @@ var headings = []string{"The claim it tests", "The evidence it computes", "A wor
 // says that nothing is found, and neither that the file only belongs to
 // it. What a section reports is quoted, line for line, in a fence "text finding".
 func TestPages(t *testing.T) {
+	dir, err := filepath.Abs(filepath.Join("..", "..", "rules", "pages"))
+	require.NoError(t, err)
 	for _, rule := range rules.Catalogue() {
 		t.Run(rule.Name, func(t *testing.T) {
 			page := rule.Page()
@@ -59,8 +61,7 @@ func TestPages(t *testing.T) {
 			assert.Equal(t, headings, found)
 			assert.True(t, kinds["report"] && kinds["silent"], "a page shows what is reported and what is not")
 			if *update {
-				name := filepath.Join("..", "..", "rules", "pages", rule.Name+".md")
-				require.NoError(t, os.WriteFile(name, []byte(page), 0o644))
+				require.NoError(t, os.WriteFile(filepath.Join(dir, rule.Name+".md"), []byte(page), 0o644))
 			}
 		})
 	}
