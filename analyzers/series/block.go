@@ -51,11 +51,8 @@ func (f *feed) next(buffer []byte) (block, bool) {
 		f.carry = nil
 		if f.err == nil {
 			var more int
-			more, f.err = io.ReadFull(f.r, buffer[n:])
+			more, f.err = fill(f.r, buffer[n:])
 			n += more
-			if f.err == io.ErrUnexpectedEOF {
-				f.err = io.EOF
-			}
 		}
 		data := buffer[:n]
 		if n == 0 {

@@ -19,20 +19,20 @@ func (l *layout) setTime(t *columns.Time, h *head, header []columns.Column) {
 	if t == nil {
 		return
 	}
+	row := firstComplete(h.rows, []int{t.Column})
+	if row < 0 { // no number and no date: a time of day in words, or empty
+		return
+	}
 	l.time = t
 	l.fold.Time = l.cell(t.Column)
 	if t.Fine >= 0 {
 		l.fold.Fine, l.fold.Per = l.cell(t.Fine), t.Per
 	}
 	l.clock = rules.Clock{Unit: t.Unit, Source: rules.Label}
-	row := firstComplete(h.rows, []int{t.Column})
 	if header != nil {
 		l.clock.Column, l.clock.Place = header[t.Column].Text, header[t.Column].Place
-	} else if row >= 0 {
+	} else {
 		l.clock.Place = h.number(row, t.Column).Place
-	}
-	if row < 0 {
-		return
 	}
 	cell := h.rows[row][t.Column]
 	l.fold.Start = fold.StampOf(&cell)

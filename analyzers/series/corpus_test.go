@@ -6,37 +6,102 @@ import (
 	"os"
 	"path/filepath"
 	"testing"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+
+	"dextral/core/convention"
+	"dextral/core/kinematics"
 )
 
-func TestTry(t *testing.T) {
-	files, _ := filepath.Glob("../../../shared/corpus/logs/*")
-	for _, name := range files {
-		f, _ := os.Open(name)
-		head := make([]byte, HeadSize)
-		n, _ := f.Read(head)
-		f.Seek(0, 0)
-		k := Recognise(name, head[:n])
-		fmt.Println("==", filepath.Base(name), k)
-		r, err := Read(context.Background(), filepath.Base(name), f, Options{})
-		fmt.Println(r.Format, r.Rows, err, "bad", r.BadRows, r.FirstBad)
-		if r.Clock != nil {
-			c := r.Clock
-			fmt.Printf("clock %q %s %s count %d missing %d rep %d rev %d %s..%s span %g steps %v %v at %v\n", c.Column, c.Unit, c.Source, c.Count, c.Missing.Count, c.Repeated.Count, c.Reversed.Count, c.First, c.Last, c.Span, c.Shortest, c.Longest, c.ReversedAt)
-		}
-		for _, s := range r.Channels {
-			c := s.Continuity
-			fmt.Println(" ", s.Value.Key, s.Value.Form, s.Columns, s.Value.Place, "half", s.Half, s.Float32, s.Scale, "why", s.Value.Why)
-			fmt.Println("   norm", c.MinNorm, c.MaxNorm, "jumps", c.JumpCount, "wide", c.Wide.Count, "neg", c.NegativeScalar.Count, "largest", c.Largest.Angle*57.3)
-			if c.JumpCount > 0 {
-				fmt.Println("   first", s.RowPlace(c.Jumps[0].Row), s.Stamp(c.Jumps[0].T))
+// corpus holds public logs that are not part of this repository, with an index
+// that says what a computation with other tools found in each.
+const corpus = "../../../shared/corpus/logs"
+
+func corpusLog(t *testing.T, name string) (Kind, Result) {
+	file := filepath.Join(corpus, name)
+	data, err := os.ReadFile(file)
+	if os.IsNotExist(err) {
+		t.Skipf("%s is not here: the corpus of public logs is kept beside the repository", file)
+	}
+	require.NoError(t, err)
+	kind := Recognise(name, data[:min(len(data), HeadSize)])
+	f, err := os.Open(file)
+	require.NoError(t, err)
+	defer f.Close()
+	r, err := Read(context.Background(), name, f, Options{})
+	require.NoError(t, err)
+	return kind, r
+}
+
+// What is expected of each log: rows and counts are those of the index beside
+// the logs, or of wc and awk.
+func TestCorpus(t *testing.T) {
+	for _, c := range []struct {
+		name, key    string
+		form         convention.Form
+		scalar       convention.ScalarPlace
+		rows         int64
+		jumps, stuck int64
+		half         float64
+		single       bool
+		unit         string
+	}{
+		{"euroc_V102_groundtruth.csv", "q_RS", convention.Quaternion, convention.ScalarFirst, 16702, 8, 0, 0.5e-6, false, "ns"},
+		{"tum_V102_estimate.txt", "columns 5-8", convention.Quaternion, convention.ScalarLast, 807, 26, 4, 0.5e-5, false, "s"},
+		{"tum_freiburg1_xyz-rgbdslam_drift_short.txt", "columns 5-8", convention.Quaternion, convention.ScalarLast, 40, 0, 0, 0.5e-6, false, "s"},
+		{"kitti_00_gt.txt", "columns 1-12", convention.Transform, convention.ScalarUnstated, 4541, 0, 0, 0.5e-7, false, ""},
+		{"ros_quadruped_imu.csv", "field.orientation", convention.Quaternion, convention.ScalarFirst, 2635, 0, 248, 0.5e-12, false, "ns"},
+		{"iss_openloop_sc_ck.csv", "hps.bad_quat_iss_eci", convention.Quaternion, convention.ScalarFirst, 300, 0, 0, 0.5e-15, true, ""},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			kind, r := corpusLog(t, c.name)
+			assert.True(t, kind.Readable)
+			assert.Zero(t, r.BadRows)
+			assert.Empty(t, r.Undecided)
+			require.Len(t, r.Channels, 1)
+			s := r.Channels[0]
+			assert.Equal(t, c.key, s.Value.Key)
+			assert.Equal(t, c.form, s.Value.Form)
+			assert.Equal(t, c.scalar, s.Value.Claims.Scalar())
+			assert.Equal(t, c.rows, r.Rows)
+			assert.Equal(t, c.jumps, s.Continuity.JumpCount)
+			assert.InEpsilon(t, c.half, s.Half, 1e-9)
+			assert.Equal(t, c.single, s.Float32)
+			assert.Equal(t, c.unit, s.Unit)
+			if r.Clock != nil {
+				assert.Equal(t, c.stuck, r.Clock.NonIncreasing())
 			}
-			fmt.Println("   mat", s.Matrices)
-			for _, n := range s.Value.Numbers[:3] {
-				fmt.Println("   ", n)
-			}
-		}
-		for _, u := range r.Undecided {
-			fmt.Println("  undecided", u.Key, u.Why)
-		}
+		})
+	}
+}
+
+// The greatest norm is in the index; row and stamp of the first sign jump are those
+// that awk finds.
+func TestCorpusParticulars(t *testing.T) {
+	_, r := corpusLog(t, "euroc_V102_groundtruth.csv")
+	s := r.Channels[0]
+	assert.Equal(t, "1.000152", fmt.Sprintf("%.6f", s.Continuity.MaxNorm.Value))
+	first := s.Continuity.Jumps[0]
+	assert.EqualValues(t, 1553, first.Row)
+	assert.Equal(t, 1554, s.RowPlace(first.Row).Line)
+	assert.Equal(t, "1403715532667143168", s.Stamp(first.T))
+
+	_, r = corpusLog(t, "kitti_00_gt.txt")
+	m := r.Channels[0].Matrices
+	assert.Zero(t, m.Mirrors.Count)
+	worst := func(e kinematics.Extreme) float64 { return max(e.Value-1, 1-e.Value) }
+	assert.Less(t, max(worst(m.Det.Min), worst(m.Det.Max)), 2.1e-7, "the index says 2e-7")
+}
+
+func TestCorpusNotReadable(t *testing.T) {
+	for name, want := range map[string]Kind{
+		"px4_sample_log_small.ulg": {Name: "ULog"},
+		"tf_example.bag":           {Name: "ROS bag"},
+		"aem_Example14.kvn":        {Name: "CCSDS attitude ephemeris (KVN)"},
+	} {
+		kind, r := corpusLog(t, name)
+		assert.Equal(t, want, kind, name)
+		assert.Empty(t, r.Channels, name)
 	}
 }

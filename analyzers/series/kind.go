@@ -67,7 +67,11 @@ var extensions = map[string]string{
 var tables = []string{"", ".csv", ".tsv", ".tab", ".txt", ".dat", ".data", ".log", ".asc", ".out", ".prn", ".tum", ".kitti", ".traj", ".trj", ".pose", ".poses",
 	".gt", ".odom", ".imu", ".att", ".mocap", ".freiburg"}
 
-var jsonLines = []string{".jsonl", ".ndjson", ".jsonlines"}
+// jsonLines are the extensions of files that can be JSON lines.
+var jsonLines = []string{".jsonl", ".ndjson", ".jsonlines", ".json"}
+
+// promised are the extensions that promise a table.
+var promised = []string{".csv", ".tsv", ".jsonl", ".ndjson", ".jsonlines"}
 
 // Recognise says what kind of log a file is by its name and its first bytes.
 func Recognise(name string, head []byte) Kind {
@@ -92,15 +96,33 @@ func Recognise(name string, head []byte) Kind {
 		return Kind{Name: "UTF-16 text"}
 	case binary(head):
 		return Kind{Name: extensions[extension]}
-	case slices.Contains(tables, extension):
-		h, ok := text.Sniff(name, head, len(head) < HeadSize)
-		if ok && (extension == ".csv" || extension == ".tsv" || layoutOf(name, h, Options{}).any()) {
-			return Kind{"delimited text", true}
-		}
-	case slices.Contains(jsonLines, extension):
-		return Kind{Name: "JSON lines"}
+	case slices.Contains(tables, extension), slices.Contains(jsonLines, extension):
+		return tableKind(name, extension, head)
 	}
 	return Kind{}
+}
+
+// tableKind looks into a text file. A table without orientations is a log only if
+// its name says that it is a table.
+func tableKind(name, extension string, head []byte) Kind {
+	t, ok := sniff(name, head, len(head) < HeadSize)
+	if !ok {
+		return Kind{}
+	}
+	isJSON := t.format == jsonFormat
+	switch {
+	case extension == ".json" && len(t.head.rows) < 2:
+		return Kind{} // one object: a document
+	case slices.Contains(jsonLines, extension) && !isJSON:
+		return Kind{} // the numbers of some other JSON, line by line
+	}
+	if !slices.Contains(promised, extension) && !plan(&t.head, Options{}).any() {
+		return Kind{}
+	}
+	if isJSON {
+		return Kind{jsonFormat, true}
+	}
+	return Kind{"delimited text", true}
 }
 
 // packed are the formats that are an archive of their own extension.

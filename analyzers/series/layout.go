@@ -17,7 +17,6 @@ import (
 // head is what any reader knows of a log before it folds the first row: the
 // names that columns may have and the first rows.
 type head struct {
-	path    string
 	width   int
 	headers [][]columns.Column // the likeliest first; none if nothing names the columns
 	rows    [][]fold.Cell      // a few dozen, all columns; nil where a row cannot be read
@@ -71,28 +70,45 @@ func plan(h *head, opts Options) *layout {
 	return l
 }
 
-// named tries the possible headers and takes the first that names channels, with
-// units from a line of units if there is one. Failing that, names in two lines,
-// group above component, are joined.
+// named tries the possible headers and takes the first of those that name
+// channels best: lines by themselves, with units from a line of units if there is
+// one, then two lines joined, group above component.
 func named(h *head) (columns.Found, []columns.Column) {
-	for i, header := range h.headers {
-		for j, other := range h.headers {
+	var best columns.Found
+	var bestHeader []columns.Column
+	bestRank := 0
+	for _, header := range possible(h.headers) {
+		f := columns.Find(header)
+		rank := min(1, len(f.Undecided)) // then doubtful channels, then others
+		for _, c := range f.Channels {
+			rank = max(rank, 2)
+			if !c.Doubtful {
+				rank = 3
+			}
+		}
+		if rank > bestRank {
+			best, bestHeader, bestRank = f, header, rank
+		}
+	}
+	return best, bestHeader
+}
+
+// possible lists what may be the names of the columns.
+func possible(headers [][]columns.Column) [][]columns.Column {
+	var all [][]columns.Column
+	for i, header := range headers {
+		for j, other := range headers {
 			if i != j && unitRow(other) {
 				header = withUnits(header, other)
 				break
 			}
 		}
-		if f := columns.Find(header); len(f.Channels)+len(f.Undecided) > 0 {
-			return f, header
-		}
+		all = append(all, header)
 	}
-	for i := 0; i+1 < len(h.headers); i++ {
-		header := joined(h.headers[i+1], h.headers[i])
-		if f := columns.Find(header); len(f.Channels)+len(f.Undecided) > 0 {
-			return f, header
-		}
+	for i := 0; i+1 < len(headers); i++ {
+		all = append(all, joined(headers[i+1], headers[i]))
 	}
-	return columns.Found{}, nil
+	return all
 }
 
 // unitRow reports whether a line above the data gives units: at least half of its fields do.

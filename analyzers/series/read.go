@@ -2,14 +2,11 @@ package series
 
 import (
 	"bytes"
-	"compress/gzip"
 	"context"
 	"errors"
 	"fmt"
 	"io"
-	"math"
 
-	"dextral/analyzers/series/columns"
 	"dextral/analyzers/series/fold"
 	"dextral/analyzers/series/text"
 	"dextral/rules"
@@ -51,88 +48,30 @@ type BadRow struct {
 
 // Read reads a log to its end. The path is the one to be printed. A file that
 // is no log, or one without orientations, gives an empty Result and no error,
-// after a look at its beginning. With an error, from the reader or because ctx was cancelled,
-// comes the result so far.
+// after a look at its beginning. With an error, from the reader or because ctx
+// was cancelled, comes the result so far; the error does not repeat the path.
 func Read(ctx context.Context, path string, r io.Reader, opts Options) (Result, error) {
 	start, r, err := unpack(r)
 	if err != nil {
-		return Result{}, fmt.Errorf("%s: %w", path, err)
+		return Result{}, err
 	}
-	s, ok := text.Sniff(path, start, len(start) < HeadSize)
+	t, ok := sniff(path, start, len(start) < HeadSize)
 	if !ok {
 		return Result{}, nil
 	}
-	l := layoutOf(path, s, opts)
-	s.Cells = l.cells
-	in := &feed{r: io.MultiReader(bytes.NewReader(start[s.Offset:]), r), cut: s.Cut, line: s.Line}
+	l := plan(&t.head, opts)
+	p := t.parser(l.cells)
+	in := &feed{r: io.MultiReader(bytes.NewReader(start[t.offset:]), r), cut: p.Cut, line: t.line}
 	total, err := &part{fold: fold.New(&l.fold)}, error(nil)
 	if len(l.channels) > 0 {
 		total, err = run(ctx, in, &l.fold, opts, func() *folder {
-			return &folder{parser: &delimited{s.Table}, origin: s.Line - 1, cells: make([]fold.Cell, l.width())}
+			return &folder{parser: p, origin: t.line - 1, cells: make([]fold.Cell, l.width())}
 		})
 	}
 	if err != nil && !errors.Is(err, ctx.Err()) {
-		err = fmt.Errorf("%s: reading stopped after line %d: %w", path, in.line, err)
+		err = fmt.Errorf("reading stopped near line %d: %w", in.line, err)
 	}
-	return l.result(path, formatNames[s.Delimiter], s.Line-1, total), err
-}
-
-var formatNames = map[byte]string{',': "comma-separated", ';': "semicolon-separated", '\t': "tab-separated", '|': "bar-separated", ' ': "blank-separated"}
-
-// delimited is the parser of delimited text.
-type delimited struct{ text.Table }
-
-// Blank reports whether a record is none.
-func (*delimited) Blank(record []byte) bool { return text.Blank(record) }
-
-// unpack reads the start of a file, unzipped if it is a gzip file, and returns
-// it with the reader of the rest.
-func unpack(r io.Reader) ([]byte, io.Reader, error) {
-	start, err := readHead(r)
-	if err != nil || !bytes.HasPrefix(start, []byte(gzipMagic)) {
-		return start, r, err
-	}
-	z, err := gzip.NewReader(io.MultiReader(bytes.NewReader(start), r))
-	if err != nil {
-		return nil, nil, fmt.Errorf("gzip: %w", err)
-	}
-	start, err = readHead(z)
-	return start, z, err
-}
-
-func readHead(r io.Reader) ([]byte, error) {
-	start := make([]byte, HeadSize)
-	n, err := io.ReadFull(r, start)
-	if err == io.EOF || err == io.ErrUnexpectedEOF {
-		err = nil
-	}
-	return start[:n], err
-}
-
-// layoutOf plans a table of delimited text.
-func layoutOf(path string, s *text.Head, opts Options) *layout {
-	h := &head{path: path, width: s.Width}
-	for _, fields := range s.Headers {
-		var header []columns.Column
-		for _, f := range fields {
-			header = append(header, columns.Column{Text: f.Text, Place: f.Place})
-		}
-		h.headers = append(h.headers, header)
-	}
-	for _, row := range s.Rows {
-		h.rows = append(h.rows, s.Loose(row))
-	}
-	h.number = func(row, column int) rules.Number {
-		n := rules.Number{Value: math.NaN()}
-		if fields := s.Fields(path, s.Rows[row]); column < len(fields) {
-			n.Text, n.Place = fields[column].Text, fields[column].Place
-		}
-		if h.rows[row] != nil {
-			n.Value = h.rows[row][column].Value()
-		}
-		return n
-	}
-	return plan(h, opts)
+	return l.result(path, t.format, t.line-1, total), err
 }
 
 // result puts the folds in the form that rules judge.
@@ -187,6 +126,8 @@ func (l *layout) reason(f text.Fault) string {
 	switch f.Kind {
 	case text.Ragged:
 		return fmt.Sprintf("has %d columns; %d are expected", f.Column, len(l.cells))
+	case text.Garbled:
+		return "is no JSON object"
 	case text.NotNumber:
 		for i := range l.channels {
 			for k, c := range l.channels[i].Columns {
@@ -195,7 +136,7 @@ func (l *layout) reason(f text.Fault) string {
 				}
 			}
 		}
-		return fmt.Sprintf("column %d is no number", f.Column+1)
+		return fmt.Sprintf("column %d, the time stamp, is no number", f.Column+1)
 	default:
 		return fmt.Sprintf("is longer than %d bytes", text.MaxRecord)
 	}

@@ -118,7 +118,7 @@ func (g *group) threeAngles(columns []Column, parts []component, unique bool) Ch
 	units := g.units(parts)
 	switch {
 	case !unique:
-		v.Why = "a column of it stands in the header twice; which one is meant is not said"
+		v.Why = twice
 	case len(units) > 1:
 		v.Why = fmt.Sprintf("the three angles have different units: %s", strings.Join(quoted(units), ", "))
 	case units[0] == "deg":

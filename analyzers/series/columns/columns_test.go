@@ -58,7 +58,7 @@ func TestFind(t *testing.T) {
 		{"timestamp,tx,ty,tz,qx,qy,qz,qw", "q: quaternion [7 4 5 6]; form by name" + first, ""},
 		{"timestamp,q[0],q[1],q[2],q[3],delta_q_reset[0],delta_q_reset[1]", "q: quaternion [1 2 3 4]; form by name; scalar first (w x y z) by name; doubtful", ""},
 		{"t,Quat1,Quat2,Quat3,Quat4", "Quat: quaternion [1 2 3 4]; form by label", ""},
-		{"t,quaternion_0,quaternion_1,quaternion_2,quaternion_3", "quaternion: quaternion [1 2 3 4]; form by label; scalar first (w x y z) by name", ""},
+		{"t,quaternion_0,quaternion_1,quaternion_2,quaternion_3", "quaternion: quaternion [1 2 3 4]; form by label", ""},
 		{"t,q1,q2,q3,q4", "q: quaternion [1 2 3 4]; form by name; doubtful", ""},
 		{"RotX,RotY,RotZ,RotW", "Rot: quaternion [3 0 1 2]; form by name" + first, ""},
 		{"IMUQuatW,IMUQuatX,IMUQuatY,IMUQuatZ", "IMUQuat: quaternion [0 1 2 3]; form by label" + first, "imu"},

@@ -95,7 +95,7 @@ func (g *group) matrix(columns []Column, parts []component, size [2]int, unique 
 		}
 	}
 	if !unique {
-		v.Why = "a column of it stands in the header twice; which one is meant is not said"
+		v.Why = twice
 	}
 	return c
 }

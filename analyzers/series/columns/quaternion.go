@@ -90,14 +90,15 @@ func (g *group) named(columns []Column, parts []component, by rules.Source, uniq
 	text := columns[parts[0].column]
 	c.Value.Claims = rules.Claims{said(convention.Quaternion, by, text), said(convention.ScalarFirst, rules.Label, text)}
 	if !unique {
-		c.Value.Why = "a column of it stands in the header twice; which one is meant is not said"
+		c.Value.Why = twice
 	}
 	return []Channel{c}
 }
 
-// numbered makes a quaternion of components 0..3, of which 0 is the scalar by
-// custom, or 1..4, of which custom says nothing. Longer rows of numbers are
-// something else, such as the joints of an arm.
+// numbered makes a quaternion of components 0..3 or 1..4. By custom q0 is the
+// scalar; of other words with numbers, which may be indices of an array in
+// any order, custom says nothing. Longer rows of numbers are something else, such as
+// the joints of an arm.
 func (g *group) numbered(columns []Column) []Channel {
 	by := g.parts[0].by
 	if by == rules.Shape {
@@ -123,11 +124,20 @@ func (g *group) numbered(columns []Column) []Channel {
 	c.numbered, c.Doubtful = true, by < rules.Label
 	first := columns[parts[0].column]
 	c.Value.Claims = rules.Claims{said(convention.Quaternion, by, first)}
-	if ids[0] == "0" {
+	if ids[0] == "0" && customaryScalar(parts[0].key) {
 		c.Value.Claims = append(c.Value.Claims, said(convention.ScalarFirst, rules.Name, first))
 	}
 	if !unique {
-		c.Value.Why = "a column of it stands in the header twice; which one is meant is not said"
+		c.Value.Why = twice
 	}
 	return []Channel{c}
+}
+
+const twice = "a column of it stands in the header twice; which one is meant is not said"
+
+// customaryScalar reports whether the word before the number is q: q0, q_0, q[0].
+func customaryScalar(key string) bool {
+	before, _, _ := strings.Cut(key, "*")
+	words := strings.Fields(before)
+	return len(words) > 0 && words[len(words)-1] == "q"
 }

@@ -121,7 +121,9 @@ func (t *Table) Cut(data []byte) int {
 }
 
 // Blank reports whether a record holds no data: nothing but blanks, or a comment.
-func Blank(record []byte) bool {
+func (t *Table) Blank(record []byte) bool { return blank(record) }
+
+func blank(record []byte) bool {
 	for i, b := range record {
 		switch b {
 		case ' ', '\t':

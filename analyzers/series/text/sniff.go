@@ -79,7 +79,7 @@ func lines(t *Table, head []byte, offset int, last bool) []line {
 			break
 		}
 		if trimmed := bytes.TrimSpace(record); len(trimmed) > 0 {
-			l := line{text: record, offset: offset + len(head) - len(rest), number: number, comment: Blank(record)}
+			l := line{text: record, offset: offset + len(head) - len(rest), number: number, comment: blank(record)}
 			found = append(found, l)
 			if !l.comment && t.looksLikeData(record, nil) {
 				data++

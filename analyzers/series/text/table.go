@@ -29,6 +29,7 @@ const (
 	Ragged              // more or fewer columns than the header has
 	NotNumber           // words where a number is expected
 	TooLong             // longer than MaxRecord
+	Garbled             // not in the format of the file at all
 )
 
 // Row reads the cells of a record. What it leaves in cells when there is a
@@ -163,15 +164,19 @@ func blankEnd(record []byte, i int) int {
 	return i
 }
 
-// read reads a field that is not plainly a number: one with blanks or quotes
-// around it, a word, a time of day, or nothing.
-func (t *Table) read(field []byte, c *fold.Cell) bool {
+// read reads a field that is not plainly a number.
+func (t *Table) read(field []byte, c *fold.Cell) bool { return Read(field, t.Point, c) }
+
+// Read reads a field that need not plainly be a number: one with blanks or quotes
+// around it, a word such as nan or null, date and time, or nothing. It reports
+// false for any other text.
+func Read(field []byte, point byte, c *fold.Cell) bool {
 	field = Unquote(field)
 	if len(field) == 0 {
 		c.State = fold.Gap
 		return true
 	}
-	if end := c.Scan(field, 0, t.Point); end == len(field) {
+	if end := c.Scan(field, 0, point); end == len(field) {
 		c.State = fold.Written
 		return true
 	}
