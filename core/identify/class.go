@@ -5,8 +5,6 @@ import (
 	"math"
 	"slices"
 	"strings"
-
-	"dextral/core/convention"
 )
 
 // Class is a set of hypotheses that the numbers cannot tell apart.
@@ -65,8 +63,10 @@ func (s *search) class(best candidate) Class {
 		if c.Hypothesis == best.Hypothesis || c.cost > best.cost && c.key != best.key {
 			continue
 		}
-		class.Readings = append(class.Readings, c.Hypothesis)
 		class.Tie = class.Tie || c.cost <= best.cost && c.key != best.key
+		if len(class.Readings) < maxListed {
+			class.Readings = append(class.Readings, c.Hypothesis)
+		}
 	}
 	slices.SortStableFunc(class.Readings, func(x, y Hypothesis) int { return x.cost - y.cost })
 	return class
@@ -117,38 +117,28 @@ func (c Class) String() string {
 	return strings.Join(texts, "; or ")
 }
 
-// maxTied bounds the readings of a tie that are spelled out.
-const maxTied = 6
+// maxTied bounds the readings of a tie that are spelled out, maxListed those
+// that are listed: an orientation with coarse numbers fits thousands.
+const (
+	maxTied   = 6
+	maxListed = 48
+)
 
-// String says how the two are read and related: "with the quaternion's scalar
-// last (x y z w)".
+// String says what has to be so: "with the quaternion's scalar last (x y z
+// w)". Where nothing is changed it says how both are read.
 func (h Hypothesis) String() string {
-	if h.changes == 0 {
-		text := fmt.Sprintf("with %s and %s", h.A, h.B)
-		if h.inverse {
-			text += ", one the reverse of the other"
-		}
-		return text
+	first, second := "the", "the"
+	if h.A.Form == h.B.Form {
+		first, second = "the first", "the second"
 	}
 	var parts []string
-	for _, r := range [2]Reading{h.A, h.B} {
-		if words := h.reading(r); words != "" {
-			parts = append(parts, words)
-		}
+	if h.changes == 0 || h.changesA&^set(Mirror) != 0 {
+		parts = append(parts, h.A.words(first))
+	}
+	if h.changes == 0 || h.changesB&^set(Mirror) != 0 {
+		parts = append(parts, h.B.words(second))
 	}
 	return "with " + strings.Join(append(parts, h.relations()...), ", ")
-}
-
-// reading words what is changed in the reading of one side.
-func (h Hypothesis) reading(r Reading) string {
-	switch {
-	case r.Form == convention.Quaternion && h.changes.has(ScalarOrder),
-		r.Form == convention.Angles && h.changes&set(UnitSlip, MovingFixed, Sequence, AngleOrder, AngleSign) != 0,
-		r.Form == convention.RotationVector && h.changes&set(UnitSlip, Kind) != 0,
-		r.Form == convention.AxisAngle && h.changes.has(UnitSlip):
-		return r.String()
-	}
-	return ""
 }
 
 // relations words what stands between the two rotations.

@@ -25,8 +25,9 @@ type relation struct {
 type Hypothesis struct {
 	A, B Reading
 	relation
-	changes changeSet
-	cost    int
+	changes            changeSet
+	changesA, changesB changeSet // those about one reading alone
+	cost               int
 }
 
 // Changes lists what the hypothesis changes about the claims.

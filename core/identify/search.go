@@ -117,7 +117,10 @@ func (s *search) compare(a, b *reading, target rotor.Rotor, rel relation, cost i
 		return
 	}
 	c := candidate{residual: rotor.Angle(from, target), open: open, at: a.rotor}
-	c.Hypothesis = Hypothesis{A: s.a.reading(a.code), B: s.b.reading(b.code), relation: rel, changes: a.set | b.set | changes, cost: cost}
+	c.Hypothesis = Hypothesis{
+		A: s.a.reading(a.code), B: s.b.reading(b.code), relation: rel,
+		changes: a.set | b.set | changes, changesA: a.set, changesB: b.set, cost: cost,
+	}
 	c.key = s.aliasOf(a.code, b.code, rel)
 	if forward && c.residual < s.forward.residual {
 		s.forward = c
@@ -160,8 +163,12 @@ func (s *search) keepNearest(c candidate) {
 	s.nearest = slices.Insert(s.nearest, at, c)
 }
 
-// halfAngle compares twice the turn of either with the other.
+// halfAngle compares twice the turn of either with the other. Of Gibbs vectors
+// and modified Rodrigues parameters one is twice the other already.
 func (s *search) halfAngle(a, b *reading, rel relation, cost int, changes changeSet) {
+	if a.parameters != AxisTimesAngle || b.parameters != AxisTimesAngle {
+		return
+	}
 	target := b.rotor
 	if rel.inverse {
 		target = target.Reverse()

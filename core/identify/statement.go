@@ -60,26 +60,30 @@ type Reading struct {
 }
 
 // String says how the numbers are read.
-func (r Reading) String() string {
+func (r Reading) String() string { return r.words("the") }
+
+// words says it of one of two statements: article is "the", or tells two of
+// one form apart.
+func (r Reading) words(article string) string {
 	switch r.Form {
 	case convention.Quaternion:
-		return "quaternion with " + r.Scalar.String()
+		return fmt.Sprintf("%s quaternion's %s", article, r.Scalar)
 	case convention.Angles:
-		return fmt.Sprintf("angles %s in %ss", r.Turns, r.Unit)
+		return fmt.Sprintf("%s angles read as %s in %ss", article, r.Turns, r.Unit)
 	case convention.RotationVector:
 		if r.Parameters == AxisTimesAngle {
-			return fmt.Sprintf("rotation vector in %ss", r.Unit)
+			return fmt.Sprintf("%s rotation vector in %ss", article, r.Unit)
 		}
-		return r.Parameters.String()
+		return fmt.Sprintf("%s three numbers read as %s", article, r.Parameters)
 	case convention.AxisAngle:
-		return fmt.Sprintf("axis and angle in %ss", r.Unit)
+		return fmt.Sprintf("%s axis and angle in %ss", article, r.Unit)
 	case convention.Rotation:
 		if r.Mirrored {
-			return "matrix with a mirror"
+			return article + " matrix with its mirror taken out"
 		}
-		return "matrix"
+		return article + " matrix as it stands"
 	}
-	return r.Form.String()
+	return article + " " + r.Form.String()
 }
 
 // unreadable says why a statement is no orientation at all; "" if it is one.

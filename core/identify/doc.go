@@ -1,0 +1,2 @@
+// Package identify tells which conventions explain numbers.
+package identify
