@@ -89,6 +89,12 @@ func (c *checker) slots(r Range) error {
 	if r.Slot < 0 || r.N < 0 || int64(r.Slot)+int64(r.N) > int64(c.p.Slots) {
 		return fmt.Errorf("slots %d+%d of %d", r.Slot, r.N, c.p.Slots)
 	}
+	// Parameters, constants and the rest need not lie side by side.
+	for _, edge := range [...]int32{int32(c.p.Sig.Words()), c.p.firstTemp()} {
+		if r.Slot < edge && r.Slot+r.N > edge {
+			return fmt.Errorf("slots %d+%d straddle slot %d, where another kind of slot begins", r.Slot, r.N, edge)
+		}
+	}
 	return nil
 }
 

@@ -1,48 +1,34 @@
 package tape
 
+import "slices"
+
 // Optimize makes a program shorter without changing what it computes:
 // unreachable blocks, copies and values that nobody uses go.
 func (p *Program) Optimize() {
 	p.unchecked()
-	p.dropUnreachable()
+	p.arrange()
 }
 
 func (p *Program) unchecked() { p.checked = false }
 
-// dropUnreachable removes blocks that no path leads to.
-func (p *Program) dropUnreachable() {
+// arrange orders the blocks so that each comes after those that lead to it, but
+// for loops, and drops those that no path leads to. Lanes that part at a branch
+// go on in this order, and so meet again as soon as they can.
+func (p *Program) arrange() {
 	if len(p.Blocks) == 0 {
 		return
 	}
-	seen := make([]bool, len(p.Blocks))
-	seen[0] = true
-	work := []int32{0}
-	for len(work) > 0 {
-		b := work[len(work)-1]
-		work = work[:len(work)-1]
-		for _, s := range p.successors(int(b)) {
-			if !seen[s] {
-				seen[s] = true
-				work = append(work, s)
-			}
-		}
-	}
+	order := p.postorder()
+	slices.Reverse(order)
 	at := make([]int32, len(p.Blocks))
-	n := int32(0)
-	for b, s := range seen {
-		at[b] = n
-		if s {
-			n++
-		}
+	for i, b := range order {
+		at[b] = int32(i)
 	}
 	var code []Instr
 	var blocks []int32
-	for b, s := range seen {
-		if !s {
-			continue
-		}
+	for _, b := range order {
 		blocks = append(blocks, int32(len(code)))
-		for i := int(p.Blocks[b]); i < p.blockEnd(b); i++ {
+		for i := int(p.Blocks[b]); i < p.blockEnd(int(b)); i++ {
 			in := p.Code[i]
 			switch in.Op {
 			case Jump:
@@ -54,4 +40,37 @@ func (p *Program) dropUnreachable() {
 		}
 	}
 	p.Code, p.Blocks = code, blocks
+}
+
+// postorder lists the blocks that can be reached, each after all it leads to.
+// The first side of a branch comes later, so that the body of a loop will stand
+// before what follows it.
+func (p *Program) postorder() []int32 {
+	type visit struct {
+		block int32
+		next  []int32
+	}
+	seen := make([]bool, len(p.Blocks))
+	var order []int32
+	push := func(stack []visit, b int32) []visit {
+		seen[b] = true
+		next := p.successors(int(b))
+		slices.Reverse(next)
+		return append(stack, visit{b, next})
+	}
+	stack := push(nil, 0)
+	for len(stack) > 0 {
+		top := &stack[len(stack)-1]
+		if len(top.next) == 0 {
+			order = append(order, top.block)
+			stack = stack[:len(stack)-1]
+			continue
+		}
+		b := top.next[0]
+		top.next = top.next[1:]
+		if !seen[b] {
+			stack = push(stack, b)
+		}
+	}
+	return order
 }

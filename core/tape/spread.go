@@ -1,143 +1,153 @@
 package tape
 
-// spread does for step s what the machine does for values, but for the marks
-// of unknown words. Values of unknown words are zero, or whatever; a step that
-// would act upon one ends the sample.
-func (m *Machine) spread(l *linked, s *step, base int32) fault {
-	u := m.unk[base : base+l.p.Slots]
-	switch s.op {
-	case Jump, Return, Panic, Stop, Nop, Append, New:
-		// Return and Append move the marks with the words.
-		if s.op == Append && (anyOf(u[s.a:s.a+3]) || anyOf(u[s.b:s.b+3])) {
-			return faultAddress
-		}
-		if s.op == New {
-			u[s.dst] = false
-		}
-		if s.op == Append {
-			clear(u[s.dst : s.dst+3])
-		}
-	case If:
-		if u[s.a] {
-			return faultBranch
-		}
-	case Call:
-		if l.callee[s.a] < 0 {
-			return m.unknownCall(l, s, u)
-		}
-	case Unknown:
-		for i := s.dst; i < s.dst+s.c; i++ {
-			u[i] = true
-		}
-	case Zero:
-		clear(u[s.dst : s.dst+s.c])
-	case FrameAddr, DataAddr:
-		u[s.dst] = false
-	case Copy:
-		copy(u[s.dst:s.dst+s.c], u[s.a:s.a+s.c])
-	case Load:
-		return m.spreadLoad(s, u, base)
-	case Store:
-		return m.spreadStore(s, u, base)
-	case Move:
-		return m.spreadMove(s, u, base)
-	case Bound:
-		if u[s.a] || u[s.b] {
-			return faultAddress
-		}
-	case BoundSlice:
-		if u[s.a] || u[s.b] || u[s.c] {
-			return faultAddress
-		}
-	case Make:
-		if u[s.a] {
-			return faultAddress
-		}
-		u[s.dst] = false
-	case Offset:
-		if u[s.a] {
-			return faultAddress
-		}
-		u[s.dst] = false
-	case DivI, RemI, DivU, RemU:
-		if u[s.b] {
-			return faultBranch
-		}
-		u[s.dst] = u[s.a]
-	default:
-		info := s.op.info()
-		mark := info.a.role == read && u[s.a] || info.b.role == read && u[s.b] || info.c.role == read && u[s.c]
-		u[s.dst] = mark
-		if info.dst.words == 2 {
-			u[s.dst+1] = mark
-		}
+// Marks of unknown words: one bit for each lane. They are kept only by
+// machines in which something can be unknown.
+
+// markOf returns the marks of slot i of the frame at base.
+func (m *Machine) markOf(base, i int32) uint64 {
+	if i < 0 {
+		return 0 // a constant
 	}
-	return noFault
+	return m.unk[base+i]
 }
 
-func anyOf(u []bool) bool {
-	for _, x := range u {
-		if x {
-			return true
+// mark sets the marks of the word at address a in the lanes of mask.
+func (m *Machine) mark(a int32, marks, mask uint64) {
+	m.unk[a] = m.unk[a]&^mask | marks&mask
+}
+
+func (m *Machine) setMark(a int64, lane uint8, on bool) {
+	m.unk[a] &^= 1 << lane
+	if on {
+		m.unk[a] |= 1 << lane
+	}
+}
+
+// spread does for step s what the machine does for values, but for marks. The
+// values of unknown words are zero, or whatever; a lane that would act upon
+// one ends.
+func (m *Machine) spread(g *group, l *linked, s *step) {
+	u := func(slot int32) uint64 { return m.markOf(g.base, slot) & g.mask }
+	set := func(slot int32, marks uint64) { m.mark(g.base+slot, marks, g.mask) }
+	switch s.op {
+	case Jump, Return, Panic, Stop, Nop:
+		// Return moves the marks with the words.
+	case If:
+		m.kill(g, u(s.a), faultBranch)
+	case Call:
+		if l.callee[s.a] < 0 {
+			m.unknownCall(g, l, s)
+		}
+	case Unknown:
+		for k := range s.c {
+			set(s.dst+k, g.mask)
+		}
+	case Zero:
+		for k := range s.c {
+			set(s.dst+k, 0)
+		}
+	case FrameAddr, DataAddr, New:
+		set(s.dst, 0)
+	case Copy:
+		m.spreadCopy(g, s)
+	case Load:
+		m.kill(g, u(s.a), faultAddress)
+		m.spreadLoad(g, s)
+	case Store:
+		m.kill(g, u(s.a), faultAddress)
+		m.spreadStore(g, s)
+	case Bound:
+		m.kill(g, u(s.a)|u(s.b), faultAddress)
+	case Move, BoundSlice:
+		m.kill(g, u(s.a)|u(s.b)|u(s.c), faultAddress)
+	case Make, Offset:
+		m.kill(g, u(s.a), faultAddress)
+		set(s.dst, 0)
+	case Append:
+		for k := range int32(3) {
+			m.kill(g, u(s.a+k)|u(s.b+k), faultAddress)
+		}
+		for k := range int32(3) {
+			set(s.dst+k, 0)
+		}
+	case DivI, RemI, DivU, RemU:
+		m.kill(g, u(s.b), faultBranch)
+		set(s.dst, u(s.a))
+	default:
+		m.spreadValue(g, s)
+	}
+}
+
+// spreadValue marks the result of an operation that has an unknown operand.
+func (m *Machine) spreadValue(g *group, s *step) {
+	info := s.op.info()
+	var marks uint64
+	for _, x := range [...]struct {
+		o operand
+		v int32
+	}{{info.a, s.a}, {info.b, s.b}, {info.c, s.c}} {
+		if x.o.role == read {
+			marks |= m.markOf(g.base, x.v)
 		}
 	}
-	return false
+	for k := range int32(max(info.dst.words, 1)) {
+		m.mark(g.base+s.dst+k, marks, g.mask)
+	}
+}
+
+func (m *Machine) spreadCopy(g *group, s *step) {
+	for i := range s.c {
+		k := i
+		if s.a >= 0 && s.a < s.dst {
+			k = s.c - 1 - i
+		}
+		from := s.a + k
+		if s.a < 0 {
+			from = s.a
+		}
+		m.mark(g.base+s.dst+k, m.markOf(g.base, from), g.mask)
+	}
 }
 
 // unknownCall marks the results of a function that is not known.
-func (m *Machine) unknownCall(l *linked, s *step, u []bool) fault {
+func (m *Machine) unknownCall(g *group, l *linked, s *step) {
 	site := &l.p.Calls[s.a]
 	if site.Shared {
-		return faultCallee
+		m.kill(g, g.mask, faultCallee)
+		return
 	}
-	for i := s.dst; i < s.dst+site.Words; i++ {
-		u[i] = true
+	for k := range site.Words {
+		m.mark(g.base+s.dst+k, g.mask, g.mask)
+		fill(&m.mem[g.base+s.dst+k], 0, g.lanes())
 	}
-	return noFault
 }
 
-func (m *Machine) spreadLoad(s *step, u []bool, base int32) fault {
-	if u[s.a] {
-		return faultAddress
-	}
-	a := int64(m.mem[base+s.a])
-	if a == 0 {
-		return noFault // the machine reports it
-	}
-	a += int64(s.b)
-	if m.at(a, s.c, false) != noFault {
-		return noFault
-	}
-	if a < int64(m.root) {
-		for i := range s.c {
-			u[s.dst+i] = m.data[a-1+int64(i)].Kind == Any
+func (m *Machine) spreadLoad(g *group, s *step) {
+	addr := m.col(m.mem[g.base:], s.a)
+	for _, l := range g.lanes() {
+		a := int64(addr[l&63])
+		if a == 0 || m.at(a+int64(s.b), int64(s.c), false) != noFault {
+			continue // the machine reports it
 		}
-		return noFault
+		for k := range s.c {
+			m.setMark(int64(g.base+s.dst+k), l, m.marked(a+int64(s.b+k), l))
+		}
 	}
-	copy(u[s.dst:s.dst+s.c], m.unk[a:])
-	return noFault
 }
 
-func (m *Machine) spreadStore(s *step, u []bool, base int32) fault {
-	if u[s.a] {
-		return faultAddress
+func (m *Machine) spreadStore(g *group, s *step) {
+	addr := m.col(m.mem[g.base:], s.a)
+	for _, l := range g.lanes() {
+		a := int64(addr[l&63])
+		if a == 0 || m.at(a+int64(s.dst), int64(s.c), true) != noFault {
+			continue
+		}
+		for k := range s.c {
+			from := s.b + k
+			if s.b < 0 {
+				from = s.b
+			}
+			m.setMark(a+int64(s.dst+k), l, m.markOf(g.base, from)>>l&1 != 0)
+		}
 	}
-	a := int64(m.mem[base+s.a])
-	if a == 0 || m.at(a+int64(s.dst), s.c, true) != noFault {
-		return noFault
-	}
-	copy(m.unk[a+int64(s.dst):], u[s.b:s.b+s.c])
-	return noFault
-}
-
-func (m *Machine) spreadMove(s *step, u []bool, base int32) fault {
-	if u[s.a] || u[s.b] || u[s.c] {
-		return faultAddress
-	}
-	to, from, n := int64(m.mem[base+s.a]), int64(m.mem[base+s.b]), int64(m.mem[base+s.c])
-	if n <= 0 || n > maxWords || m.at(to, int32(n), true) != noFault || m.at(from, int32(n), false) != noFault {
-		return noFault
-	}
-	copy(m.unk[to:to+n], m.unk[from:from+n])
-	return noFault
 }
