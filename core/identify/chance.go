@@ -16,8 +16,9 @@ const (
 	margin = 4
 
 	// accidents bounds the number of hypotheses that are expected to fit
-	// two orientations that have nothing to do with each other.
-	accidents = 1e-4
+	// two orientations that have nothing to do with each other. The expectation is a
+	// bound itself: measured wrong decisions are some tens of times rarer.
+	accidents = 3e-4
 )
 
 // widths are, in rad, the room that the three numbers of an orientation leave

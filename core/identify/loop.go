@@ -251,7 +251,7 @@ func (l *loop) edgeRepairs(i, cost int, limit, gap float64) []Repair {
 	target := Statement{Form: convention.Quaternion, Tolerance: limit, Claim: Claim{Scalar: convention.ScalarFirst}}
 	w, x, y, z := wanted.r.Quaternion()
 	target.Numbers = []float64{w, x, y, z}
-	s := &search{inverse: Inverse.Cost(), forward: candidate{residual: math.Inf(1)}}
+	s := &search{inverse: Inverse.Cost(), forward: candidate{residual: math.Inf(1)}, reach: math.Pi}
 	_ = s.a.read(l.edges[i].Statement) // has been read before
 	_ = s.b.read(target)
 	s.b.readings, s.b.powers = s.b.readings[:1], false // the target is no statement: nothing about it is in doubt

@@ -57,7 +57,7 @@ func (s *search) read(a, b Statement) string {
 	*s = search{
 		a: side{readings: s.a.readings}, b: side{readings: s.b.readings},
 		found: s.found[:0], nearest: s.nearest[:0],
-		forward: candidate{residual: math.Inf(1)},
+		forward: candidate{residual: math.Inf(1)}, reach: math.Pi,
 	}
 	if why := s.a.read(a); why != "" {
 		return "the first cannot be read: " + why

@@ -15,10 +15,11 @@ const maxCost = 6
 
 // reading is one way to take the numbers and the rotation that follows.
 type reading struct {
-	rotor rotor.Rotor
-	tol   float64
-	set   changeSet
-	cost  int8
+	rotor  rotor.Rotor
+	tol    float64
+	spread float64 // see mappable
+	set    changeSet
+	cost   int8
 	code
 }
 
@@ -128,7 +129,7 @@ func (u unitReading) set() changeSet {
 
 func (d *side) add(r rotor.Rotor, tol float64, s changeSet, cost int8, how code) {
 	if unit, ok := r.Unit(); ok {
-		d.readings = append(d.readings, reading{unit, math.Min(tol, math.Pi), s, cost, how})
+		d.readings = append(d.readings, reading{unit, math.Min(tol, math.Pi), spread(unit), s, cost, how})
 	}
 }
 
@@ -318,8 +319,12 @@ func (d *side) addTurns(u, way, signs int, cost int8) {
 	if d.reversed {
 		r = r.Reverse()
 	}
+	wide := 0.0
+	if cost <= maxWide-int8(Remap.Cost()) { // no map of axes is looked for beyond
+		wide = spread(r)
+	}
 	d.readings = append(d.readings, reading{
-		r, d.units[u].tol, changes, cost,
+		r, d.units[u].tol, wide, changes, cost,
 		code{unit: d.units[u].unit, way: uint8(way), name: n.name, signs: uint8(signs)},
 	})
 }
