@@ -67,7 +67,7 @@ var catalogue = []Rule{
 	{ScalarMisplaced, "A quaternion and a twin value agree only if its scalar stands at the other end.", Error},
 	{DirectionReversed, "Two values of one orientation agree only if one of them maps the other way.", Error},
 	{AngleUnitWrong, "Angles and a twin value agree only in another unit than stated.", Error},
-	{StorageTransposed, "A flat matrix and a twin value agree only if it is stored the other way.", Error},
+	{StorageTransposed, "A flat matrix is stored the other way than stated.", Error},
 	{HalfAngle, "Two values of one orientation agree only if one of them is taken at half or twice its angle.", Error},
 	{AngleSignReversed, "Angles and a twin value agree only if one angle changes its sign.", Error},
 	{ParametersMistaken, "Three numbers and a twin value agree only if they are another kind of parameters than stated.", Error},

@@ -55,6 +55,9 @@ func checkGroup(group []*Value) []*Finding {
 	return found
 }
 
+// Compare tells whether two values describe one orientation.
+func Compare(a, b *Value) identify.Result { return identify.Same(a.statement(), b.statement()) }
+
 // statement hands a value to package identify.
 func (v *Value) statement() identify.Statement {
 	s := identify.Statement{
@@ -146,6 +149,10 @@ func misread(c identify.Change, f convention.Form) bool {
 }
 
 func unexplained(a, b *Value, r identify.Result) *Finding {
+	if r.Reason != "" { // something fits, but numbers this special fit by accident too
+		return twinFinding(RepresentationsDiffer, a, b, r, "%s and %s state one orientation, and as stated they differ by %s; what went wrong cannot be told: %s",
+			b.name(), a.name(), degrees(r.Stated.Residual), r.Reason)
+	}
 	return twinFinding(RepresentationsDiffer, a, b, r, "%s and %s state one orientation, and no reading of their conventions reconciles them; as stated they differ by %s",
 		b.name(), a.name(), degrees(r.Stated.Residual))
 }

@@ -34,6 +34,7 @@ type FrameLoop struct {
 	Degrees float64
 	Open    float64 // degrees that the digits leave open
 	Gap     float64 // in the unit of the translations
+	OpenGap float64 // that the digits leave open
 	Verdict string
 }
 
@@ -51,7 +52,7 @@ func FrameGraphs(chains []*rules.Chain) []FrameGraph {
 		}
 		for _, l := range c.Loops() {
 			g.Loops = append(g.Loops, FrameLoop{Frames: l.Frames, Degrees: l.Result.Angle * 180 / math.Pi, Open: l.Result.Open * 180 / math.Pi,
-				Gap: l.Result.Gap, Verdict: verdict(l)})
+				Gap: l.Result.Gap, OpenGap: l.Result.OpenGap, Verdict: verdict(l)})
 		}
 		graphs = append(graphs, g)
 	}
@@ -103,7 +104,7 @@ func FramesText(w io.Writer, graphs []FrameGraph) error {
 		}
 		for _, l := range g.Loops {
 			text := fmt.Sprintf("  loop    %s: %s; rotation off by %s", strings.Join(append(l.Frames, l.Frames[0]), " -> "), l.Verdict, loopNumber(l.Degrees))
-			if l.Gap > 0 {
+			if l.Gap > l.OpenGap {
 				text += ", translation by " + strconv.FormatFloat(l.Gap, 'g', 3, 64)
 			}
 			p.line(text)
@@ -114,7 +115,9 @@ func FramesText(w io.Writer, graphs []FrameGraph) error {
 	return p.Flush()
 }
 
-func loopNumber(deg float64) string { return strconv.FormatFloat(deg, 'g', 3, 64) + " deg" }
+func loopNumber(deg float64) string {
+	return residualText(rules.Quantity{Value: deg, Unit: "deg", Known: true}) + " deg"
+}
 
 // FramesDOT prints frame graphs in the DOT language, one digraph each, an arrow
 // from the frame whose coordinates go in to the one whose come out.
