@@ -68,6 +68,9 @@ func (g *Graph) frame(name string) int {
 	return len(g.frames) - 1
 }
 
+// far is the other end of an edge.
+func (g *Graph) far(edge, at int) int { return g.ends[edge][0] + g.ends[edge][1] - at }
+
 // Frames are the names, in the order in which they were first met.
 func (g *Graph) Frames() []string { return g.frames }
 
