@@ -22,8 +22,8 @@ const (
 )
 
 // widths are, in rad, the room that the three numbers of an orientation leave
-// to chance: how far each is from a value at which readings coincide. They are
-// sorted, smallest first.
+// to chance: how far the orientation is from the nearest places at which readings
+// coincide.
 //
 // Exchanging and negating components of a rotor (scalar place, reverse, maps of
 // axes) are reflections of the 4-dimensional cube, whose mirrors are where a
@@ -44,15 +44,15 @@ func rotorWidths(r rotor.Rotor) widths {
 	return widths(d[:3])
 }
 
-// angleWidths are the distances of three angles from multiples of a right angle,
-// where orders and signs coincide.
+// angleWidths are the distances of three angles from where signs and orders
+// coincide, up to right angles: a multiple of a right angle, and equal sizes.
 func angleWidths(n [3]float64, unit convention.Unit) widths {
-	var w widths
+	var r [3]float64
 	for i, a := range n {
-		w[i] = math.Abs(math.Remainder(a*unit.InRadians(), math.Pi/2))
+		r[i] = math.Abs(math.Remainder(a*unit.InRadians(), math.Pi/2))
 	}
-	slices.Sort(w[:])
-	return w
+	slices.Sort(r[:])
+	return widths{r[0], (r[1] - r[0]) / math.Sqrt2, (r[2] - r[1]) / math.Sqrt2}
 }
 
 // chance is the probability that a hypothesis fits within eps by accident.

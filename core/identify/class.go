@@ -110,7 +110,7 @@ func (c Class) String() string {
 	}
 	var texts []string
 	for _, h := range c.Readings {
-		if h.cost == c.Cost && len(texts) < maxTied && !slices.Contains(texts, h.String()) {
+		if h.cost <= c.Cost && len(texts) < maxTied && !slices.Contains(texts, h.String()) {
 			texts = append(texts, h.String())
 		}
 	}
@@ -151,9 +151,9 @@ func (h Hypothesis) relations() []string {
 	}
 	switch h.power {
 	case 1:
-		words = append(words, "the first turning twice as far")
+		words = append(words, "twice the turn of the first")
 	case 2:
-		words = append(words, "the second turning twice as far")
+		words = append(words, "twice the turn of the second")
 	}
 	if h.A.Mirrored != h.B.Mirrored {
 		words = append(words, h.mirror())

@@ -180,9 +180,10 @@ func order(x, y bool) int {
 // doubt says why evidence is not enough.
 func (e evidence) doubt(c candidate) string {
 	if e.numbers < 3 && c.cost > e.numbers {
-		return fmt.Sprintf("%s fits, but the orientation has only %d numbers that are no multiples of a right angle or of each other", c.changes, e.numbers)
+		return fmt.Sprintf("a change of %s fits, but that takes %d independent numbers, and of this orientation's all but %d are equal, zero or right angles",
+			c.changes, c.cost, e.numbers)
 	}
-	return fmt.Sprintf("%s fits, but so would %.2g readings of unrelated numbers", c.changes, e.expected)
+	return fmt.Sprintf("a change of %s fits, but so would %.2g readings of numbers that have nothing to do with each other", c.changes, e.expected)
 }
 
 func (s *search) unexplained(reason string) Result {

@@ -59,7 +59,7 @@ func TestEverySlipIsTold(t *testing.T) {
 		{AngleOrder, "with the angles read as z-y'-x'' (moving axes) of numbers 2, 1, 3 in degrees", func(a, _ *Statement) { a.Numbers = []float64{20, 102, 14} }},
 		{Sequence, "with the angles read as z-y'-x'' (moving axes) in degrees", func(a, _ *Statement) { a.Claim.Label = label(t, "y-x'-y''") }},
 		{AngleSign, "with the angles read as z-y'-x'' (moving axes) with number 2 negated in degrees", func(a, _ *Statement) { a.Numbers[1] = -20 }},
-		{HalfAngle, "with the first turning twice as far", func(_, q *Statement) { *q = quaternion(tern.Mul(tern)) }},
+		{HalfAngle, "with twice the turn of the first", func(_, q *Statement) { *q = quaternion(tern.Mul(tern)) }},
 		{Remap, "with the axes of the result mapped x,y,z -> x,-z,y", func(_, q *Statement) { *q = quaternion(quarter.Mul(tern)) }},
 	} {
 		a, q := ternAngles(t), quaternion(tern)

@@ -119,19 +119,30 @@ func (r SeriesResult) Tied() bool { return len(r.Ties) > 0 && r.Ties[0].Cost == 
 
 // Motion is what there was to see.
 type Motion struct {
-	Windows int     // steps used
-	Turn    float64 // rad: sum of all turns
+	Windows int     // steps used: of long series a part
+	Turn    float64 // rad: sum of their turns
 	Rate    float64 // rad/s: RMS
 	Second  float64 // RMS rate about the second axis, as a part of that about the first
 	Swings  int     // times that a component of the rate swings over its mean
 }
 
-// series works on windows.
-type series struct {
+// SeriesFold takes in a series row by row, in memory that does not grow with
+// its length. The zero fold is ready.
+type SeriesFold struct {
 	predicted [2][]rotor.Vec // rad/s in body and in space axes, if the scalar is first and R maps body to space
 	rate      []rotor.Vec
 	dt        []float64
+
+	first, last Sample // of the window that is open
+	open        bool
+	turned      rotor.Vec // integral of the rate over it
+	stride      int       // one window of so many is kept
+	passed      int       // windows since the last one kept
 }
+
+// maxWindows bounds the windows that are kept: when there are more, every other
+// one is dropped, and from then on every other new one.
+const maxWindows = 1 << 14
 
 // minWindow is the least step, in s, over which rates are predicted: the
 // difference of two orientations a few milliseconds apart is mostly their rounding.
@@ -151,8 +162,16 @@ const maxTurn = math.Pi / 2
 // the residual of every map of axes, sign and unit follows without another look at the
 // samples.
 func Series(samples []Sample, claim SeriesClaim) SeriesResult {
-	var s series
-	s.cut(samples)
+	var f SeriesFold
+	for i := range samples {
+		f.Add(samples[i])
+	}
+	return f.Result(claim)
+}
+
+// Result compares what has been taken in with the claim. It ends the fold:
+// outliers are left out of it.
+func (s *SeriesFold) Result(claim SeriesClaim) SeriesResult {
 	s.trim()
 	r := SeriesResult{Motion: s.motion()}
 	if r.Motion.Windows < 3 || r.Motion.Turn == 0 {
@@ -174,30 +193,20 @@ func (m Motion) String() string {
 	return fmt.Sprintf("a turn of %s in %d windows, %.2g about a second axis", degrees(m.Turn), m.Windows, m.Second)
 }
 
-// cut makes windows of the samples.
-func (s *series) cut(samples []Sample) {
-	for a := range s.predicted {
-		s.predicted[a] = make([]rotor.Vec, 0, len(samples))
+// Add takes in one row.
+func (s *SeriesFold) Add(x Sample) {
+	if !x.usable() || s.open && x.T <= s.last.T {
+		return
 	}
-	s.rate, s.dt = make([]rotor.Vec, 0, len(samples)), make([]float64, 0, len(samples))
-	from := -1 // first sample of the window
-	last := -1 // sample before, of the same window
-	var turned rotor.Vec
-	for i := range samples {
-		x := &samples[i]
-		if !x.usable() || last >= 0 && x.T <= samples[last].T {
-			continue
-		}
-		if from < 0 {
-			from, last = i, i
-			continue
-		}
-		turned = turned.Add(x.W.Add(samples[last].W).Scale((x.T - samples[last].T) / 2))
-		last = i
-		if dt := x.T - samples[from].T; dt >= minWindow*(1-1e-9) {
-			s.add(&samples[from], x, turned.Scale(1/dt), dt)
-			from, turned = i, rotor.Vec{}
-		}
+	if !s.open {
+		s.first, s.last, s.open = x, x, true
+		return
+	}
+	s.turned = s.turned.Add(x.W.Add(s.last.W).Scale((x.T - s.last.T) / 2))
+	s.last = x
+	if dt := x.T - s.first.T; dt >= minWindow*(1-1e-9) {
+		s.close(&x, dt)
+		s.first, s.turned = x, rotor.Vec{}
 	}
 }
 
@@ -210,9 +219,12 @@ func (x *Sample) usable() bool {
 	return sum-sum == 0 && n > 0
 }
 
-// add predicts the mean rate from a to b.
-func (s *series) add(a, b *Sample, rate rotor.Vec, dt float64) {
-	x, okA := a.rotor().Unit()
+// close predicts the mean rate of the window that ends with b.
+func (s *SeriesFold) close(b *Sample, dt float64) {
+	if s.passed++; s.passed < s.stride {
+		return
+	}
+	x, okA := s.first.rotor().Unit()
 	y, okB := b.rotor().Unit()
 	if !okA || !okB {
 		return
@@ -221,9 +233,18 @@ func (s *series) add(a, b *Sample, rate rotor.Vec, dt float64) {
 	if body.Norm() > maxTurn {
 		return // for every reading: all of them permute and negate components
 	}
+	s.passed = 0
 	s.predicted[0] = append(s.predicted[0], body.Scale(1/dt))
 	s.predicted[1] = append(s.predicted[1], x.Rotate(body).Scale(1/dt))
-	s.rate, s.dt = append(s.rate, rate), append(s.dt, dt)
+	s.rate, s.dt = append(s.rate, s.turned.Scale(1/dt)), append(s.dt, dt)
+	if len(s.rate) == maxWindows {
+		s.stride = max(2, 2*s.stride)
+		half := make([]bool, maxWindows)
+		for i := range half {
+			half[i] = i%2 == 1
+		}
+		s.keep(half)
+	}
 }
 
 func (x *Sample) rotor() rotor.Rotor { return rotor.FromQuaternion(x.Q[0], x.Q[1], x.Q[2], x.Q[3]) }
@@ -233,7 +254,7 @@ func (x *Sample) rotor() rotor.Rotor { return rotor.FromQuaternion(x.Q[0], x.Q[1
 // reading but the unit, so this favours none. A window is left out if the two
 // differ by more than half of the larger and by ten times what is usual, and no more
 // than a tenth are: more are no outliers but a contradiction.
-func (s *series) trim() {
+func (s *SeriesFold) trim() {
 	n := len(s.rate)
 	if n < 10 {
 		return
@@ -265,7 +286,7 @@ const outlier = 10
 
 var units = [2]convention.Unit{convention.Radian, convention.Degree}
 
-func (s *series) keep(kept []bool) {
+func (s *SeriesFold) keep(kept []bool) {
 	for a := range s.predicted {
 		s.predicted[a] = filter(s.predicted[a], kept)
 	}

@@ -20,7 +20,7 @@ type sums struct {
 	power [3][3]float64    // sum of prediction_i prediction_j in body axes
 }
 
-func (s *series) sums() *sums {
+func (s *SeriesFold) sums() *sums {
 	t := &sums{n: float64(len(s.rate))}
 	for i, w := range s.rate {
 		t.rate += w.Dot(w)
@@ -79,7 +79,7 @@ func (t *sums) residual(axes int, unit float64, c cube, negated bool) float64 {
 }
 
 // motion sums up what the predictions show.
-func (s *series) motion() Motion {
+func (s *SeriesFold) motion() Motion {
 	m := Motion{Windows: len(s.rate)}
 	if m.Windows == 0 {
 		return m
@@ -102,7 +102,7 @@ func (s *series) motion() Motion {
 // swings counts how often a component of the prediction goes from a quarter of its RMS
 // above its mean to as much below, or back. Components of less than a tenth of the
 // rate do not count.
-func (s *series) swings(axis rotor.Vec, rate float64) int {
+func (s *SeriesFold) swings(axis rotor.Vec, rate float64) int {
 	var sum, square float64
 	for _, v := range s.predicted[0] {
 		x := v.Dot(axis)

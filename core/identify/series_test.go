@@ -216,6 +216,26 @@ func slipped(g *rand.Rand, flight []Sample, noise float64, unrelated bool) ([]Sa
 	return samples, slip
 }
 
+// A long series takes no more memory than a short one, and is judged alike.
+func TestLongSeries(t *testing.T) {
+	flight := fly(4000, 0.05)
+	var f SeriesFold
+	for lap := range 20 {
+		for _, x := range flight {
+			x.T += float64(lap) * 200
+			f.Add(x)
+		}
+	}
+	assert.Less(t, len(f.rate), maxWindows)
+	assert.Greater(t, len(f.rate), maxWindows/4)
+	r := f.Result(flown)
+	assert.Equal(t, Agree, r.Verdict)
+	assert.True(t, r.Decided)
+	row := flight[0]
+	n := testing.AllocsPerRun(1000, func() { row.T += 0.001; f.Add(row) })
+	assert.Zero(t, n)
+}
+
 // corpus opens a public log that is not part of the project; DEXTRAL_CORPUS
 // names the directory that holds it.
 func corpus(t *testing.T, name string) []map[string]float64 {
