@@ -78,8 +78,8 @@ func hasElement(printed, name string) bool {
 	return slices.Contains(strings.Split(printed, "/"), name)
 }
 
-// speaks reports whether a file of the folder has a word of orientations. A
-// file that cannot be read is a failure and left out.
+// speaks reports whether the folder may state orientations. A file that cannot
+// be read is a failure and left out.
 func (l *loader) speaks(f *folder) bool {
 	hit := false
 	for name := range f.files {
@@ -97,7 +97,7 @@ func (l *loader) speaks(f *folder) bool {
 		}
 		hit = hit || mentions(src)
 	}
-	return hit
+	return hit && promising(sortedKeys(f.files))
 }
 
 // moduleRoot is the nearest directory at or above dir that holds a go.mod; ""

@@ -17,6 +17,7 @@ type verdict struct {
 	text string // the words that say so
 	at   span   // where they stand; empty for names of types
 	why  string // why it is undecided
+	weak bool   // only the type says so, and types of an algebra hold other things too
 }
 
 // speech is what is said about a literal: names, the nearest first, and
@@ -50,8 +51,8 @@ func (w *walker) nameOf(text string) *claims.Name {
 	return w.names[text]
 }
 
-// exportedQ is the customary qBodyCam where Go wants a capital.
-var exportedQ = regexp.MustCompile(`^Q[A-Z][a-z]`)
+// exportedQ is the customary q and qBodyCam where Go wants a capital.
+var exportedQ = regexp.MustCompile(`^Q($|[A-Z][a-z])`)
 
 func (l label) stated(f convention.Form) verdict {
 	return verdict{form: f, from: rules.Label, text: l.text, at: l.at}
@@ -162,9 +163,22 @@ func (s speech) ofFour(named bool) verdict {
 	case isQuaternion && s.hasMount():
 		return quaternionType.stated(convention.Quaternion)
 	case isQuaternion:
-		return quaternionType.inferred(convention.Quaternion)
+		v := quaternionType.inferred(convention.Quaternion)
+		v.weak = true
+		return v
 	case isRotation && named:
 		return rotationType.stated(convention.Quaternion)
+	}
+	return s.declaredQuaternion()
+}
+
+// declaredQuaternion is the verdict on a type that is called something else and
+// whose declaration says that it is a quaternion.
+func (s speech) declaredQuaternion() verdict {
+	for _, r := range s.remarks {
+		if r.onType && r.comment.Form == convention.Quaternion {
+			return verdict{form: convention.Quaternion, from: rules.Name, text: r.text(), at: r.at, weak: true}
+		}
 	}
 	return verdict{}
 }

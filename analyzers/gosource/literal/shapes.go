@@ -248,7 +248,7 @@ func (w *walker) four(s site, lit *ast.CompositeLit, entries []ast.Expr, order c
 		w.skip(lit, s, ok)
 		return
 	}
-	if v.from == rules.Name && !v.at.from.IsValid() && v.why == "" && looksAlgebraic(numbers, order) {
+	if v.weak && looksAlgebraic(numbers, order) {
 		v.why = "only its type speaks of a quaternion, and its numbers do not look like a rotation"
 	}
 	value := &rules.Value{Form: v.form, Numbers: numbers}

@@ -230,11 +230,25 @@ func (w *walker) beside(n ast.Node) []*ast.CommentGroup {
 func (w *walker) results(n *ast.ReturnStmt, name *ast.Ident, signature *ast.FuncType, key string, doc *ast.CommentGroup) {
 	for i, e := range n.Results {
 		s := site{key: key, loose: true}
-		if name != nil && i == 0 && len(n.Results) == signature.Results.NumFields() && w.orients(name.Name) {
+		if name != nil && i == 0 && w.single(n, signature) && w.orients(name.Name) {
 			s = site{key: key, group: alone, comments: append(w.beside(n), present(doc)...), labels: []label{nameLabel(name)}}
 		}
 		w.value(s, e)
 	}
+}
+
+// single reports a function of one result, and perhaps an error or a boolean:
+// what its name says is then said of that result.
+func (w *walker) single(n *ast.ReturnStmt, signature *ast.FuncType) bool {
+	if len(n.Results) != signature.Results.NumFields() || len(n.Results) > 2 {
+		return false
+	}
+	if len(n.Results) == 1 {
+		return true
+	}
+	last := signature.Results.List[len(signature.Results.List)-1].Type
+	id, ok := last.(*ast.Ident)
+	return ok && (id.Name == "error" || id.Name == "bool")
 }
 
 // orients reports a function's name that says what it returns.

@@ -92,3 +92,8 @@ var targetRotation = Quat{X: 3.5, Y: 2} // want `^quaternion targetRotation 0 3.
 func angle() float64 { return 1 }
 
 var computedQuat = Quat{W: math.Cos(angle())} // want `^skip: it is computed at run time`
+
+// Pointing is a quaternion, scalar last.
+type Pointing [4]float64
+
+var aim = Pointing{0, 0, 0, 1} // want `^quaternion aim 0 0 0 1: form=quaternion by name, scalar place=scalar last`
