@@ -14,8 +14,9 @@ type parser interface {
 	// whole records, as those of text.Table do.
 	Record(data []byte, last bool) (record, rest []byte, lines int, ok bool)
 	Cut(data []byte) int
-	// Blank reports whether a record is none: an empty line, a comment.
-	Blank(record []byte) bool
+	// Plain reports whether every line of data is a record.
+	Plain(data []byte) bool
+	// Row reads a record into cells. A fault of the kind text.Empty is none.
 	Row(record []byte, cells []fold.Cell) text.Fault
 }
 

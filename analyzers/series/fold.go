@@ -1,6 +1,7 @@
 package series
 
 import (
+	"bytes"
 	"cmp"
 	"context"
 
@@ -53,17 +54,33 @@ func (f *folder) block(b block, p *part) {
 		p.bad.add(badRow{row, text.Fault{Kind: text.TooLong}})
 		return
 	}
+	if f.parser.Plain(b.data) {
+		for rest := b.data; len(rest) > 0; row++ {
+			end := bytes.IndexByte(rest, '\n')
+			if end < 0 {
+				f.record(rest, row, p)
+				return
+			}
+			f.record(rest[:end], row, p)
+			rest = rest[end+1:]
+		}
+		return
+	}
 	for rest := b.data; len(rest) > 0; {
 		record, next, lines, _ := f.parser.Record(rest, true)
-		if !f.parser.Blank(record) {
-			if fault := f.parser.Row(record, f.cells); fault.Kind != text.None {
-				p.bad.add(badRow{row, fault})
-			} else {
-				p.fold.Row(row, f.cells)
-			}
-		}
+		f.record(record, row, p)
 		rest = next
 		row += int64(lines)
+	}
+}
+
+func (f *folder) record(record []byte, row int64, p *part) {
+	switch fault := f.parser.Row(record, f.cells); fault.Kind {
+	case text.None:
+		p.fold.Row(row, f.cells)
+	case text.Empty:
+	default:
+		p.bad.add(badRow{row, fault})
 	}
 }
 

@@ -50,12 +50,8 @@ func (n *Number) Scan(text []byte, at int, point byte) int {
 	}
 	first := i
 	var mantissa uint64
-	for i < len(text) {
-		d := text[i] - '0'
-		if d > 9 {
-			break
-		}
-		mantissa = mantissa*10 + uint64(d)
+	for i < len(text) && text[i]-'0' <= 9 {
+		mantissa = mantissa*10 + uint64(text[i]-'0')
 		i++
 	}
 	digits := i - first
@@ -71,12 +67,8 @@ func (n *Number) Scan(text []byte, at int, point byte) int {
 			mantissa = mantissa*100000000 + eightDigits(eight)
 			i += 8
 		}
-		for i < len(text) {
-			d := text[i] - '0'
-			if d > 9 {
-				break
-			}
-			mantissa = mantissa*10 + uint64(d)
+		for i < len(text) && text[i]-'0' <= 9 {
+			mantissa = mantissa*10 + uint64(text[i]-'0')
 			i++
 		}
 		exponent = from - i
@@ -92,6 +84,13 @@ func (n *Number) Scan(text []byte, at int, point byte) int {
 		exponent += e
 	}
 	n.Mantissa, n.Exponent, n.Exact = mantissa, int32(exponent), true
+	if mantissa < exactMantissa && digits <= 19 && uint(-exponent) <= exactPower {
+		n.Value = float64(mantissa) / powers[-exponent]
+		if n.Negative {
+			n.Value = -n.Value
+		}
+		return end
+	}
 	if digits > 19 && !fitsBehindZeros(text[first:i], point) {
 		n.Exact = false
 	}
@@ -174,18 +173,22 @@ var powers = [exactPower + 1]float64{
 }
 
 // convert works out Value from the other fields. It reports false when that
-// takes more than the two quick ways.
+// takes strconv.
 func (n *Number) convert() bool {
-	e := int(n.Exponent)
+	m, e := n.Mantissa, int(n.Exponent)
+	for m >= exactMantissa && m%10 == 0 { // 1700000000.250000000
+		m /= 10
+		e++
+	}
 	var v float64
 	switch {
-	case n.Mantissa < exactMantissa && e <= 0 && e >= -exactPower:
-		v = float64(n.Mantissa) / powers[-e]
-	case n.Mantissa < exactMantissa && e > 0 && e <= exactPower:
-		v = float64(n.Mantissa) * powers[e]
+	case m < exactMantissa && e <= 0 && e >= -exactPower:
+		v = float64(m) / powers[-e]
+	case m < exactMantissa && e > 0 && e <= exactPower:
+		v = float64(m) * powers[e]
 	default:
 		var ok bool
-		if v, ok = eiselLemire(n.Mantissa, e); !ok {
+		if v, ok = eiselLemire(m, e); !ok {
 			return false
 		}
 	}

@@ -4,7 +4,7 @@ import (
 	"math"
 	"math/big"
 	"math/bits"
-	"sync"
+	"sync/atomic"
 )
 
 // The table of 128-bit powers covers what instruments write: 19 digits at any
@@ -18,13 +18,20 @@ const (
 // is set, rounded down.
 type power struct{ high, low uint64 }
 
-var table = sync.OnceValue(func() *[greatestPower - leastPower + 1]power {
-	var t [greatestPower - leastPower + 1]power
+type powerTable [greatestPower - leastPower + 1]power
+
+// table is made when it is needed first. Whoever comes in the meantime makes it
+// again, alike.
+var table atomic.Pointer[powerTable]
+
+func newTable() *powerTable {
+	t := &powerTable{}
 	for i := range t {
 		t[i] = powerOf10(leastPower + i)
 	}
-	return &t
-})
+	table.Store(t)
+	return t
+}
 
 func powerOf10(e int) power {
 	ten := new(big.Int).Exp(big.NewInt(10), big.NewInt(int64(max(e, -e))), nil)
@@ -57,7 +64,11 @@ func eiselLemire(mantissa uint64, exponent int) (float64, bool) {
 	if exponent < leastPower || exponent > greatestPower {
 		return 0, false
 	}
-	ten := &table()[exponent-leastPower]
+	powers := table.Load()
+	if powers == nil {
+		powers = newTable()
+	}
+	ten := &powers[exponent-leastPower]
 	zeros := bits.LeadingZeros64(mantissa)
 	mantissa <<= uint(zeros)
 	high, low := bits.Mul64(mantissa, ten.high)

@@ -37,24 +37,23 @@ func (r *Rows) merge(next *Rows) {
 	join(&r.Tally, next.Tally)
 }
 
-func (c *Clock) push(row int64, t float64, s Stamp) {
-	at := kinematics.Place{Row: row, T: t}
+func (c *Clock) push(at kinematics.Place, s *Stamp) {
 	if !s.known {
 		count(&c.Missing, at)
 		return
 	}
 	if c.Count == 0 {
-		c.First, c.first = s, at
+		c.First, c.first = *s, at
 	} else {
 		c.step(s, at)
 	}
 	c.Count++
-	c.Last = s
+	c.Last = *s
 }
 
 // step accounts for the step from the last stamp to s.
-func (c *Clock) step(s Stamp, at kinematics.Place) {
-	d := s.Since(c.Last)
+func (c *Clock) step(s *Stamp, at kinematics.Place) {
+	d := since(s, &c.Last)
 	switch {
 	case d > 0:
 		c.Steps.add(d, at)
@@ -75,7 +74,7 @@ func (c *Clock) merge(next *Clock) {
 		*c = *next
 		return
 	}
-	c.step(next.First, next.first)
+	c.step(&next.First, next.first)
 	c.Count += next.Count
 	c.Last = next.Last
 	c.Repeated.merge(&next.Repeated)

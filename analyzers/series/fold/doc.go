@@ -13,6 +13,7 @@ import (
 
 	"dextral/analyzers/series/decimal"
 	"dextral/core/convention"
+	"dextral/core/kinematics"
 )
 
 // Cell is one number of a row. The zero value is a gap: nothing was written.
@@ -94,16 +95,16 @@ func (f *Fold) Reset() {
 // Row adds the next row. Row numbers grow, with or without steps.
 func (f *Fold) Row(row int64, cells []Cell) {
 	f.Rows++
-	t := math.NaN()
+	at := kinematics.Place{Row: row, T: math.NaN()}
 	if f.layout.Time >= 0 {
 		s := f.layout.stamp(cells)
-		if s.Known() {
-			t = s.Since(f.layout.Start)
+		if s.known {
+			at.T = since(&s, &f.layout.Start)
 		}
-		f.Clock.push(row, t, s)
+		f.Clock.push(at, &s)
 	}
 	for i := range f.Channels {
-		f.Channels[i].push(&f.layout.Channels[i], row, t, cells)
+		f.Channels[i].push(&f.layout.Channels[i], at, cells)
 	}
 	for i := range f.Pairs {
 		a, b := &f.layout.Channels[f.layout.Pairs[i][0]], &f.layout.Channels[f.layout.Pairs[i][1]]

@@ -68,32 +68,25 @@ func Joined(whole, fraction *Cell, per int64) Stamp {
 }
 
 // Since is the time from another stamp to s.
-func (s Stamp) Since(from Stamp) float64 {
-	if !s.Exact || !from.Exact {
-		return s.Value - from.Value
+func (s Stamp) Since(from Stamp) float64 { return since(&s, &from) }
+
+// since is Since for rows: mostly stamps have the same count of decimals.
+func since(s, from *Stamp) float64 {
+	if d := s.Mantissa - from.Mantissa; s.Exact && from.Exact && s.Exponent == from.Exponent && (d < s.Mantissa) == (from.Mantissa > 0) {
+		return scaled(d, s.Exponent)
 	}
-	d, ok := s.difference(from)
-	if !ok {
-		return s.Value - from.Value
-	}
-	return scaled(d, min(s.Exponent, from.Exponent))
+	return sinceOther(s, from)
 }
 
-// difference is s - from in units of the finer exponent.
-func (s Stamp) difference(from Stamp) (int64, bool) {
-	a, b := s.Mantissa, from.Mantissa
-	if d := a - b; s.Exponent == from.Exponent && (d < a) == (b > 0) {
-		return d, true
+// sinceOther brings both to the finer exponent, as long as they fit.
+func sinceOther(s, from *Stamp) float64 {
+	fine := min(s.Exponent, from.Exponent)
+	a, okA := raise(s.Mantissa, s.Exponent-fine)
+	b, okB := raise(from.Mantissa, from.Exponent-fine)
+	if d := a - b; s.Exact && from.Exact && okA && okB && (d < a) == (b > 0) {
+		return scaled(d, fine)
 	}
-	fine, ok := min(s.Exponent, from.Exponent), true
-	if a, ok = raise(a, s.Exponent-fine); !ok {
-		return 0, false
-	}
-	if b, ok = raise(b, from.Exponent-fine); !ok {
-		return 0, false
-	}
-	d := a - b
-	return d, (d < a) == (b > 0)
+	return s.Value - from.Value
 }
 
 // raise is m * 10^by, if that is an int64.

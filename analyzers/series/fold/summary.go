@@ -1,8 +1,6 @@
 package fold
 
 import (
-	"math"
-
 	"dextral/core/convention"
 	"dextral/core/kinematics"
 	"dextral/core/matrix"
@@ -66,14 +64,14 @@ type Summary struct {
 
 // push adds the channel's numbers in a row. A row without any number is a gap;
 // where only some are missing they count as NaN.
-func (s *Summary) push(c *Channel, row int64, t float64, cells []Cell) {
-	at := kinematics.Place{Row: row, T: t}
+func (s *Summary) push(c *Channel, at kinematics.Place, cells []Cell) {
 	gaps := 0
 	for i, cell := range c.Cells {
-		switch v := cells[cell].Value(); {
-		case cells[cell].State == Gap:
+		if cells[cell].State == Gap {
 			gaps++
-		case !math.IsNaN(v) && !math.IsInf(v, 0):
+			continue
+		}
+		if v := cells[cell].Number.Value; v-v == 0 { // neither NaN nor infinite
 			s.Ranges[i].add(v, at)
 		}
 	}
@@ -81,15 +79,25 @@ func (s *Summary) push(c *Channel, row int64, t float64, cells []Cell) {
 		count(&s.Gaps, at)
 		return
 	}
-	s.Digits.push(c.Rotation, cells)
-	value := func(i int) float64 { return cells[c.Rotation[i]].Value() }
+	if looked(at.Row) {
+		s.Digits.push(c.Rotation, cells)
+	}
 	switch c.Form {
 	case convention.Quaternion:
-		s.Continuity.Push(row, t, rotor.FromQuaternion(value(0), value(1), value(2), value(3)))
+		p := (*[4]int)(c.Rotation)
+		s.Continuity.Push(at.Row, at.T, rotor.FromQuaternion(cells[p[0]].Value(), cells[p[1]].Value(), cells[p[2]].Value(), cells[p[3]].Value()))
 	case convention.Rotation, convention.Transform:
-		s.Matrices.push(at, matrix.Mat3{{value(0), value(1), value(2)}, {value(3), value(4), value(5)}, {value(6), value(7), value(8)}})
+		var m matrix.Mat3
+		for k, cell := range c.Rotation {
+			m[k/3][k%3] = cells[cell].Value()
+		}
+		s.Matrices.push(at, m)
 	}
 }
+
+// looked reports whether the digits of a row are looked at: of the first rows all,
+// then of one in eight, chosen by number.
+func looked(row int64) bool { return row <= 4096 || level(row) >= 3 }
 
 func (s *Summary) merge(next *Summary) {
 	join(&s.Gaps, next.Gaps)

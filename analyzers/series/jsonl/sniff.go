@@ -40,7 +40,7 @@ func Sniff(path string, head []byte, last bool) (*Head, bool) {
 		if !ok {
 			break
 		}
-		if !h.Blank(record) {
+		if len(bytes.TrimSpace(record)) > 0 {
 			l := learner{walk: walk{text: record, table: &h.Table}, head: h, path: path, line: int(number)}
 			l.space()
 			if l.peek() != '{' || !l.learn(h.root, "") {

@@ -47,8 +47,8 @@ func (t *Table) Record(data []byte, last bool) (record, rest []byte, lines int, 
 // Cut is the length of the lines that are whole.
 func (t *Table) Cut(data []byte) int { return bytes.LastIndexByte(data, '\n') + 1 }
 
-// Blank reports whether a record is an empty line.
-func (t *Table) Blank(record []byte) bool { return len(bytes.TrimSpace(record)) == 0 }
+// Plain reports true: every line is a record.
+func (t *Table) Plain([]byte) bool { return true }
 
 // Row reads the cells of a record. What it leaves in cells when there is a
 // fault has no meaning.
@@ -61,6 +61,9 @@ func (t *Table) Row(record []byte, cells []fold.Cell) text.Fault {
 	}
 	w := walk{text: record, cells: cells, table: t}
 	w.space()
+	if w.at == len(record) {
+		return text.Fault{Kind: text.Empty}
+	}
 	if w.peek() != '{' || !w.value(t.root, 0) {
 		if w.fault.Kind == text.None {
 			w.fault.Kind = text.Garbled

@@ -120,9 +120,10 @@ func (t *Table) Cut(data []byte) int {
 	}
 }
 
-// Blank reports whether a record holds no data: nothing but blanks, or a comment.
-func (t *Table) Blank(record []byte) bool { return blank(record) }
+// Plain reports whether every line of data is a record: there are no quotes.
+func (t *Table) Plain(data []byte) bool { return t.Delimiter == ' ' || bytes.IndexByte(data, '"') < 0 }
 
+// blank reports whether a record holds no data: nothing but blanks, or a comment.
 func blank(record []byte) bool {
 	for i, b := range record {
 		switch b {

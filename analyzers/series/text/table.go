@@ -2,6 +2,8 @@ package text
 
 import (
 	"bytes"
+	"encoding/binary"
+	"math/bits"
 
 	"dextral/analyzers/series/fold"
 )
@@ -30,13 +32,18 @@ const (
 	NotNumber           // words where a number is expected
 	TooLong             // longer than MaxRecord
 	Garbled             // not in the format of the file at all
+	Empty               // no record: a blank line or a comment
 )
 
 // Row reads the cells of a record. What it leaves in cells when there is a
 // fault has no meaning.
 func (t *Table) Row(record []byte, cells []fold.Cell) Fault {
+	record = trimCR(record)
 	if len(record) > MaxRecord {
 		return Fault{Kind: TooLong}
+	}
+	if len(record) == 0 || record[0]-'0' > 9 && blank(record) {
+		return Fault{Kind: Empty}
 	}
 	if t.Delimiter == ' ' {
 		return t.blankRow(record, cells)
@@ -61,7 +68,9 @@ func (t *Table) Row(record []byte, cells []fold.Cell) Fault {
 				}
 			}
 		} else {
-			i = t.fieldEnd(record, i)
+			var passed int
+			i, passed = t.skip(record, i, column)
+			column += passed - 1
 		}
 		if i == len(record) {
 			return t.width(column+1, false)
@@ -74,6 +83,56 @@ func (t *Table) Row(record []byte, cells []fold.Cell) Fault {
 			return t.width(column+2, true)
 		}
 	}
+}
+
+// skip passes over the field that begins at i and over those behind it that
+// nobody asked for. It returns where the last of them ends, and how many they are.
+func (t *Table) skip(record []byte, i, column int) (end, passed int) {
+	wanted := 1
+	for column+wanted < t.Width && t.Cells[column+wanted] < 0 {
+		wanted++
+	}
+	ones := uint64(0x0101010101010101)
+	delimiters, quotes := ones*uint64(t.Delimiter), ones*'"'
+	for i+8 <= len(record) {
+		eight := binary.LittleEndian.Uint64(record[i:])
+		if zeroBytes(eight^quotes) != 0 {
+			break
+		}
+		found := zeroBytes(eight ^ delimiters)
+		n := bits.OnesCount64(found)
+		if passed+n >= wanted {
+			for ; passed+1 < wanted; passed++ {
+				found &= found - 1
+			}
+			return i + bits.TrailingZeros64(found)/8, wanted
+		}
+		passed += n
+		i += 8
+	}
+	return t.skipSlowly(record, i, passed, wanted)
+}
+
+// skipSlowly goes on where skip stops: in the middle of a field, before a quote
+// or near the end of the record.
+func (t *Table) skipSlowly(record []byte, i, passed, wanted int) (end, count int) {
+	for i > 0 && record[i-1] != t.Delimiter { // back to where the field begins
+		i--
+	}
+	for {
+		i = t.fieldEnd(record, i)
+		passed++
+		if passed == wanted || i == len(record) {
+			return i, passed
+		}
+		i++
+	}
+}
+
+// zeroBytes has the top bit of every byte that is zero, and no other.
+func zeroBytes(x uint64) uint64 {
+	const low = 0x7f7f7f7f7f7f7f7f
+	return ^((x&low + low) | x | low)
 }
 
 // width judges the number of columns. An empty one may follow the last.

@@ -317,3 +317,40 @@ func BenchmarkRow(b *testing.B) {
 		b.Fatal("not read")
 	}
 }
+
+// Row, which passes over what nobody asked for, against a reading of every
+// field by itself.
+func TestRowAgainstFields(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		field := rapid.OneOf(
+			rapid.SampledFrom([]string{"", "1", "-2.5", "0.123456789012345", "word", " 3 ", "\"a,b\"", "\"\"\"\"", "\"", "a\"b", "nan", "\"4\""}),
+			rapid.StringOfN(rapid.RuneFrom([]rune("ab01\"; ")), 0, 20, -1),
+		)
+		width := rapid.IntRange(1, 9).Draw(t, "width")
+		table := &Table{Delimiter: ',', Point: '.', Width: width}
+		for i := range width {
+			table.Cells = append(table.Cells, rapid.SampledFrom([]int{-1, i}).Draw(t, "cell"))
+		}
+		record := []byte(strings.Join(rapid.SliceOfN(field, max(1, width-2), width+2).Draw(t, "fields"), ","))
+		if blank(record) {
+			return
+		}
+		cells := make([]fold.Cell, width)
+		fault := table.Row(record, cells)
+		all := table.fields(record)
+		want := make([]fold.Cell, width)
+		for i, f := range all[:min(width, len(all))] {
+			if table.Cells[i] >= 0 && !table.read(record[f[0]:f[1]], &want[i]) {
+				require.Equal(t, Fault{NotNumber, i}, fault, "%q", record)
+				return
+			}
+		}
+		n := len(all)
+		if last := all[n-1]; n != width && (n != width+1 || last[0] != last[1]) {
+			require.Equal(t, Fault{Ragged, n}, fault, "%q", record)
+			return
+		}
+		require.Equal(t, Fault{}, fault, "%q", record)
+		require.Equal(t, shown(want), shown(cells), "%q", record)
+	})
+}
