@@ -97,18 +97,22 @@ func (s Sequence) AnglesWithin(r rotor.Rotor, precision float64) Triple {
 
 // within takes the sine of the precision.
 //
-// Half sum and half difference of the outer angles are directions of two plane
-// vectors p and m, whose lengths are the cosine and sine of half the middle angle
-// (of half the middle angle plus 45 degrees, times sqrt 2, for three different axes):
+// Half sum and half difference of the outer angles are the directions of two
+// plane vectors p and m:
 //
 //	proper       p = (s, i)             m = (j, e k)
 //	Tait-Bryan   p = (s + j, i + e k)   m = (s - j, i - e k)
 //
-// Products of p and m, as complex numbers, have the outer angles themselves as
-// directions. Whatever error a short p or m has enters both outer angles alike, so
-// that they reproduce r to rounding however near the singular point is. (The
-// reduction of all sequences to the proper ones is that of E. Bernardes and S. Viollet,
-// PLoS ONE 17 (2022) e0276302; taking products instead of angles is ours.)
+// Their lengths are to one another as cosine and sine of half the middle
+// angle (Tait-Bryan: of half of what it lacks to 90 degrees), so that one of
+// them vanishes at a singular point. Products of p and m, as complex numbers,
+// have the outer angles themselves as directions. Whatever error a short p or
+// m has enters both outer angles alike, and they reproduce r to rounding
+// however near the singular point is.
+//
+// That all sequences come down to the proper ones is from E. Bernardes and
+// S. Viollet, PLoS ONE 17 (2022) e0276302 (from memory); to take products
+// instead of differences of angles makes R and -R exactly alike.
 func (s Sequence) within(r rotor.Rotor, sine float64) Triple {
 	l := &layouts[s.key()&127]
 	n := [4]float64{-r.E23, -r.E31, -r.E12}

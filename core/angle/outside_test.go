@@ -182,7 +182,7 @@ func TestRobotics(t *testing.T) {
 // TestERFA: ERFA's axis turns are passive and multiply on the left, so that
 // their product is the transpose of turns about moving axes.
 func TestERFA(t *testing.T) {
-	for _, row := range table.Read(t, reference+"angle_erfa.csv") {
+	for _, row := range table.Read(t, reference+"matrix_erfa_turns.csv") {
 		axis := angle.Axis(strings.Index("xyz", row.Text("function")[1:]))
 		s := fixed(axis, (axis+1)%3, axis)
 		passive := matrixOf(s.Rotor(row.Number("angle_deg")*deg, 0, 0)).Transpose()

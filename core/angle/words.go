@@ -1,8 +1,9 @@
 package angle
 
 import (
+	"regexp"
+	"slices"
 	"strings"
-	"unicode"
 )
 
 // turnNames are the names of turns about the axes of a vehicle, as letters r
@@ -50,42 +51,39 @@ var typographic = strings.NewReplacer(
 	"\u2018", "'", "\u2019", "'", "\u201c", "''", "\u201d", "''", "\"", "''",
 )
 
-// split cuts a text into lower-case words, at everything that is no letter or
-// digit, between letters and digits, and where case changes as in eulerZYX or
-// XYZOrder. Apostrophes behind axis letters are their primes.
+// Where a text is cut: at everything that is no letter, apostrophe or digit,
+// between letters and digits, and where case changes as in eulerZYX and XYZOrder.
+var (
+	hump  = regexp.MustCompile(`(\p{Ll})(\p{Lu})|(\p{Lu})(\p{Lu}\p{Ll})`)
+	token = regexp.MustCompile(`[\p{L}']+|\p{Nd}+`)
+)
+
+// split cuts a text into lower-case words. Apostrophes behind axis letters are
+// their primes; others separate.
 func split(text string) []word {
 	var words []word
-	var run []rune
-	var primes []int
-	flush := func() {
-		if len(run) > 0 {
-			words = append(words, word{strings.ToLower(string(run)), primes})
+	spaced := hump.ReplaceAllString(typographic.Replace(text), "$1$3 $2$4")
+	for _, t := range token.FindAllString(strings.ToLower(spaced), -1) {
+		if letters := strings.ReplaceAll(t, "'", ""); strings.Trim(letters, "xyz") == "" {
+			words = append(words, word{letters, primesIn(t)})
+			continue
 		}
-		run, primes = nil, nil
+		for part := range strings.SplitSeq(t, "'") {
+			words = append(words, word{text: part})
+		}
 	}
-	for _, r := range typographic.Replace(text) {
-		switch last := len(run) - 1; {
-		case r == '\'' && last >= 0 && strings.Trim(strings.ToLower(string(run)), "xyz") == "":
-			primes = append(primes, make([]int, len(run)-len(primes))...)
-			primes[last]++
-			continue
-		case !unicode.IsLetter(r) && !unicode.IsDigit(r):
-			flush()
-			continue
-		case last >= 0 && (unicode.IsDigit(r) != unicode.IsDigit(run[last]) || unicode.IsUpper(r) && unicode.IsLower(run[last])):
-			flush()
-		case last >= 1 && unicode.IsLower(r) && unicode.IsUpper(run[last]) && unicode.IsUpper(run[last-1]):
-			capital := run[last]
-			run = run[:last]
-			primes = primes[:min(len(primes), last)]
-			flush()
-			run = append(run, capital)
-		}
-		run = append(run, r)
-		if primes != nil {
+	return slices.DeleteFunc(words, func(w word) bool { return w.text == "" })
+}
+
+// primesIn counts the apostrophes behind each letter.
+func primesIn(t string) (primes []int) {
+	for _, c := range t {
+		switch {
+		case c != '\'':
 			primes = append(primes, 0)
+		case len(primes) > 0:
+			primes[len(primes)-1]++
 		}
 	}
-	flush()
-	return words
+	return primes
 }

@@ -52,7 +52,7 @@ func Read(text string) (Number, bool) {
 	if whole+fraction == "" || strings.Trim(whole+fraction, "0123456789") != "" {
 		return Number{}, false
 	}
-	value, err := strconv.ParseFloat(t[:len(t)-len(body)]+mantissa+"e"+strconv.Itoa(exponent), 64)
+	value, err := strconv.ParseFloat(strings.ReplaceAll(t, "d", "e"), 64)
 	if err != nil {
 		return Number{}, false
 	}
@@ -78,14 +78,8 @@ func cutExponent(body string) (mantissa string, exponent int, ok bool) {
 	return body[:at], exponent, err == nil && exponent > -400 && exponent < 400
 }
 
-// halfUnit is 10^e / 2, rounded once; 0 where that is below the least double.
-func halfUnit(e int) float64 {
-	half, err := strconv.ParseFloat("5e"+strconv.Itoa(e-1), 64)
-	if err != nil {
-		return math.MaxFloat64
-	}
-	return half
-}
+// halfUnit is 10^e / 2, within the range of a float64.
+func halfUnit(e int) float64 { return math.Min(math.Pow10(e)/2, math.MaxFloat64) }
 
 // readPrefixed reads 0x1.8p-3, 0x1f, 0b101, 0o17. A hexadecimal digit carries
 // log10(16) decimal ones; the count is rounded down, which is the coarser side.

@@ -27,7 +27,7 @@ func TestDigits(t *testing.T) {
 	} {
 		half, integer, ok := tolerance.Digits(c.text)
 		assert.True(t, ok, c.text)
-		assert.Equal(t, c.half, half, c.text)
+		assert.InDelta(t, c.half, half, c.half*0x1p-51, c.text)
 		assert.Equal(t, c.integer, integer, c.text)
 	}
 	for _, text := range []string{
