@@ -45,13 +45,13 @@ func NearestOrthogonal(m Mat3) (orthogonal Mat3, distance float64, ok bool) {
 
 // Scale returns the factor s for which s R is nearest to m, R being the nearest
 // rotation, and the distance that remains, as a part of s, in the Frobenius
-// norm. It reports false as [Nearest] does, and when s is not positive.
+// norm. It reports false as [Nearest] does.
 func Scale(m Mat3) (s, residual float64, ok bool) {
 	peak, ok := traceForm(m).Peak()
-	s = peak.Value / 3
-	if !ok || !peak.Single(rounding) || s <= 0 {
+	if !ok || !peak.Single(rounding) {
 		return 0, 0, false
 	}
+	s = peak.Value / 3 // positive, since the eigenvalues add up to zero
 	return s, m.Scale(1 / s).Sub(FromRotor(peak.At)).Norm(), true
 }
 

@@ -66,11 +66,6 @@ type Bivector struct{ E23, E31, E12 float64 }
 // right-handed. Axis of e12 is e3.
 func (b Bivector) Axis() Vec { return Vec{b.E23, b.E31, b.E12} }
 
-// Add returns b + c.
-func (b Bivector) Add(c Bivector) Bivector {
-	return Bivector{b.E23 + c.E23, b.E31 + c.E31, b.E12 + c.E12}
-}
-
 // Scale returns s b.
 func (b Bivector) Scale(s float64) Bivector { return Bivector{s * b.E23, s * b.E31, s * b.E12} }
 
