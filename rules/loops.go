@@ -95,10 +95,11 @@ func (c *Chain) openLoop(l Loop) *Finding {
 		at = r.Repairs[0].Edge
 	}
 	v := c.link(steps[at]).Value
-	f := &Finding{Rule: c.ruleOfLoop(l.Loop), Level: c.levelOfLoop(l), Place: v.Place, Key: v.Key, Claim: "closes: " + c.pathText(steps)}
-	f.Message = fmt.Sprintf("%s: %s; the rotation is off by %s", c.headline(steps), c.verdictText(steps, r), degrees(r.Angle))
+	f := &Finding{Rule: c.ruleOfLoop(l.Loop), Level: c.levelOfLoop(l), Place: v.Place, Key: v.Key, Claim: "closes: " + claimText(l.Frames)}
+	head := c.headline(l.Frames, steps)
+	f.Message = fmt.Sprintf("%s: %s; the rotation is off by %s", head, c.verdictText(steps, r), degrees(r.Angle))
 	if r.Angle <= r.Open && r.Gap > 0 {
-		f.Message = fmt.Sprintf("%s: %s; the rotation is off by %s", c.headline(steps), c.gapText(steps, r), degrees(r.Angle))
+		f.Message = fmt.Sprintf("%s: %s; the rotation is off by %s", head, c.gapText(steps, r), degrees(r.Angle))
 		if c.keptTranslation(steps) {
 			f.Level = Warning
 			f.Remedy = "the inverse of (R, t) is (R~, -R~ t): invert the translation with the rotation"
@@ -155,10 +156,10 @@ func (c *Chain) levelOfLoop(l Loop) Level {
 }
 
 // headline says which values ought to agree.
-func (c *Chain) headline(steps []frame.Step) string {
+func (c *Chain) headline(frames []string, steps []frame.Step) string {
 	a := c.link(steps[0]).Value.name()
 	if len(steps) != 2 {
-		return fmt.Sprintf("the loop %s does not close", c.pathText(steps))
+		return fmt.Sprintf("the loop of frames %s, %s does not close", strings.Join(frames, ", "), frames[0])
 	}
 	b := c.link(steps[1]).Value.name()
 	if steps[0].Reversed != steps[1].Reversed {
@@ -167,17 +168,9 @@ func (c *Chain) headline(steps []frame.Step) string {
 	return fmt.Sprintf("%s and %s ought to be the inverse of each other", a, b)
 }
 
-// pathText lists the values of a loop in the order in which they are composed.
-func (c *Chain) pathText(steps []frame.Step) string {
-	var names []string
-	for _, s := range steps {
-		name := c.link(s).Value.name()
-		if s.Reversed {
-			name += " reversed"
-		}
-		names = append(names, name)
-	}
-	return strings.Join(names, ", ")
+// claimText names a loop by its frames, wherever a walk around it began.
+func claimText(frames []string) string {
+	return "the loop of frames " + strings.Join(slices.Sorted(slices.Values(frames)), ", ")
 }
 
 func (c *Chain) verdictText(steps []frame.Step, r identify.LoopResult) string {

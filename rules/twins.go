@@ -116,19 +116,21 @@ func disagreement(a, b *Value, r identify.Result) *Finding {
 func reverseOfEachOther(a, b *Value, r identify.Result) *Finding {
 	f := twinFinding(DirectionReversed, a, b, r,
 		"%s and %s are the reverse of each other, and neither states its direction: one is read as active and the other as passive, or they map opposite ways; taken as one rotation they differ by %s",
-		b.name(), a.name(), degrees(r.Stated.Residual))
+		a.name(), b.name(), degrees(r.Stated.Residual))
 	f.Level = Note
 	f.Remedy = "state the direction of each as an equation, such as v_body = R v_cam"
 	return f
 }
 
 func reconciled(a, b *Value, r identify.Result) *Finding {
+	// Readings speak of the first and the second value, so the message names them in that order.
+	message := fmt.Sprintf("%s and %s state one orientation; they agree, to %s, only if taken %s; as stated they differ by %s",
+		a.name(), b.name(), degrees(r.Best.Residual), r.Best, degrees(r.Stated.Residual))
 	worst := slices.MaxFunc(r.Best.Changes, func(x, y identify.Change) int { return x.Cost() - y.Cost() })
 	if misread(worst, a.Form) && !misread(worst, b.Form) {
 		a, b = b, a // the finding belongs to the value that is read another way
 	}
-	return twinFinding(ruleOf[worst], a, b, r, "%s and %s state one orientation; they agree, to %s, only if taken %s; as stated they differ by %s",
-		b.name(), a.name(), degrees(r.Best.Residual), r.Best, degrees(r.Stated.Residual))
+	return twinFinding(ruleOf[worst], a, b, r, "%s", message)
 }
 
 // misread reports whether a change concerns the reading of values of a form.
@@ -151,10 +153,10 @@ func misread(c identify.Change, f convention.Form) bool {
 func unexplained(a, b *Value, r identify.Result) *Finding {
 	if r.Reason != "" { // something fits, but numbers this special fit by accident too
 		return twinFinding(RepresentationsDiffer, a, b, r, "%s and %s state one orientation, and as stated they differ by %s; what went wrong cannot be told: %s",
-			b.name(), a.name(), degrees(r.Stated.Residual), r.Reason)
+			a.name(), b.name(), degrees(r.Stated.Residual), r.Reason)
 	}
 	return twinFinding(RepresentationsDiffer, a, b, r, "%s and %s state one orientation, and no reading of their conventions reconciles them; as stated they differ by %s",
-		b.name(), a.name(), degrees(r.Stated.Residual))
+		a.name(), b.name(), degrees(r.Stated.Residual))
 }
 
 // twinFinding places a finding at b, with the readings tried as evidence: the

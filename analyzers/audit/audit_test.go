@@ -1,0 +1,150 @@
+package audit
+
+import (
+	"bytes"
+	"context"
+	"fmt"
+	"os"
+	"path/filepath"
+	"testing"
+	"time"
+
+	"dextral/rules/report"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+	"go.yaml.in/yaml/v3"
+)
+
+// in runs f in a directory, whose name the command would print paths against.
+func in(t testing.TB, dir string, f func()) {
+	t.Helper()
+	t.Chdir(dir)
+	f()
+}
+
+func text(t testing.TB, o Options) string {
+	t.Helper()
+	o.Today = time.Date(2030, 1, 1, 0, 0, 0, 0, time.UTC)
+	r, err := Run(context.Background(), o)
+	require.NoError(t, err)
+	var out bytes.Buffer
+	require.NoError(t, report.Text(&out, &r.Report, report.Options{}))
+	require.NoError(t, report.SARIF(&out, &r.Report, "test", nil))
+	return out.String()
+}
+
+// TestSameBytes: the report does not depend on how many files are read at a
+// time, nor on the order or overlap of the paths asked for.
+func TestSameBytes(t *testing.T) {
+	demo, err := filepath.Abs(filepath.Join("..", "..", "fixtures", "demo"))
+	require.NoError(t, err)
+	in(t, demo, func() {
+		want := text(t, Options{Workers: 1})
+		assert.Contains(t, want, "sign-jump")
+		for workers := 2; workers <= 16; workers *= 2 {
+			require.Equal(t, want, text(t, Options{Workers: workers}))
+		}
+		require.Equal(t, text(t, Options{Paths: []string{"calib", "logs"}}), text(t, Options{Paths: []string{"logs", "calib/camera.yaml", "calib"}}))
+	})
+}
+
+// TestCancelled: an interrupted audit says so instead of passing for a whole one.
+func TestCancelled(t *testing.T) {
+	ctx, cancel := context.WithCancel(context.Background())
+	cancel()
+	_, err := Run(ctx, Options{Paths: []string{"."}})
+	assert.ErrorIs(t, err, context.Canceled)
+}
+
+// TestIgnored: what version control ignores is left out and counted, unless it
+// is asked for by name.
+func TestIgnored(t *testing.T) {
+	dir := t.TempDir()
+	write := func(name, text string) {
+		require.NoError(t, os.MkdirAll(filepath.Dir(filepath.Join(dir, name)), 0o755))
+		require.NoError(t, os.WriteFile(filepath.Join(dir, name), []byte(text), 0o644))
+	}
+	bad := "quaternion_wxyz: [0.503, 0.501, 0.499, 0.612]\n"
+	write(".gitignore", "build/\n*.tmp.yaml\n!keep.tmp.yaml\n")
+	write("sub/.gitignore", "/local.yaml\n")
+	for _, name := range []string{"build/a.yaml", "b.tmp.yaml", "keep.tmp.yaml", "sub/local.yaml", "sub/deep/local.yaml", ".git/config.yaml"} {
+		write(name, bad)
+	}
+	in(t, dir, func() {
+		r, err := Run(context.Background(), Options{})
+		require.NoError(t, err)
+		var paths []string
+		for _, f := range r.Report.Findings {
+			paths = append(paths, f.Place.Path)
+		}
+		assert.Equal(t, []string{"keep.tmp.yaml", "sub/deep/local.yaml"}, paths)
+		assert.Equal(t, 3, r.Report.LeftOut.Ignored)
+
+		r, err = Run(context.Background(), Options{Paths: []string{"build/a.yaml"}})
+		require.NoError(t, err)
+		assert.Len(t, r.Report.Findings, 1)
+	})
+}
+
+// TestNestedSheets: each file is judged by the nearest dextral.toml.
+func TestNestedSheets(t *testing.T) {
+	dir := t.TempDir()
+	write := func(name, text string) {
+		require.NoError(t, os.MkdirAll(filepath.Dir(filepath.Join(dir, name)), 0o755))
+		require.NoError(t, os.WriteFile(filepath.Join(dir, name), []byte(text), 0o644))
+	}
+	waive := "[[waiver]]\nrule = \"rotor-not-unit\"\nplace = \"**\"\nuntil = 2999-01-01\nbecause = \"bench\"\nowner = \"Oskar\"\n"
+	bad := "quaternion_wxyz: [0.503, 0.501, 0.499, 0.612]\n"
+	write("dextral.toml", waive)
+	write("a.yaml", bad)
+	write("vendored/dextral.toml", "gate = \"error\"\n")
+	write("vendored/a.yaml", bad)
+	in(t, dir, func() {
+		r, err := Run(context.Background(), Options{Today: time.Now()})
+		require.NoError(t, err)
+		require.Len(t, r.Report.Findings, 2)
+		assert.NotNil(t, r.Report.Findings[0].Waiver, "a.yaml is waived")
+		assert.Nil(t, r.Report.Findings[1].Waiver, "vendored/a.yaml is not")
+	})
+}
+
+// BenchmarkManyFiles compares the audit of many small files with reading and
+// parsing them and doing nothing else. Report the ratio of the two.
+func BenchmarkManyFiles(b *testing.B) {
+	dir := b.TempDir()
+	var files []string
+	for i := range 2000 {
+		name := filepath.Join(dir, fmt.Sprintf("d%d", i%50), fmt.Sprintf("mount%d.yaml", i))
+		_ = os.MkdirAll(filepath.Dir(name), 0o755)
+		var text bytes.Buffer
+		for k := range 20 {
+			fmt.Fprintf(&text, "sensor%d:\n  # scalar first\n  mount_quaternion: [0.72, 0.48, -0.44, 0.24]\n  serial: %d\n  gains: [1.0, 2.0, 3.0, 4.0, 5.0]\n  T_a_b: [[0, -1, 0, 1.5], [1, 0, 0, 0.25], [0, 0, 1, 0]]\n", k, k)
+		}
+		if err := os.WriteFile(name, text.Bytes(), 0o644); err != nil {
+			b.Fatal(err)
+		}
+		files = append(files, name)
+	}
+	b.Run("audit", func(b *testing.B) {
+		for range b.N {
+			if _, err := Run(context.Background(), Options{Paths: []string{dir}, Workers: 1}); err != nil {
+				b.Fatal(err)
+			}
+		}
+	})
+	b.Run("parse", func(b *testing.B) {
+		for range b.N {
+			for _, f := range files {
+				text, err := os.ReadFile(f)
+				if err != nil {
+					b.Fatal(err)
+				}
+				var node yaml.Node
+				if err := yaml.Unmarshal(text, &node); err != nil {
+					b.Fatal(err)
+				}
+			}
+		}
+	})
+}
