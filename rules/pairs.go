@@ -47,7 +47,7 @@ func CheckPair(p *SeriesPair) []*Finding {
 	if rows < minRows {
 		return nil
 	}
-	f := disagreement(&a, &b, worst)
+	f := disagreement(&a, &b, &b, worst)
 	if f == nil {
 		return nil
 	}

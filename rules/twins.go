@@ -49,7 +49,8 @@ func checkGroup(group []*Value) []*Finding {
 	var found []*Finding
 	for i := range group {
 		if i != reference {
-			found = add(found, disagreement(group[reference], group[i], same(reference, i)))
+			first, second := group[min(i, reference)], group[max(i, reference)]
+			found = add(found, disagreement(first, second, group[i], same(reference, i)))
 		}
 	}
 	return found
@@ -99,38 +100,40 @@ var ruleOf = map[identify.Change]string{
 	identify.Mirror:      MirroredRotation,
 }
 
-// disagreement turns the result of a comparison into a finding, or into nothing
-// where the two values agree or nothing can be said.
-func disagreement(a, b *Value, r identify.Result) *Finding {
+// disagreement turns the result of comparing the first with the second value
+// into a finding at the odd one of them, or into nothing where the two agree or
+// nothing can be said.
+func disagreement(first, second, odd *Value, r identify.Result) *Finding {
 	switch r.Verdict {
 	case identify.AgreeInverse:
-		return reverseOfEachOther(a, b, r)
+		return reverseOfEachOther(first, second, odd, r)
 	case identify.Contradicted:
-		return reconciled(a, b, r)
+		return reconciled(first, second, odd, r)
 	case identify.Unexplained:
-		return unexplained(a, b, r)
+		return unexplained(first, second, odd, r)
 	}
 	return nil
 }
 
-func reverseOfEachOther(a, b *Value, r identify.Result) *Finding {
-	f := twinFinding(DirectionReversed, a, b, r,
+func reverseOfEachOther(first, second, odd *Value, r identify.Result) *Finding {
+	f := twinFinding(DirectionReversed, first, second, odd, r,
 		"%s and %s are the reverse of each other, and neither states its direction: one is read as active and the other as passive, or they map opposite ways; taken as one rotation they differ by %s",
-		a.name(), b.name(), degrees(r.Stated.Residual))
+		first.name(), second.name(), degrees(r.Stated.Residual))
 	f.Level = Note
 	f.Remedy = "state the direction of each as an equation, such as v_body = R v_cam"
 	return f
 }
 
-func reconciled(a, b *Value, r identify.Result) *Finding {
-	// Readings speak of the first and the second value, so the message names them in that order.
-	message := fmt.Sprintf("%s and %s state one orientation; they agree, to %s, only if taken %s; as stated they differ by %s",
-		a.name(), b.name(), degrees(r.Best.Residual), r.Best, degrees(r.Stated.Residual))
+func reconciled(first, second, odd *Value, r identify.Result) *Finding {
 	worst := slices.MaxFunc(r.Best.Changes, func(x, y identify.Change) int { return x.Cost() - y.Cost() })
-	if misread(worst, a.Form) && !misread(worst, b.Form) {
-		a, b = b, a // the finding belongs to the value that is read another way
+	switch a, b := misread(worst, first.Form), misread(worst, second.Form); {
+	case a && !b:
+		odd = first // the finding belongs to the value that is read another way
+	case b && !a:
+		odd = second
 	}
-	return twinFinding(ruleOf[worst], a, b, r, "%s", message)
+	return twinFinding(ruleOf[worst], first, second, odd, r, "%s and %s state one orientation; they agree, to %s, only if taken %s; as stated they differ by %s",
+		first.name(), second.name(), degrees(r.Best.Residual), r.Best, degrees(r.Stated.Residual))
 }
 
 // misread reports whether a change concerns the reading of values of a form.
@@ -150,23 +153,28 @@ func misread(c identify.Change, f convention.Form) bool {
 	return false
 }
 
-func unexplained(a, b *Value, r identify.Result) *Finding {
+func unexplained(first, second, odd *Value, r identify.Result) *Finding {
 	if r.Reason != "" { // something fits, but numbers this special fit by accident too
-		return twinFinding(RepresentationsDiffer, a, b, r, "%s and %s state one orientation, and as stated they differ by %s; what went wrong cannot be told: %s",
-			a.name(), b.name(), degrees(r.Stated.Residual), r.Reason)
+		return twinFinding(RepresentationsDiffer, first, second, odd, r, "%s and %s state one orientation, and as stated they differ by %s; what went wrong cannot be told: %s",
+			first.name(), second.name(), degrees(r.Stated.Residual), r.Reason)
 	}
-	return twinFinding(RepresentationsDiffer, a, b, r, "%s and %s state one orientation, and no reading of their conventions reconciles them; as stated they differ by %s",
-		a.name(), b.name(), degrees(r.Stated.Residual))
+	return twinFinding(RepresentationsDiffer, first, second, odd, r, "%s and %s state one orientation, and no reading of their conventions reconciles them; as stated they differ by %s",
+		first.name(), second.name(), degrees(r.Stated.Residual))
 }
 
-// twinFinding places a finding at b, with the readings tried as evidence: the
-// stated one, the one that fits, and the next.
-func twinFinding(rule string, a, b *Value, r identify.Result, message string, args ...any) *Finding {
-	f := finding(rule, b, Claim{}, message, args...)
-	f.Level = twinLevel(a, b, r.Best.Changes)
-	f.Claim = fmt.Sprintf("one orientation with %s", a.Key)
-	f.Related = []Related{{a.Place, fmt.Sprintf("%s: %s", a.name(), a.Reading())}}
-	f.Evidence = []Evidence{{What: "as stated", Stated: Words(b.Reading()), Residual: Degrees(r.Stated.Residual)}}
+// twinFinding places a finding at the odd one of two values, with the readings
+// tried as evidence: the stated one, the one that fits, and the next. Readings
+// speak of the first and the second value, so messages name them in that order.
+func twinFinding(rule string, first, second, odd *Value, r identify.Result, message string, args ...any) *Finding {
+	f := finding(rule, odd, Claim{}, message, args...)
+	f.Level = twinLevel(first, second, r.Best.Changes)
+	other := first
+	if odd == first {
+		other = second
+	}
+	f.Claim = fmt.Sprintf("one orientation with %s", other.Key)
+	f.Related = []Related{{other.Place, fmt.Sprintf("%s: %s", other.name(), other.Reading())}}
+	f.Evidence = []Evidence{{What: "as stated", Stated: Words(odd.Reading()), Residual: Degrees(r.Stated.Residual)}}
 	rows := 1
 	for _, c := range r.Classes {
 		if len(r.Stated.Readings) > 0 && c.String() == r.Stated.String() {
