@@ -30,7 +30,8 @@ import (
 // What it does not find, the type checker replaces by an empty package.
 type library struct {
 	fset    *token.FileSet
-	modules map[string]string // directories of the tree's modules by path; read-only
+	root    string              // directory of the module it serves; "" for none
+	modules map[string][]string // directories of the tree's modules by path; read-only
 
 	mu      sync.Mutex
 	exports map[string]string         // export data by package id
@@ -41,9 +42,9 @@ type library struct {
 
 var errUnknown = errors.New("its types are not known on this machine: it is not downloaded, or does not compile")
 
-func newLibrary(modules map[string]string) *library {
+func newLibrary(root string, modules map[string][]string) *library {
 	return &library{
-		fset: token.NewFileSet(), modules: modules,
+		fset: token.NewFileSet(), root: root, modules: modules,
 		exports: map[string]string{}, read: map[string]*types.Package{}, source: map[string]*types.Package{},
 	}
 }
@@ -110,18 +111,34 @@ func (b *library) export(id, name string) (*types.Package, error) {
 }
 
 // directory is where the tree keeps a package of its own: in the module whose
-// path is the longest head of the package's.
+// path is the longest head of the package's. Of several modules of one path, as
+// copies have, the nearest counts.
 func (b *library) directory(id string) (string, bool) {
 	for path := id; path != "." && path != "/"; path = pathpkg.Dir(path) {
-		root, ok := b.modules[path]
-		if !ok {
+		roots := b.modules[path]
+		if len(roots) == 0 {
 			continue
 		}
-		dir := filepath.Join(root, filepath.FromSlash(strings.TrimPrefix(id, path)))
+		nearest := slices.MaxFunc(roots, func(x, y string) int { return b.nearness(x) - b.nearness(y) })
+		dir := filepath.Join(nearest, filepath.FromSlash(strings.TrimPrefix(id, path)))
 		info, err := os.Stat(dir)
 		return dir, err == nil && info.IsDir()
 	}
 	return "", false
+}
+
+// nearness is how many directories a module's has in common with the
+// library's, and one more for the library's own.
+func (b *library) nearness(dir string) int {
+	if dir == b.root {
+		return 1 << 20
+	}
+	x, y := strings.Split(dir, string(filepath.Separator)), strings.Split(b.root, string(filepath.Separator))
+	n := 0
+	for n < min(len(x), len(y)) && x[n] == y[n] {
+		n++
+	}
+	return n
 }
 
 // fromSource checks the declarations of a package of the tree, as far as

@@ -20,7 +20,7 @@ const batch = 200
 // module audits the folders of one module, or all folders outside any module.
 func (l *loader) module(ctx context.Context, folders []*folder) {
 	root := folders[0].root
-	lib := newLibrary(l.modules)
+	lib := newLibrary(root, l.modules)
 	var units []*unit
 	if root == "" {
 		units = alone(folders, lib)
@@ -28,7 +28,7 @@ func (l *loader) module(ctx context.Context, folders []*folder) {
 		listed, err := list(ctx, root, moduleEnvironment(), patterns(root, folders),
 			packages.NeedName|packages.NeedFiles|packages.NeedImports|packages.NeedModule)
 		if err != nil {
-			l.unlisted(root, err)
+			l.unlisted(folders[0], err)
 		}
 		var rest []*folder
 		units, rest = l.together(listed, folders, lib)
@@ -40,7 +40,7 @@ func (l *loader) module(ctx context.Context, folders []*folder) {
 
 // unlisted says that the go command cannot list a module, whose folders are
 // then audited each by itself.
-func (l *loader) unlisted(root string, err error) {
+func (l *loader) unlisted(f *folder, err error) {
 	if errors.Is(err, context.Canceled) || errors.Is(err, context.DeadlineExceeded) {
 		return
 	}
@@ -48,7 +48,7 @@ func (l *loader) unlisted(root string, err error) {
 		l.note("the go command was not found: types of imported packages are unknown, and values of such types may be missed")
 		return
 	}
-	l.fail(l.whole(filepath.Join(root, "go.mod")), oneLine(err), true)
+	l.fail(rules.Place{Path: l.printFrom(f, filepath.Join(f.root, "go.mod"))}, oneLine(err), true)
 }
 
 // compile lets the go command produce export data of whatever the units

@@ -50,7 +50,7 @@ type Failure struct {
 // values in them are not returned. Trouble with the input is part of the
 // result; the error is that of the context alone.
 func Load(ctx context.Context, files []File) (*Result, error) {
-	l := &loader{printed: map[string]string{}, modules: map[string]string{}, slots: make(chan struct{}, runtime.GOMAXPROCS(0))}
+	l := &loader{printed: map[string]string{}, dirs: map[string]string{}, modules: map[string][]string{}, slots: make(chan struct{}, runtime.GOMAXPROCS(0))}
 	folders := l.survey(ctx, files)
 	modules := group(folders)
 	l.each(ctx, len(modules), func(i int) { l.module(ctx, modules[i]) })
@@ -62,11 +62,12 @@ func Load(ctx context.Context, files []File) (*Result, error) {
 
 // loader carries one call of Load.
 type loader struct {
-	slots   chan struct{}     // one for each package in work
-	printed map[string]string // printed path by absolute name; read-only after survey
-	modules map[string]string // directories of modules by path; read-only after survey
-	// base is the directory of some file, printedBase how it is printed.
-	base, printedBase string
+	slots chan struct{} // one for each package in work
+
+	// read-only after survey
+	printed map[string]string   // printed path of each file, by absolute name
+	dirs    map[string]string   // the same of the directories that hold them
+	modules map[string][]string // directories of modules by path, sorted
 
 	mu     sync.Mutex
 	result Result
@@ -106,16 +107,25 @@ func (l *loader) note(text string) {
 	l.add(func(r *Result) { r.Notes = append(r.Notes, text) })
 }
 
-// print is how places name a file: as given, or beside a file that was given.
+// print is how places name a file: as given, or beside files that were given.
 func (l *loader) print(name string) string {
 	if p, ok := l.printed[name]; ok {
 		return p
 	}
-	rel, err := filepath.Rel(l.base, name)
+	if dir, ok := l.dirs[filepath.Dir(name)]; ok {
+		return path.Join(dir, filepath.Base(name))
+	}
+	return filepath.ToSlash(name)
+}
+
+// printFrom is print for a file of which only its way from a folder is known,
+// such as the go.mod above it.
+func (l *loader) printFrom(f *folder, name string) string {
+	rel, err := filepath.Rel(f.dir, name)
 	if err != nil {
 		return filepath.ToSlash(name) // another volume
 	}
-	return path.Join(l.printedBase, filepath.ToSlash(rel))
+	return path.Join(l.dirs[f.dir], filepath.ToSlash(rel))
 }
 
 // sorted puts everything into an order that does not depend on parallelism.

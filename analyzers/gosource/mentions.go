@@ -6,7 +6,7 @@ import "bytes"
 // type checker, no more: what is an orientation is decided there.
 var cues = map[string]bool{
 	"quat": true, "quats": true, "quaternion": true, "quaternions": true, "rotor": true, "rotors": true,
-	"versor": true, "versors": true, "kmag": true,
+	"versor": true, "versors": true, "kmag": true, "qw": true, "qx": true, "qy": true, "qz": true,
 	"rot": true, "rots": true, "rotation": true, "rotations": true, "dcm": true, "rotmat": true,
 	"euler": true, "rpy": true, "ypr": true, "roll": true, "pitch": true, "yaw": true, "heading": true,
 	"attitude": true, "orientation": true, "orient": true, "mount": true, "mounting": true,
@@ -55,7 +55,7 @@ func wordEnd(src []byte, i int) int {
 }
 
 func isCue(word []byte) bool {
-	if len(word) < 3 || len(word) > 11 {
+	if len(word) < 2 || len(word) > 11 {
 		return false
 	}
 	var lower [11]byte

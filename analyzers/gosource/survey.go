@@ -30,7 +30,7 @@ func (l *loader) survey(ctx context.Context, files []File) []*folder {
 			name = filepath.Clean(f.Name) // no working directory: keep what there is
 		}
 		l.printed[name] = f.Path
-		l.base, l.printedBase = filepath.Dir(name), path.Dir(f.Path)
+		l.dirs[filepath.Dir(name)] = path.Dir(f.Path)
 		switch {
 		case isTest(f.Path):
 			l.result.Tests++
@@ -61,12 +61,24 @@ func (l *loader) survey(ctx context.Context, files []File) []*folder {
 		}
 		kept = append(kept, f)
 	}
+	l.nameModules(roots)
+	return kept
+}
+
+// nameModules finds the paths of the modules above all folders.
+func (l *loader) nameModules(roots map[string]string) {
+	var list []string
 	for _, root := range roots {
-		if path := modulePath(root); root != "" && path != "" {
-			l.modules[path] = root
+		if root != "" {
+			list = append(list, root)
 		}
 	}
-	return kept
+	slices.Sort(list)
+	for _, root := range slices.Compact(list) {
+		if path := modulePath(root); path != "" {
+			l.modules[path] = append(l.modules[path], root)
+		}
+	}
 }
 
 func isTest(printed string) bool {

@@ -266,10 +266,17 @@ func (s speech) ofThree() verdict {
 		if remarked && m.Source < rules.Label {
 			break
 		}
+		if m.Form == convention.Axis && m.Source < rules.Label {
+			return l.undecided(m.Form, lengthUnsaid)
+		}
 		return l.by(m)
 	}
 	return said
 }
+
+// lengthUnsaid is why an axis stays undecided: functions that take one often
+// make it unit themselves.
+const lengthUnsaid = "nothing says that the axis has unit length"
 
 // others are words of programs that the lexicon of calibration files lacks: the
 // numbers of such a variable have the shape of an orientation and are none, or

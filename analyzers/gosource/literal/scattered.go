@@ -289,5 +289,19 @@ func (w *walker) axisAngle(s site, lead string, axis, turn member, numbers []rul
 		w.claim(value, unit, rules.Label, turn.name, turn.label().at)
 	}
 	said.labels[0].name = w.nameOf(lead) // the stem is that of both
-	w.finish(inner, said, axis.label().inferred(value.Form), value)
+	v := axis.label().inferred(value.Form)
+	if !isUnit(numbers[:3]) {
+		v.why = lengthUnsaid
+	}
+	w.finish(inner, said, v, value)
+}
+
+// isUnit reports a length of one to within a per cent, far above any rounding
+// and far below what somebody writes who leaves it to others to normalise.
+func isUnit(numbers []rules.Number) bool {
+	norm := 0.0
+	for _, n := range numbers {
+		norm += n.Value * n.Value
+	}
+	return norm > 0.98 && norm < 1.02
 }

@@ -51,7 +51,12 @@ var cameraRotation = Vector{0, 0, 1.5} // want `^three numbers cameraRotation 0 
 
 var door = Hinge{Axis: [3]float64{0, 0.6, 0.8}, AngleDeg: 30} // want `^axis and angle door.Axis 0 0.6 0.8 30: form=axis and angle by name, unit=degree by label$`
 
-var wheel = Joint{SpinAxis: Vector{0, 1, 0}, Limit: 3} // want `^axis wheel.SpinAxis 0 1 0: form=axis by name$`
+var wheel = Joint{SpinAxis: Vector{0, 1, 0}, Limit: 3} // want `^axis wheel.SpinAxis 0 1 0: form=axis by name; undecided: nothing says that the axis has unit length$`
+
+var unitAxis = Vector{0, 1, 0} // want `^axis unitAxis 0 1 0: form=axis by label$`
+
+// A function may make the axis unit.
+var hatch = Hinge{Axis: [3]float64{1, 1, 0}, AngleDeg: 30} // want `^axis and angle hatch.Axis 1 1 0 30: .*undecided: nothing says that the axis has unit length$`
 
 var maxRates = Euler{1, 2, 3} // limits
 
