@@ -7,7 +7,7 @@ import "math"
 type Batch struct {
 	m         *Machine
 	n         int
-	in, out   []uint64 // sample by sample
+	in, out   []uint64 // input by input, output by output
 	unknown   []bool   // parallel to out; nil if nothing can be unknown
 	outcomes  []Outcome
 	faults    []fault
@@ -41,7 +41,7 @@ func (b *Batch) Outputs() []Port { return b.m.outputs }
 // Set sets input i of sample s to f, rounded to float32 or cut to an integer
 // as the kind of the input demands. For a bool anything but 0 is true.
 func (b *Batch) Set(s, i int, f float64) {
-	b.in[s*len(b.m.inputs)+i] = fromFloat(b.m.inputs[i].Kind, f)
+	b.in[i*b.n+s] = fromFloat(b.m.inputs[i].Kind, f)
 }
 
 // SetInt sets input i of sample s to an integer, wrapped to the width of the
@@ -52,19 +52,19 @@ func (b *Batch) SetInt(s, i int, v int64) {
 	if k.IsFloat() || k == Bool {
 		w = fromFloat(k, float64(v))
 	}
-	b.in[s*len(b.m.inputs)+i] = w
+	b.in[i*b.n+s] = w
 }
 
 // In returns input i of sample s as a number.
 func (b *Batch) In(s, i int) float64 {
-	return toFloat(b.m.inputs[i].Kind, b.in[s*len(b.m.inputs)+i])
+	return toFloat(b.m.inputs[i].Kind, b.in[i*b.n+s])
 }
 
 // SetInBits sets input i of sample s as the word that holds it.
-func (b *Batch) SetInBits(s, i int, w uint64) { b.in[s*len(b.m.inputs)+i] = w }
+func (b *Batch) SetInBits(s, i int, w uint64) { b.in[i*b.n+s] = w }
 
 // InBits returns input i of sample s as the word that holds it.
-func (b *Batch) InBits(s, i int) uint64 { return b.in[s*len(b.m.inputs)+i] }
+func (b *Batch) InBits(s, i int) uint64 { return b.in[i*b.n+s] }
 
 // Out returns output i of sample s as a number: NaN where it is unknown or the
 // program did not return. A bool is 0 or 1, an error 0 (nil) or 1.
@@ -72,16 +72,16 @@ func (b *Batch) Out(s, i int) float64 {
 	if !b.Known(s, i) {
 		return math.NaN()
 	}
-	return toFloat(b.m.outputs[i].Kind, b.out[s*len(b.m.outputs)+i])
+	return toFloat(b.m.outputs[i].Kind, b.out[i*b.n+s])
 }
 
 // OutBits returns output i of sample s as the word that holds it.
-func (b *Batch) OutBits(s, i int) uint64 { return b.out[s*len(b.m.outputs)+i] }
+func (b *Batch) OutBits(s, i int) uint64 { return b.out[i*b.n+s] }
 
 // Known reports whether output i of sample s is a known value of a program
 // that returned.
 func (b *Batch) Known(s, i int) bool {
-	return b.outcomes[s] == Returned && (b.unknown == nil || !b.unknown[s*len(b.m.outputs)+i])
+	return b.outcomes[s] == Returned && (b.unknown == nil || !b.unknown[i*b.n+s])
 }
 
 // Outcome tells how sample s ended.

@@ -63,7 +63,6 @@ func (m *Machine) object(i int) int32 {
 // fill lays out the inputs of n samples: the objects that pointers point to,
 // and the parameters in the outermost frame.
 func (m *Machine) fill(b *Batch, first, n int) {
-	ni := len(m.inputs)
 	slot, input := m.frame, 0
 	for i := range m.Sig.Params {
 		p := &m.Sig.Params[i]
@@ -71,11 +70,8 @@ func (m *Machine) fill(b *Batch, first, n int) {
 		if p.Mode != Value {
 			at = m.objects[i]
 		}
-		for l := range n {
-			in := b.in[(first+l)*ni+input:]
-			for k := range p.Fields {
-				m.mem[at+int32(k)][l&63] = in[k]
-			}
+		for k := range p.Fields {
+			copy(m.mem[at+int32(k)][:n], b.in[(input+k)*b.n+first:])
 		}
 		if p.Mode == Pointer || p.Mode == Slice {
 			m.address(slot, i)
@@ -98,53 +94,62 @@ func (m *Machine) address(slot int32, i int) {
 
 // collect copies results and objects to the outputs, and how lanes ended.
 func (m *Machine) collect(b *Batch, first, n int) {
-	no := len(m.outputs)
-	for l := range n {
-		s := first + l
-		var unknown []bool
-		if b.unknown != nil {
-			unknown = b.unknown[s*no : (s+1)*no]
-		}
-		if m.faults[l] == noFault {
-			m.faults[l] = m.collectLane(uint8(l), b.out[s*no:(s+1)*no], unknown)
-		}
-		b.faults[s], b.outcomes[s] = m.faults[l], m.outcome(m.faults[l])
-		clear(b.edges[s*b.edgeWords : (s+1)*b.edgeWords])
-	}
-}
-
-func (m *Machine) collectLane(lane uint8, out []uint64, unknown []bool) fault {
-	n := 0
-	take := func(at int64, fields int) {
-		for k := range int64(fields) {
-			out[n] = m.get(at+k, lane)
-			if unknown != nil {
-				unknown[n] = m.marked(at+k, lane)
-			}
-			n++
-		}
-	}
-	at := int64(m.results)
+	at, out := m.results, 0
 	for i := range m.Sig.Results {
 		r := &m.Sig.Results[i]
 		switch {
 		case len(r.Fields) == 0:
 		case r.Mode == Value:
-			take(at, len(r.Fields))
+			m.take(b, first, n, at, out, len(r.Fields))
 		default:
-			if f := m.follow(at, r, lane); f != noFault {
-				return f
+			for l := range n {
+				m.takeFrom(b, uint8(l), first, at, out, r)
 			}
-			take(int64(m.get(at, lane)), len(r.Fields))
 		}
-		at += int64(r.Words)
+		at += int32(r.Words)
+		out += len(r.Fields)
 	}
 	for i := range m.Sig.Params {
 		if p := &m.Sig.Params[i]; p.Mode == Pointer || p.Mode == Slice {
-			take(int64(m.object(i)), len(p.Fields))
+			m.take(b, first, n, m.object(i), out, len(p.Fields))
+			out += len(p.Fields)
 		}
 	}
-	return noFault
+	for l := range n {
+		b.faults[first+l], b.outcomes[first+l] = m.faults[l], m.outcome(m.faults[l])
+		clear(b.edges[(first+l)*b.edgeWords : (first+l+1)*b.edgeWords])
+	}
+}
+
+// take copies the words at address at to the outputs from out on.
+func (m *Machine) take(b *Batch, first, n int, at int32, out, fields int) {
+	for k := range fields {
+		to := (out+k)*b.n + first
+		copy(b.out[to:to+n], m.mem[at+int32(k)][:n])
+		if b.unknown != nil {
+			for l := range n {
+				b.unknown[to+l] = m.unk[at+int32(k)]>>l&1 != 0
+			}
+		}
+	}
+}
+
+// takeFrom copies what result r of one lane points to.
+func (m *Machine) takeFrom(b *Batch, lane uint8, first int, at int32, out int, r *Result) {
+	if m.faults[lane] != noFault {
+		return
+	}
+	if m.faults[lane] = m.follow(int64(at), r, lane); m.faults[lane] != noFault {
+		return
+	}
+	a := int64(m.get(int64(at), lane))
+	for k := range r.Fields {
+		to := (out+k)*b.n + first + int(lane)
+		b.out[to] = m.get(a+int64(k), lane)
+		if b.unknown != nil {
+			b.unknown[to] = m.marked(a+int64(k), lane)
+		}
+	}
 }
 
 // follow checks that the address of a result at word at can be followed.

@@ -41,30 +41,20 @@ func (g *group) set(mask uint64) {
 // lanes returns the lanes of g.
 func (g *group) lanes() []uint8 { return g.order[:g.n] }
 
-// sameCalls reports whether two groups are within the same calls.
-func (g *group) sameCalls(h *group) bool {
-	if g.base != h.base || g.program != h.program || len(g.frames) != len(h.frames) {
-		return false
-	}
-	for i := len(g.frames) - 1; i >= 0; i-- {
-		if g.frames[i] != h.frames[i] {
-			return false
-		}
-	}
-	return true
-}
-
 // before reports whether g should go on before h: the deeper one, then the one
 // that is less far, so that they meet.
+//
+// As the deepest go first, nobody enters a call while others are within one:
+// groups at one depth are within the same calls.
 func (g *group) before(h *group) bool {
 	if len(g.frames) != len(h.frames) {
 		return len(g.frames) > len(h.frames)
 	}
-	if g.program != h.program {
-		return g.program < h.program
-	}
 	return g.pc < h.pc
 }
+
+// meets reports whether two groups are at the same place.
+func (g *group) meets(h *group) bool { return g.pc == h.pc && len(g.frames) == len(h.frames) }
 
 // newGroup takes a group from those not in use.
 func (m *Machine) newGroup() *group {
@@ -111,7 +101,7 @@ func (m *Machine) next(g *group) *group {
 	for _, h := range m.waiting {
 		switch {
 		case h == g:
-		case h.pc == g.pc && h.sameCalls(g):
+		case h.meets(g):
 			mask |= h.mask
 			g.top, g.kept = max(g.top, h.top), max(g.kept, h.kept)
 			m.free = append(m.free, h)

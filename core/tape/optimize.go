@@ -2,14 +2,70 @@ package tape
 
 import "slices"
 
-// Optimize makes a program shorter without changing what it computes:
-// unreachable blocks, copies and values that nobody uses go.
+// Optimize makes a program shorter without changing what it computes: copies
+// that only rename, values that nobody uses, and blocks that nothing leads to
+// or that could be one, go. It expects a program that Check passes, and leaves
+// one. Except for slots that hold objects or join branches, every slot is then
+// written in one place only.
 func (p *Program) Optimize() {
-	p.unchecked()
+	p.checked = false
 	p.arrange()
+	p.mergeBlocks()
+	if len(p.Blocks)*int(p.Slots) > 1<<25 {
+		return // a giant: not worth the memory
+	}
+	for range 4 {
+		moved, dropped := p.propagate(), p.dropDead()
+		if !moved && !dropped {
+			break
+		}
+	}
+	p.mergeRanges()
+	p.compact()
 }
 
-func (p *Program) unchecked() { p.checked = false }
+// mergeBlocks joins a block with the one it jumps to where nothing else leads
+// there.
+func (p *Program) mergeBlocks() {
+	preds := make([]int, len(p.Blocks))
+	preds[0]++
+	for b := range p.Blocks {
+		for _, s := range p.successors(b) {
+			preds[s]++
+		}
+	}
+	var code []Instr
+	var blocks []int32
+	at := make([]int32, len(p.Blocks))
+	merged := make([]bool, len(p.Blocks))
+	for first := range p.Blocks {
+		if merged[first] {
+			continue
+		}
+		at[first] = int32(len(blocks))
+		blocks = append(blocks, int32(len(code)))
+		for b := first; ; {
+			code = append(code, p.Code[p.Blocks[b]:p.blockEnd(b)]...)
+			last := &code[len(code)-1]
+			// Only forwards: what lies before has been placed already.
+			if last.Op != Jump || preds[last.A] != 1 || int(last.A) <= b {
+				break
+			}
+			b = int(last.A)
+			merged[b] = true
+			code = code[:len(code)-1]
+		}
+	}
+	for i := range code {
+		switch in := &code[i]; in.Op {
+		case Jump:
+			in.A = at[in.A]
+		case If:
+			in.B, in.C = at[in.B], at[in.C]
+		}
+	}
+	p.Code, p.Blocks = code, blocks
+}
 
 // arrange orders the blocks so that each comes after those that lead to it, but
 // for loops, and drops those that no path leads to. Lanes that part at a branch
