@@ -36,7 +36,7 @@ func Nearest(m Mat3) (rotation Mat3, distance float64, ok bool) {
 // with a mirror if the determinant of m is negative. It reports false as
 // [Nearest] does; a mirror by itself is no obstacle.
 func NearestOrthogonal(m Mat3) (orthogonal Mat3, distance float64, ok bool) {
-	if !(m.Det() < 0) {
+	if !(m.Scale(1/m.Norm()).Det() < 0) { // cubes of elements may be out of range
 		return Nearest(m)
 	}
 	r, distance, ok := Nearest(m.Scale(-1)) // -1 commutes with everything

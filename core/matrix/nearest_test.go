@@ -129,6 +129,15 @@ func TestNearestUndetermined(t *testing.T) {
 	}
 }
 
+// TestMirrorsOfAnySize: the sign of a determinant that is itself out of range.
+func TestMirrorsOfAnySize(t *testing.T) {
+	for _, size := range []float64{1e-300, 1e-150, 1, 1e150, 1e300} {
+		q, _, ok := matrix.NearestOrthogonal(matrix.Mat3{{size}, {0, 2 * size}, {0, 0, -3 * size}})
+		assert.True(t, ok)
+		within(t, 4*ulp, gap(q, matrix.Mat3{{1}, {0, 1}, {0, 0, -1}}), "size %g", size)
+	}
+}
+
 // TestScale: a common factor is found whatever its size, with what remains
 // measured as a part of it.
 func TestScale(t *testing.T) {
