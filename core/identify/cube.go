@@ -7,10 +7,10 @@ import (
 	"dextral/core/rotor"
 )
 
-// cube is one of the 24 rotations that carry the coordinate axes onto
+// Cube is one of the 24 rotations that carry the coordinate axes onto
 // coordinate axes; 0 turns nothing. All maps of axes that keep handedness are
 // among them.
-type cube uint8
+type Cube uint8
 
 const half = 0.5
 
@@ -54,7 +54,7 @@ var axisMaps = func() (maps [24][3]signedAxis) {
 }()
 
 // inverses gives the reverse of each cube.
-var inverses = func() (inv [24]cube) {
+var inverses = func() (inv [24]Cube) {
 	for c, r := range cubes {
 		inv[c] = nearestCube(r.Reverse())
 	}
@@ -62,14 +62,14 @@ var inverses = func() (inv [24]cube) {
 }()
 
 // nearestCube is the cube nearest to r.
-func nearestCube(r rotor.Rotor) cube {
+func nearestCube(r rotor.Rotor) Cube {
 	best, at := -1.0, 0
 	for c, q := range cubes {
 		if dot := math.Abs(q.Dot(r)); dot > best {
 			best, at = dot, c
 		}
 	}
-	return cube(at)
+	return Cube(at)
 }
 
 // cubeDot is the cosine of half the angle from a unit rotor to the nearest
@@ -85,7 +85,7 @@ func cubeDot(r rotor.Rotor) float64 {
 }
 
 // String shows the map as the images of x, y and z: "x,y,z -> y,-x,z".
-func (c cube) String() string {
+func (c Cube) String() string {
 	var images [3]string
 	for i, to := range axisMaps[c] {
 		images[i] = string("xyz"[to.axis])

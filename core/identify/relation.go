@@ -17,7 +17,7 @@ import (
 type relation struct {
 	inverse     bool
 	power       int8 // 1: a squared, 2: b squared
-	left, right cube
+	left, right Cube
 }
 
 // Hypothesis is one way to read both statements so that they could describe
@@ -62,7 +62,7 @@ type alias struct {
 // frame carries a standard rotor to the one meant: r = c s c~, or its reverse
 // if reversed, with the scalar moved from the last place if last.
 type frame struct {
-	c        cube
+	c        Cube
 	reversed bool
 	last     bool
 }
@@ -180,7 +180,7 @@ var standards = sync.OnceValue(func() *[72][8]standardTurns {
 
 // relabelled turns t so that its first two turns are about +x and +y.
 func relabelled(t Turns) (Turns, frame) {
-	for c := range cube(24) {
+	for c := range Cube(24) {
 		moved := t.relabel(c)
 		axes := moved.Sequence.Axes
 		if axes[0] == angle.X && axes[1] == angle.Y && !moved.Negated[moved.Order[0]] && !moved.Negated[moved.Order[1]] {

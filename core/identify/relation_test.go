@@ -15,7 +15,7 @@ import (
 func TestCubesAreAGroup(t *testing.T) {
 	for c, r := range cubes {
 		assert.InDelta(t, 1, r.Norm(), 1e-15)
-		assert.Equal(t, cube(c), nearestCube(r.Neg()))
+		assert.Equal(t, Cube(c), nearestCube(r.Neg()))
 		assert.InDelta(t, 1, cubeDot(r), 1e-15)
 		assert.InDelta(t, 1, math.Abs(r.Mul(cubes[inverses[c]]).S), 1e-15)
 		for d := range c {
@@ -134,8 +134,8 @@ func TestMapsOfAxesAreSolved(t *testing.T) {
 		}
 		want := map[alias]bool{}
 		x, y := &s.a.at(0)[0], &s.b.at(0)[0]
-		for l := range cube(24) {
-			for m := range cube(24) {
+		for l := range Cube(24) {
+			for m := range Cube(24) {
 				if rotor.Angle(x.rotor, cubes[l].Mul(y.rotor).Mul(cubes[m])) < 1e-9 {
 					want[s.aliasOf(x.code, y.code, relation{left: l, right: m})] = true
 				}
@@ -162,7 +162,7 @@ func TestTurnsAreThoseOfSequences(t *testing.T) {
 		}
 		back := moving.reverse()
 		assert.Less(t, rotor.Angle(got.Reverse(), back.rotor(&h, &back.Negated)), 1e-14)
-		for c := range cube(24) {
+		for c := range Cube(24) {
 			moved := moving.relabel(c)
 			want := cubes[c].Mul(got).Mul(cubes[c].Reverse())
 			assert.Less(t, rotor.Angle(want, moved.rotor(&h, &moved.Negated)), 1e-14)

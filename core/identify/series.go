@@ -47,7 +47,7 @@ type SeriesReading struct {
 	Axes    convention.RateAxes
 	Unit    convention.Unit
 	Negated bool // the rates have the wrong sign
-	Map     cube // the axes of the rates, seen from those of the orientations
+	Map     Cube // the axes of the rates, seen from those of the orientations
 	changes changeSet
 	cost    int
 }
@@ -179,6 +179,10 @@ func (s *SeriesFold) Result(claim SeriesClaim) SeriesResult {
 		return r
 	}
 	sums := s.sums()
+	if sums.rate == 0 {
+		r.Reason = "the rates are zero throughout, although the orientation turns"
+		return r
+	}
 	r.judge(sums, claim)
 	if centred := sums.centred(); !r.Decided && centred.excited(sums) {
 		second := SeriesResult{Motion: r.Motion, Biased: true}

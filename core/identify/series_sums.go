@@ -64,7 +64,7 @@ func (t *sums) excited(raw *sums) bool {
 
 // residual is the RMS of unit*rate - map*prediction, as a part of the RMS of
 // unit*rate; the map is a cube, or its negative.
-func (t *sums) residual(axes int, unit float64, c cube, negated bool) float64 {
+func (t *sums) residual(axes int, unit float64, c Cube, negated bool) float64 {
 	trace := 0.0
 	for j, to := range axisMaps[c] { // prediction j counts for rate to.axis
 		x := t.cross[axes][to.axis][j]
@@ -157,7 +157,7 @@ func (r *SeriesResult) judge(t *sums, claim SeriesClaim) {
 	classes := make([]SeriesClass, 0, seriesClasses)
 	for axes := range 2 {
 		for _, unit := range units {
-			for c := range cube(24) {
+			for c := range Cube(24) {
 				for _, negated := range [2]bool{false, true} {
 					class := SeriesClass{Residual: t.residual(axes, unit.InRadians(), c, negated)}
 					class.name(claim, axes, unit, c, negated)
@@ -224,7 +224,7 @@ func (r *SeriesResult) decide(nearest float64, stated bool) {
 
 // name words the class in its four ways: by the rotor or its reverse, with the
 // scalar first or last.
-func (c *SeriesClass) name(claim SeriesClaim, axes int, unit convention.Unit, m cube, negated bool) {
+func (c *SeriesClass) name(claim SeriesClaim, axes int, unit convention.Unit, m Cube, negated bool) {
 	one := SeriesReading{
 		Scalar: convention.ScalarFirst, Sense: BodyToSpace,
 		Axes: convention.BodyRates + convention.RateAxes(axes), Unit: unit, Negated: negated, Map: m,
@@ -249,10 +249,10 @@ func (r SeriesReading) reverse() SeriesReading {
 
 // The rotor of four numbers read with the scalar last is
 // -cubes[lastLeft] r~ cubes[lastRight], r being read with the scalar first.
-var lastLeft, lastRight = func() (cube, cube) {
+var lastLeft, lastRight = func() (Cube, Cube) {
 	last := frame{last: true}
-	for l := range cube(24) {
-		for r := range cube(24) {
+	for l := range Cube(24) {
+		for r := range Cube(24) {
 			if last.between(l, r) {
 				return l, r
 			}
@@ -263,7 +263,7 @@ var lastLeft, lastRight = func() (cube, cube) {
 
 // between reports whether the frame is, up to sign, the reverse between two
 // maps of axes.
-func (f frame) between(l, r cube) bool {
+func (f frame) between(l, r Cube) bool {
 	sum := 0.0
 	for _, e := range [4]rotor.Rotor{{S: 1}, {E23: 1}, {E31: 1}, {E12: 1}} {
 		sum += cubes[l].Mul(e.Reverse()).Mul(cubes[r]).Dot(f.apply(e))

@@ -103,6 +103,13 @@ func TestSeriesThatCannotDecide(t *testing.T) {
 	assert.Contains(t, Series(still, flown).Reason, "too little motion")
 	assert.Equal(t, Undecided, Series(nil, flown).Verdict)
 
+	zero := fly(500, 0.01)
+	for i := range zero {
+		zero[i].W = rotor.Vec{}
+	}
+	assert.Equal(t, Undecided, Series(zero, flown).Verdict)
+	assert.Contains(t, Series(zero, flown).Reason, "zero throughout")
+
 	spin := make([]Sample, 500) // about one axis: body and space rates are the same
 	for i := range spin {
 		at := 0.01 * float64(i)

@@ -48,7 +48,7 @@ func (t Turns) reverse() Turns {
 
 // relabel carries the axes of the turns over by a map: a turn about -y is the
 // negated turn about y.
-func (t Turns) relabel(c cube) Turns {
+func (t Turns) relabel(c Cube) Turns {
 	for k, axis := range t.Sequence.Axes {
 		to := axisMaps[c][axis]
 		t.Sequence.Axes[k] = angle.Axis(to.axis)

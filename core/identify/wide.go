@@ -51,7 +51,7 @@ func (s *search) halfAngle(a, b *reading, t trial) {
 // flips compares a rotation with a mirrored one whose negative is b or a: with
 // the half turn about an axis it has that axis negated before or after.
 func (s *search) flips(a, b *reading, t trial) {
-	for c := cube(1); c <= 3; c++ {
+	for c := Cube(1); c <= 3; c++ {
 		s.tried += 2
 		s.mapped(a, b, t, c, 0)
 		s.mapped(a, b, t, 0, c)
@@ -59,7 +59,7 @@ func (s *search) flips(a, b *reading, t trial) {
 }
 
 // mapped compares a with left b right, if that is news.
-func (s *search) mapped(a, b *reading, t trial, left, right cube) {
+func (s *search) mapped(a, b *reading, t trial, left, right Cube) {
 	t.left, t.right = left, right
 	target := cubes[left].Mul(t.target(b)).Mul(cubes[right])
 	if s.news(a.rotor.Dot(target), a.tol+b.tol) {
@@ -83,7 +83,7 @@ func (s *search) remap(a, b *reading, t trial) {
 	if right := back.Mul(a.rotor); s.worth(cubeDot(right), a, b) {
 		s.mapped(a, b, t, 0, nearestCube(right))
 	}
-	for c := cube(1); c < 24; c++ {
+	for c := Cube(1); c < 24; c++ {
 		moved := cubes[c].Mul(target).Mul(cubes[inverses[c]])
 		if s.worth(moved.Dot(a.rotor), a, b) {
 			s.mapped(a, b, t, c, inverses[c])
@@ -98,7 +98,7 @@ func (s *search) remapBoth(a, b *reading, t trial) {
 		return
 	}
 	target := t.target(b)
-	for c := cube(1); c < 24; c++ {
+	for c := Cube(1); c < 24; c++ {
 		rest := cubes[c].Mul(target).Reverse().Mul(a.rotor)
 		if s.worth(cubeDot(rest), a, b) {
 			s.mapped(a, b, t, c, nearestCube(rest))
