@@ -6,7 +6,6 @@ import (
 	"encoding/csv"
 	"fmt"
 	"io"
-	"os"
 	"runtime"
 	"strconv"
 	"sync"
@@ -94,11 +93,11 @@ func foldWithLibrary(b *testing.B, r io.Reader) int64 {
 	}
 }
 
-// TestHeapOfAMillionRows streams the log from a pipe, so that none of it is
-// held elsewhere, and looks at the heap in the meantime.
-func TestHeapOfAMillionRows(t *testing.T) {
-	if testing.Short() || os.Getenv("CI_FAST") != "" {
-		t.Skip("a million rows take a second")
+// TestHeapDoesNotGrow streams a log that is nowhere held as a whole, and looks at the
+// heap in the meantime.
+func TestHeapDoesNotGrow(t *testing.T) {
+	if testing.Short() {
+		t.Skip("short")
 	}
 	chunk := bigLog()[:1<<20]
 	chunk = chunk[:bytes.LastIndexByte(chunk, '\n')+1]
@@ -114,8 +113,10 @@ func TestHeapOfAMillionRows(t *testing.T) {
 		}
 		return in.peak
 	}
-	short, long := peak(10), peak(100)
-	t.Logf("heap beyond the start: %d kB for 10 MB, %d kB for 100 MB", short>>10, long>>10)
+	short, long := peak(5), peak(50)
+	t.Logf("heap beyond the start: %d kB for 5 MB, %d kB for 50 MB", short>>10, long>>10)
+	// Four blocks on their way, the head of the file, the folds; and as much again
+	// that is garbage already.
 	if long > 8<<20 {
 		t.Errorf("heap of %d bytes", long)
 	}

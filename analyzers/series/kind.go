@@ -3,8 +3,6 @@ package series
 import (
 	"bytes"
 	"cmp"
-	"compress/gzip"
-	"io"
 	"path"
 	"slices"
 	"strings"
@@ -24,8 +22,8 @@ func (k Kind) None() bool { return k.Name == "" }
 // HeadSize is how much of the start of a file Recognise wants to see. It makes do with less.
 const HeadSize = text.MaxHead
 
-// magics are the first bytes of formats that hold attitude logs, or may. None
-// of them can be read yet.
+// magics are the first bytes of formats that hold attitude logs, or may, and are
+// not read.
 var magics = []struct{ magic, name string }{
 	{"#ROSBAG V", "ROS bag"},
 	{"\x89MCAP0\r\n", "MCAP"},
@@ -48,6 +46,7 @@ var magics = []struct{ magic, name string }{
 	{"\xfd7zXZ\x00", "xz"},
 	{"\x04\x22\x4d\x18", "LZ4"},
 	{"\x28\xb5\x2f\xfd", "zstd"},
+	{"\x1f\x8b", "gzip"},
 	{"7z\xbc\xaf\x27\x1c", "7z archive"},
 	{"PK\x03\x04", "zip archive"},
 	{"CCSDS_AEM_VERS", "CCSDS attitude ephemeris (KVN)"},
@@ -58,8 +57,7 @@ var extensions = map[string]string{
 	".bag": "ROS bag", ".mcap": "MCAP", ".db3": "SQLite database", ".ulg": "ULog", ".px4log": "PX4 log", ".tlog": "MAVLink telemetry log",
 	".mat": "MAT-file", ".h5": "HDF5", ".hdf5": "HDF5", ".hdf": "HDF5", ".parquet": "Parquet", ".feather": "Feather", ".arrow": "Arrow",
 	".npy": "NumPy array", ".xls": "spreadsheet (xls)",
-	".bc": "SPICE C-kernel", ".tdms": "TDMS", ".mf4": "MDF", ".mdf": "MDF", ".blf": "BLF", ".asammdf": "MDF", ".rrd": "Rerun recording",
-	".svo": "SVO", ".sbg": "INS log", ".sbf": "GNSS log", ".ubx": "GNSS log", ".pcap": "packet capture", ".pcapng": "packet capture",
+	".tdms": "TDMS", ".mf4": "MDF", ".mdf": "MDF", ".sbf": "GNSS log", ".ubx": "GNSS log", ".pcap": "packet capture", ".pcapng": "packet capture",
 }
 
 // tables are the extensions of text files that can be a log. Other text, such
@@ -75,19 +73,26 @@ var promised = []string{".csv", ".tsv", ".jsonl", ".ndjson", ".jsonlines"}
 
 // Recognise says what kind of log a file is by its name and its first bytes.
 func Recognise(name string, head []byte) Kind {
+	p, packed := packingOf(head)
+	if !packed {
+		return recognise(name, head)
+	}
+	if extension := strings.ToLower(path.Ext(name)); extension == ".gz" || extension == ".zst" {
+		name = strings.TrimSuffix(name, path.Ext(name))
+	}
+	inner := recognise(name, p.unpacked(head))
+	if inner.Name == "" {
+		return Kind{}
+	}
+	return Kind{inner.Name + ", " + p.name, inner.Readable}
+}
+
+func recognise(name string, head []byte) Kind {
 	extension := strings.ToLower(path.Ext(name))
 	for _, m := range magics {
 		if bytes.HasPrefix(head, []byte(m.magic)) {
 			return Kind{Name: cmp.Or(packed[m.name][extension], m.name)}
 		}
-	}
-	if bytes.HasPrefix(head, []byte(gzipMagic)) {
-		inner := Recognise(strings.TrimSuffix(name, path.Ext(name)), unzipped(head))
-		if inner.Name != "" {
-			inner.Name += ", gzip"
-			inner.Readable = inner.Readable && !strings.HasSuffix(inner.Name, "gzip, gzip")
-		}
-		return inner
 	}
 	switch {
 	case len(head) > 262 && string(head[257:262]) == "ustar":
@@ -106,7 +111,10 @@ func Recognise(name string, head []byte) Kind {
 // its name says that it is a table.
 func tableKind(name, extension string, head []byte) Kind {
 	t, ok := sniff(name, head, len(head) < HeadSize)
-	if !ok {
+	switch {
+	case !ok && headTooLong(head) && slices.Contains(promised, extension):
+		return Kind{"delimited text", true} // Read says what is wrong
+	case !ok:
 		return Kind{}
 	}
 	isJSON := t.format == jsonFormat
@@ -129,18 +137,6 @@ func tableKind(name, extension string, head []byte) Kind {
 var packed = map[string]map[string]string{"zip archive": {
 	".npz": "NumPy archive", ".xlsx": "spreadsheet (xlsx)", ".ods": "spreadsheet (ods)",
 }}
-
-const gzipMagic = "\x1f\x8b"
-
-// unzipped is what of the start of a gzip file can be unpacked from its first bytes.
-func unzipped(head []byte) []byte {
-	z, err := gzip.NewReader(bytes.NewReader(head))
-	if err != nil {
-		return nil
-	}
-	out, _ := io.ReadAll(io.LimitReader(z, HeadSize)) // the head ends in the middle: that is no error here
-	return out
-}
 
 // binary reports whether bytes are no text: they contain NUL, or more than one in
 // twenty is a control character.

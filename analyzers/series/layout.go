@@ -28,12 +28,16 @@ type head struct {
 type layout struct {
 	fold      fold.Layout
 	cells     []int // for each column of the file its cell, or -1
+	width     int   // number of cells
 	channels  []columns.Channel
 	names     [][]string // of the columns of each channel
 	undecided []*rules.Value
 	time      *columns.Time
 	clock     rules.Clock // column, place, unit
 }
+
+// MaxChannels bounds the channels of a log, and so the memory of its fold.
+const MaxChannels = 256
 
 // any reports whether something was found, even if it stays undecided.
 func (l *layout) any() bool { return len(l.channels)+len(l.undecided) > 0 }
@@ -46,6 +50,7 @@ func plan(h *head, opts Options) *layout {
 	}
 	l := &layout{cells: slices.Repeat([]int{-1}, h.width)}
 	l.fold.Time, l.fold.Fine = -1, -1
+	list := found.Time == nil && h.list()
 	for _, c := range slices.Concat(found.Channels, found.Undecided) {
 		row := firstComplete(h.rows, c.Columns)
 		for _, column := range c.Columns {
@@ -54,7 +59,13 @@ func plan(h *head, opts Options) *layout {
 		if opts.Declare != nil {
 			opts.Declare(&c.Value)
 		}
-		if c.Value.Why == "" {
+		switch {
+		case c.Value.Why != "":
+		case len(l.channels) == MaxChannels:
+			c.Value.Why = fmt.Sprintf("the log has more than %d channels", MaxChannels)
+		case list:
+			c.Value.Why = "the rows have names and no time stamps: a list of orientations, not a series"
+		default:
 			c.Value.Why = doubt(&c, h.rows, row)
 		}
 		if !readable(&c.Value) {
@@ -68,6 +79,24 @@ func plan(h *head, opts Options) *layout {
 		l.setTime(found.Time, h, header)
 	}
 	return l
+}
+
+// list reports whether the rows are things with names, of which a column of
+// words gives every row another, and not samples of one thing.
+func (h *head) list() bool {
+	for column := range h.width {
+		seen := map[string]bool{}
+		for row, cells := range h.rows {
+			if cells == nil || cells[column].State != fold.Gap {
+				break
+			}
+			seen[h.number(row, column).Text] = true
+		}
+		if !seen[""] && len(seen) == len(h.rows) && len(seen) > 1 {
+			return true
+		}
+	}
+	return false
 }
 
 // named tries the possible headers and takes the first of those that name
@@ -246,17 +275,11 @@ func rotationPart(v *rules.Value) []int {
 // cell is the cell that a column is read into.
 func (l *layout) cell(column int) int {
 	if l.cells[column] < 0 {
-		n := 0
-		for _, c := range l.cells {
-			n = max(n, c+1)
-		}
-		l.cells[column] = n
+		l.cells[column] = l.width
+		l.width++
 	}
 	return l.cells[column]
 }
-
-// width is the number of cells of a row.
-func (l *layout) width() int { return slices.Max(append(slices.Clone(l.cells), -1)) + 1 }
 
 func (l *layout) add(c columns.Channel, header []columns.Column) {
 	f := fold.Channel{Form: c.Value.Form}
@@ -280,23 +303,21 @@ func (l *layout) add(c columns.Channel, header []columns.Column) {
 // pair finds channels that state the same orientation in different forms: those
 // with equal stems, where the stem has one channel of each form.
 func (l *layout) pair() {
+	type kind struct {
+		stem string
+		form convention.Form
+	}
+	kindOf := func(i int) kind { return kind{l.channels[i].Stem, l.channels[i].Value.Form} }
+	count := map[kind]int{}
+	for i := range l.channels {
+		count[kindOf(i)]++
+	}
 	for i := range l.channels {
 		for j := i + 1; j < len(l.channels); j++ {
-			a, b := &l.channels[i], &l.channels[j]
-			if a.Stem == b.Stem && a.Value.Form != b.Value.Form && l.only(a) && l.only(b) {
+			a, b := kindOf(i), kindOf(j)
+			if a.stem == b.stem && a.form != b.form && count[a] == 1 && count[b] == 1 {
 				l.fold.Pairs = append(l.fold.Pairs, [2]int{i, j})
 			}
 		}
 	}
-}
-
-// only reports whether no other channel has the same stem and form.
-func (l *layout) only(c *columns.Channel) bool {
-	n := 0
-	for i := range l.channels {
-		if l.channels[i].Stem == c.Stem && l.channels[i].Value.Form == c.Value.Form {
-			n++
-		}
-	}
-	return n == 1
 }

@@ -51,27 +51,36 @@ type BadRow struct {
 // after a look at its beginning. With an error, from the reader or because ctx
 // was cancelled, comes the result so far; the error does not repeat the path.
 func Read(ctx context.Context, path string, r io.Reader, opts Options) (Result, error) {
-	start, r, err := unpack(r)
+	file, err := openInput(r)
 	if err != nil {
 		return Result{}, err
 	}
-	t, ok := sniff(path, start, len(start) < HeadSize)
-	if !ok {
+	defer file.close()
+	t, ok := sniff(path, file.start, len(file.start) < HeadSize)
+	switch {
+	case !ok && headTooLong(file.start):
+		return Result{}, fmt.Errorf("has no row in its first %d bytes; no log has a header that long", HeadSize)
+	case !ok:
 		return Result{}, nil
 	}
 	l := plan(&t.head, opts)
 	p := t.parser(l.cells)
-	in := &feed{r: io.MultiReader(bytes.NewReader(start[t.offset:]), r), cut: p.Cut, line: t.line}
+	in := &feed{r: io.MultiReader(bytes.NewReader(file.start[t.offset:]), file.rest), cut: p.Cut, line: t.line}
 	total, err := &part{fold: fold.New(&l.fold)}, error(nil)
 	if len(l.channels) > 0 {
 		total, err = run(ctx, in, &l.fold, opts, func() *folder {
-			return &folder{parser: p, origin: t.line - 1, cells: make([]fold.Cell, l.width())}
+			return &folder{parser: p, origin: t.line - 1, cells: make([]fold.Cell, l.width)}
 		})
 	}
 	if err != nil && !errors.Is(err, ctx.Err()) {
 		err = fmt.Errorf("reading stopped near line %d: %w", in.line, err)
 	}
 	return l.result(path, t.format, t.line-1, total), err
+}
+
+// headTooLong reports whether text begins with a line that leaves no room for rows.
+func headTooLong(start []byte) bool {
+	return len(start) == HeadSize && !binary(start) && bytes.LastIndexByte(start, '\n') <= bytes.IndexByte(start, '\n')
 }
 
 // result puts the folds in the form that rules judge.

@@ -46,9 +46,13 @@ func delimited(path string, h *text.Head) *table {
 	for _, row := range h.Rows {
 		t.head.rows = append(t.head.rows, h.Loose(row))
 	}
+	fields := make([][]text.Field, len(h.Rows))
 	t.head.number = func(row, column int) rules.Number {
+		if fields[row] == nil {
+			fields[row] = h.Fields(path, h.Rows[row])
+		}
 		n := rules.Number{Value: math.NaN()}
-		if fields := h.Fields(path, h.Rows[row]); column < len(fields) {
+		if fields := fields[row]; column < len(fields) {
 			n.Text, n.Place = fields[column].Text, fields[column].Place
 		}
 		if cells := t.head.rows[row]; cells != nil {

@@ -277,23 +277,33 @@ func behindComment(text []byte) int {
 // named are the fields of a line, from an offset on, with their places.
 func (t *Table) named(path string, l line, from int) []Field {
 	var fields []Field
+	here := cursor{line: int(l.number), column: 1}
 	for _, f := range t.fields(l.text[from:]) {
 		whole := l.text[from+f[0] : from+f[1]]
 		text := Unquote(whole)
 		at := from + f[0] + bytes.Index(whole, text)
 		p := rules.Place{Path: path}
-		p.Line, p.Column = l.position(at)
-		p.EndLine, p.EndColumn = l.position(at + len(text))
+		p.Line, p.Column = here.move(l.text, at)
+		p.EndLine, p.EndColumn = here.move(l.text, at+len(text))
 		fields = append(fields, Field{Text: string(text), Place: p})
 	}
 	return fields
 }
 
-// position is the line and column of an offset in the text of a record.
-func (l line) position(at int) (number, column int) {
-	before := l.text[:at]
-	number = int(l.number) + bytes.Count(before, []byte{'\n'})
-	return number, utf8.RuneCount(before[bytes.LastIndexByte(before, '\n')+1:]) + 1
+// cursor follows line and column through the text of a record.
+type cursor struct{ at, line, column int }
+
+// move goes on to an offset.
+func (c *cursor) move(text []byte, to int) (line, column int) {
+	passed := text[c.at:to]
+	if end := bytes.LastIndexByte(passed, '\n'); end >= 0 {
+		c.line += bytes.Count(passed, []byte{'\n'})
+		c.column = 1
+		passed = passed[end+1:]
+	}
+	c.column += utf8.RuneCount(passed)
+	c.at = to
+	return c.line, c.column
 }
 
 // Loose reads all columns of a row, as far as they are numbers; words count as
