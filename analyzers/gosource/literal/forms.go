@@ -17,7 +17,7 @@ type verdict struct {
 	text string // the words that say so
 	at   span   // where they stand; empty for names of types
 	why  string // why it is undecided
-	weak bool   // only the type says so, and types of an algebra hold other things too
+	weak bool   // what says so leaves room: types of an algebra, and "rotation" over four numbers, mean other things too
 }
 
 // speech is what is said about a literal: names, the nearest first, and
@@ -70,6 +70,14 @@ func (l label) undecided(f convention.Form, why string) verdict {
 func (l label) by(m claims.Meaning) verdict {
 	return verdict{form: m.Form, from: m.Source, text: l.text, at: l.at, why: m.Why}
 }
+
+// plural reports a name for several: the numbers of a flat list under it are
+// one number for each, such as angles of four rotations.
+func (s speech) plural() bool {
+	return len(s.labels) > 0 && s.labels[0].kind == ofValue && severals.MatchString(s.labels[0].text)
+}
+
+var severals = regexp.MustCompile(`(?i)(rotations|rots|orientations|attitudes|quats|quaternions|versors|matrices|dcms|poses|transforms|extrinsics|mounts)_?(deg|degs|degrees|rad|rads|radians)?$`)
 
 // denied reports that a name or a comment says that this is something else: a
 // rate, a covariance, a colour, no rotation.
@@ -151,7 +159,9 @@ func (s speech) ofFour(named bool) verdict {
 				return v
 			}
 		}
-		return l.by(m)
+		v := l.by(m)
+		v.weak = m.Source < rules.Label && !named
+		return v
 	}
 	if v, ok := s.remarked(convention.Quaternion, convention.AxisAngle); ok && (!named || v.form == convention.Quaternion) {
 		return v

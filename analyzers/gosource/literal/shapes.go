@@ -2,6 +2,7 @@ package literal
 
 import (
 	"go/ast"
+	"go/token"
 	"go/types"
 	"slices"
 	"strconv"
@@ -240,7 +241,7 @@ func (w *walker) four(s site, lit *ast.CompositeLit, entries []ast.Expr, order c
 	named := order != convention.ScalarUnstated
 	said := w.speech(w.withType(s, lit))
 	v := said.ofFour(named)
-	if v.form == convention.NoForm {
+	if v.form == convention.NoForm || !named && said.plural() {
 		return
 	}
 	numbers, ok := w.numbers(lit, entries)
@@ -249,7 +250,10 @@ func (w *walker) four(s site, lit *ast.CompositeLit, entries []ast.Expr, order c
 		return
 	}
 	if v.weak && looksAlgebraic(numbers, order) {
-		v.why = "only its type speaks of a quaternion, and its numbers do not look like a rotation"
+		v.why = "the name leaves room for something else, and these numbers do not look like a rotation"
+		if v.at.from == token.NoPos {
+			v.why = "only its type speaks of a quaternion, and its numbers do not look like a rotation"
+		}
 	}
 	value := &rules.Value{Form: v.form, Numbers: numbers}
 	if named {
@@ -267,11 +271,8 @@ func looksAlgebraic(numbers []rules.Number, order convention.ScalarPlace) bool {
 		norm += n.Value * n.Value
 		whole = whole && n.Value == float64(int64(n.Value))
 	}
-	scalar := numbers[0].Value
-	if order == convention.ScalarLast {
-		scalar = numbers[3].Value
-	}
-	return norm != 0 && (whole && norm != 1 || scalar == 0 && (norm < 0.99 || norm > 1.01))
+	vector := order == convention.ScalarFirst && numbers[0].Value == 0 || order == convention.ScalarLast && numbers[3].Value == 0
+	return norm != 0 && (whole && norm != 1 || vector && (norm < 0.99 || norm > 1.01))
 }
 
 // numbers reads entries that are all constant.
@@ -308,42 +309,4 @@ func (w *walker) three(s site, lit *ast.CompositeLit, roles []angle.Role) {
 		copy(value.Roles[:], roles)
 	}
 	w.keep(s, said, lit, v, value)
-}
-
-// matrix reads nine, twelve or sixteen numbers, nested or flat.
-func (w *walker) matrix(s site, lit *ast.CompositeLit) bool {
-	b, ok := w.read(lit)
-	if !ok {
-		return false
-	}
-	rows, cols, ok := matrixShape(b.dims)
-	if !ok {
-		return false
-	}
-	said := w.speech(w.withType(s, lit))
-	v := said.ofMatrix(rows, cols, b.numbers)
-	if v.form == convention.NoForm {
-		return true
-	}
-	if s.loose {
-		w.skip(lit, s, true)
-		return true
-	}
-	w.keep(s, said, lit, v, &rules.Value{Form: v.form, Numbers: b.numbers, Rows: rows, Cols: cols})
-	return true
-}
-
-// matrixShape accepts what holds a rotation: 3x3, 3x4, 4x4, and these flat.
-func matrixShape(dims []int) (rows, cols int, ok bool) {
-	switch {
-	case len(dims) == 2 && (dims[0] == 3 && (dims[1] == 3 || dims[1] == 4) || dims[0] == 4 && dims[1] == 4):
-		return dims[0], dims[1], true
-	case len(dims) == 1 && dims[0] == 9:
-		return 3, 3, true
-	case len(dims) == 1 && dims[0] == 12:
-		return 3, 4, true
-	case len(dims) == 1 && dims[0] == 16:
-		return 4, 4, true
-	}
-	return 0, 0, false
 }

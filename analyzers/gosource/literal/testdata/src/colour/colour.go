@@ -63,3 +63,13 @@ var quartiles = struct{ Q0, Q1, Q2, Q3 float64 }{1, 2, 3, 4} // quartiles
 var xAxis = []float64{0, 1, 2} // ticks of a plot
 
 var rotationTicks = []float64{1, 2, 3, 4, 5} // five numbers
+
+var ksRotations = [16]uint8{1, 1, 2, 2, 2, 2, 2, 2, 1, 2, 2, 2, 2, 2, 2, 1} // shifts of a cipher
+
+var tileRotations = []float64{0, 90, 180, 270} // four rotations, an angle each
+
+var sweepRotations = []float64{0, 10, 20, 30, 40, 50, 60, 70, 80} // nine of them
+
+var rotation = []float64{0, 90, 180, 270} // want `^quaternion rotation .*undecided: the name leaves room for something else`
+
+var cells = [9]int{1, 0, 0, 0, 1, 0, 0, 0, 1} // a board

@@ -61,3 +61,7 @@ var axisRemap = [3][3]int{{0, 1, 0}, {1, 0, 0}, {0, 0, -1}} // want `^axis map a
 var tooMany = [3][3]float64{{1, 0, 0}, {0, 1, 0}, {0, 0, 1}}
 
 var ragged = [][]float64{{1, 0, 0}, {0, 1}, {0, 0, 1}} // rows of different length
+
+var turnRotation = [3][3]int{{0, -1, 0}, {1, 0, 0}, {0, 0, 1}} // want `^rotation matrix turnRotation 0 -1 0 1 0 0 0 0 1:`
+
+var rotations = [][3][3]float64{{{1, 0, 0}, {0, 1, 0}, {0, 0, 1}}} // want `^rotation matrix rotations\[0\] 1 0 0 0 1 0 0 0 1:`
