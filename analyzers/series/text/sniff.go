@@ -30,8 +30,12 @@ type Row struct {
 	Line int64
 }
 
-// sample is how many rows Sniff looks at.
-const sample = 64
+// sample is how many rows Sniff looks at, and preamble how many lines it allows
+// for words, comments and a header before them.
+const (
+	sample   = 64
+	preamble = 1000
+)
 
 // delimiters in the order of preference where all else is equal.
 var delimiters = []byte{',', ';', '\t', '|', ' '}
@@ -71,9 +75,10 @@ func Sniff(path string, head []byte, last bool) (*Head, bool) {
 // at, wherever they begin.
 func lines(t *Table, head []byte, offset int, last bool) []line {
 	var found []line
+	var memory tally
 	rest := head
 	number := int64(1)
-	for data := 0; len(rest) > 0 && data < sample; {
+	for data := 0; len(rest) > 0 && data < sample && len(found) < preamble+sample; {
 		record, next, n, ok := t.Record(rest, last)
 		if !ok {
 			break
@@ -81,7 +86,7 @@ func lines(t *Table, head []byte, offset int, last bool) []line {
 		if trimmed := bytes.TrimSpace(record); len(trimmed) > 0 {
 			l := line{text: record, offset: offset + len(head) - len(rest), number: number, comment: blank(record)}
 			found = append(found, l)
-			if !l.comment && t.looksLikeData(record, nil) {
+			if !l.comment && t.looksLikeData(record, &memory) {
 				data++
 			}
 		}
@@ -112,19 +117,21 @@ func (c *candidate) better(than *candidate) bool {
 type tally struct {
 	fields, numbers, points, commas int
 	open                            bool // the last field is empty
+
+	memory [][2]int // of the fields, for the next record
 }
 
 // judge finds the width that most rows have, and the first row.
 func judge(delimiter byte, all []line) *candidate {
 	t := Table{Delimiter: delimiter, Point: '.'}
 	widths := map[int]int{}
-	var sum tally
+	var sum, n tally
 	tallies := make([]tally, len(all))
 	for i, l := range all {
-		n := &tallies[i]
-		if l.comment || !t.looksLikeData(l.text, n) {
+		if l.comment || !t.looksLikeData(l.text, &n) {
 			continue
 		}
+		tallies[i] = n
 		widths[n.fields]++
 		if n.open { // an empty last column, or a delimiter too many
 			widths[n.fields-1]++
@@ -158,10 +165,10 @@ func judge(delimiter byte, all []line) *candidate {
 
 // looksLikeData reports whether at least half of the fields of a line, and no
 // fewer than two, are numbers or stand for one that is missing, and one is a number.
-func (t *Table) looksLikeData(record []byte, out *tally) bool {
-	var n tally
+func (t *Table) looksLikeData(record []byte, n *tally) bool {
+	*n = tally{memory: t.appendFields(n.memory[:0], record)}
 	some := false
-	for _, f := range t.fields(record) {
+	for _, f := range n.memory {
 		n.fields++
 		n.open = f[0] == f[1]
 		text := Unquote(record[f[0]:f[1]])
@@ -183,13 +190,7 @@ func (t *Table) looksLikeData(record []byte, out *tally) bool {
 			n.numbers++
 		}
 	}
-	if !some || n.numbers < 2 || 2*n.numbers < n.fields {
-		return false
-	}
-	if out != nil {
-		*out = n
-	}
-	return true
+	return some && n.numbers >= 2 && 2*n.numbers >= n.fields
 }
 
 func (t *Table) number(text []byte, point byte, c *fold.Cell) bool {
@@ -198,8 +199,9 @@ func (t *Table) number(text []byte, point byte, c *fold.Cell) bool {
 }
 
 // fields are the stretches of a record that its columns are.
-func (t *Table) fields(record []byte) [][2]int {
-	var all [][2]int
+func (t *Table) fields(record []byte) [][2]int { return t.appendFields(nil, record) }
+
+func (t *Table) appendFields(all [][2]int, record []byte) [][2]int {
 	for i := 0; ; i++ {
 		if t.Delimiter == ' ' {
 			for i < len(record) && (record[i] == ' ' || record[i] == '\t') {
