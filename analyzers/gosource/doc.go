@@ -25,8 +25,8 @@
 //
 // # What is left out
 //
-// Test files and testdata directories state wrong orientations on purpose;
-// they are counted and not read. So is vendored code, which is somebody
+// Test files, testdata directories, mocks and fakes state wrong or made-up
+// orientations on purpose; they are counted and not read. So is vendored code, which is somebody
 // else's. Files that this machine's build constraints exclude are read too,
 // each beside the files of its package.
 package gosource

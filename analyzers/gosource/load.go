@@ -31,7 +31,7 @@ type Result struct {
 	Skipped  []literal.Skip // literals that look like orientations but are not judged, in order of place
 	Packages int            // packages type-checked
 	Files    int            // files of these packages that were read
-	Tests    int            // test files and files under testdata: not read
+	Tests    int            // test files, testdata, mocks and fakes: not read
 	Vendored int            // files under a vendor directory: not read
 	Silent   int            // files in whose directory nothing speaks of orientations: not read any further
 	Failures []Failure      // in order of place

@@ -5,6 +5,7 @@ import (
 	"os"
 	"path"
 	"path/filepath"
+	"regexp"
 	"slices"
 	"strings"
 )
@@ -81,9 +82,16 @@ func (l *loader) nameModules(roots map[string]string) {
 	}
 }
 
+// isTest reports a file of tests, of their data, or of stand-ins whose numbers
+// somebody made up.
 func isTest(printed string) bool {
-	return strings.HasSuffix(printed, "_test.go") || hasElement(printed, "testdata")
+	if strings.HasSuffix(printed, "_test.go") {
+		return true
+	}
+	return slices.ContainsFunc(strings.Split(printed, "/"), standIn.MatchString)
 }
+
+var standIn = regexp.MustCompile(`^(testdata|testutils?|mocks?|fakes?|stubs?)$|^(mock|fake)_\w+\.go$|_(mocks?|fake)\.go$`)
 
 // hasElement reports whether a path with slashes has a directory of that name.
 func hasElement(printed, name string) bool {

@@ -290,12 +290,14 @@ const lengthUnsaid = "nothing says that the axis has unit length"
 
 // others are words of programs that the lexicon of calibration files lacks: the
 // numbers of such a variable have the shape of an orientation and are none, or
-// are one that need not be unit.
+// one that need not be unit, or one that is meant to be wrong.
 var others = map[string]bool{
 	"dot": true, "deriv": true, "derivative": true, "dual": true, "sum": true, "total": true,
 	"diff": true, "difference": true, "plane": true, "rect": true, "raw": true, "unnormalized": true,
 	"unnormalised": true, "random": true, "noisy": true, "zero": true, "point": true, "position": true,
 	"acc": true, "accum": true, "tmp": true, "temp": true,
+	// said to be wrong or made up
+	"invalid": true, "bad": true, "wrong": true, "broken": true, "bogus": true, "fake": true, "mock": true, "dummy": true,
 }
 
 func isOther(n *claims.Name) bool {

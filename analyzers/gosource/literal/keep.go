@@ -5,6 +5,7 @@ import (
 	"go/ast"
 	"go/token"
 	"go/types"
+	"math"
 	"slices"
 	"strings"
 
@@ -31,6 +32,9 @@ func (w *walker) finish(s site, said speech, v verdict, value *rules.Value) {
 		return
 	}
 	value.Key, value.Why = w.unique(s.key), v.why
+	if value.Why == "" && isMarker(value) {
+		value.Why = "its numbers are all the same, as those of a marker for an unset value are"
+	}
 	if len(s.labels) > 0 && s.labels[0].kind == ofValue && s.labels[0].at.from.IsValid() {
 		value.KeyAt = w.place(s.labels[0].at.from, s.labels[0].at.to)
 	}
@@ -42,6 +46,25 @@ func (w *walker) finish(s site, said speech, v verdict, value *rules.Value) {
 	if s.group != alone && value.Why == "" && len(said.labels) > 0 {
 		w.stems[value] = twin{group: s.group, stem: said.labels[0].name.Stem}
 	}
+}
+
+// isMarker reports numbers that programs use to say that nothing is known: a
+// quaternion of four equal components off the unit sphere, angles that are all
+// -1 or all far outside the circle. Zeros are for the rules to name.
+func isMarker(v *rules.Value) bool {
+	x := v.Floats()
+	for _, y := range x {
+		if y != x[0] || y == 0 {
+			return false
+		}
+	}
+	switch v.Form {
+	case convention.Quaternion:
+		return math.Abs(x[0]) != 0.5
+	case convention.Angles, convention.RotationVector:
+		return x[0] == -1 || math.Abs(x[0]) > 720
+	}
+	return false
 }
 
 // withType adds to a site what the declaration of the literal's type says.

@@ -70,3 +70,7 @@ const (
 type Control struct{ Roll, Pitch, Yaw, Throttle string }
 
 var keys = Control{"a", "b", "c", "d"} // no numbers
+
+var lostRPY = [3]float64{-1, -1, -1} // want `^angles lostRPY .*undecided: its numbers are all the same`
+
+var evenRPY = [3]float64{45, 45, 45} // want `^angles evenRPY 45 45 45: .*; roll pitch yaw$`

@@ -97,3 +97,9 @@ var computedQuat = Quat{W: math.Cos(angle())} // want `^skip: it is computed at 
 type Pointing [4]float64
 
 var aim = Pointing{0, 0, 0, 1} // want `^quaternion aim 0 0 0 1: form=quaternion by name, scalar place=scalar last`
+
+var UnknownQuat = Quat{-1, -1, -1, -1} // want `^quaternion UnknownQuat -1 -1 -1 -1: .*undecided: its numbers are all the same`
+
+var EvenQuat = Quat{0.5, 0.5, 0.5, 0.5} // want `^quaternion EvenQuat 0.5 0.5 0.5 0.5: [^;]*$`
+
+var invalidQuat = Quat{2, 0, 0, 0} // meant to be wrong
