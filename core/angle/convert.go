@@ -89,10 +89,13 @@ func (s Sequence) Angles(r rotor.Rotor) Triple { return s.within(r, Rounding) }
 // determined, the middle angle takes its singular value, the third is 0, and the
 // rotor of the three is within the precision of r.
 //
-// R and -R have the same angles; the norm of r does not matter. NaN for
+// A precision below zero, or NaN, counts as zero. R and -R have the same angles; the norm of r does not matter. NaN for
 // a zero rotor, for NaN, and for a sequence that is not Valid.
 func (s Sequence) AnglesWithin(r rotor.Rotor, precision float64) Triple {
-	return s.within(r, math.Sin(math.Min(math.Max(precision, 0), math.Pi/2)))
+	if !(precision > 0) {
+		precision = 0
+	}
+	return s.within(r, math.Sin(math.Min(precision, math.Pi/2)))
 }
 
 // within takes the sine of the precision.

@@ -235,6 +235,27 @@ func TestBandAtRoundingError(t *testing.T) {
 	}
 }
 
+// TestBandIsNarrow: 1e-14 rad from the singular point the angles are still
+// told apart, and reproduce the rotor to 1e-15.
+func TestBandIsNarrow(t *testing.T) {
+	for _, s := range angle.Sequences() {
+		r := s.Rotor(0.4, singular(s)[0]-1e-14, 1.1)
+		a := s.Angles(r)
+		assert.Equal(t, angle.Regular, a.Band, s.Words())
+		assert.Less(t, rotor.Angle(r, rebuilt(s, a)), 1e-15, s.Words())
+	}
+}
+
+// TestQuotientBySignedZero: an outer angle of 90 degrees whose cosine comes out as -0.
+func TestQuotientBySignedZero(t *testing.T) {
+	r := rotor.Rotor{E23: math.Sqrt2 / 2, E12: math.Sqrt2 / 2}
+	for _, s := range angle.Sequences() {
+		for _, q := range []rotor.Rotor{r, r.Neg(), {E31: r.E23, E12: r.E12}, {E31: -r.E23, E12: r.E12}, {S: r.E23, E31: -r.E12}} {
+			assert.LessOrEqual(t, rotor.Angle(q, rebuilt(s, s.Angles(q))), angle.Rounding, "%s %v", s.Words(), q)
+		}
+	}
+}
+
 func TestNoPrecisionAtAll(t *testing.T) {
 	r := moving(z, y, x).Rotor(1, 1, 1)
 	for _, precision := range []float64{math.Pi / 2, math.Pi, math.Inf(1)} {
@@ -242,6 +263,8 @@ func TestNoPrecisionAtAll(t *testing.T) {
 	}
 	for _, precision := range []float64{0, -1, math.NaN()} {
 		assert.Equal(t, angle.Regular, moving(z, y, x).AnglesWithin(r, precision).Band)
+		exact := moving(z, x, z).AnglesWithin(rotor.One, precision)
+		assert.Equal(t, angle.Triple{Band: angle.OnlySum}, exact, "exactly singular at any precision")
 	}
 }
 

@@ -75,7 +75,7 @@ func TestSciPy(t *testing.T) {
 		assert.LessOrEqual(t, rotor.Angle(rebuilt(s, got), q), outside, where)
 		exact := strings.HasPrefix(row.Text("label"), "singular_exact") && !s.Proper()
 		for _, b := range singular(s) {
-			exact = exact || math.Abs(n[1]-b) < angle.Rounding
+			exact = exact || math.Abs(n[1]-b) < 1e-12
 		}
 		assert.Equal(t, exact, got.Band != angle.Regular, "%s: %v", where, got.Band)
 		if row.Number("back_residual_rad") < outside {

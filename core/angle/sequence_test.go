@@ -6,6 +6,7 @@ import (
 	"github.com/stretchr/testify/assert"
 
 	"dextral/core/angle"
+	"dextral/core/rotor"
 )
 
 const (
@@ -34,6 +35,8 @@ func TestSequencesAreTheValidOnes(t *testing.T) {
 			Fixed: code >= 125,
 		}
 		assert.Equal(t, listed[s], s.Valid(), "%+v", s)
+		assert.Equal(t, listed[s], s.Rotor(0.1, 0.2, 0.3).Finite(), "%+v", s)
+		assert.Equal(t, listed[s], s.Angles(rotor.Rotor{S: 1, E12: 1}).A == s.Angles(rotor.Rotor{S: 1, E12: 1}).A, "%+v", s)
 	}
 	assert.False(t, angle.Sequence{}.Valid())
 }

@@ -260,9 +260,10 @@ func TestSharedChildren(t *testing.T) {
 	assert.Empty(t, g.SharedChildren())
 	add(5, "lidar", "camera")
 	add(6, "odom", "base")
+	add(7, "base", "base")
 	shared := g.SharedChildren()
 	require.Len(t, shared, 2)
-	assert.Equal(t, []int{1, 4, 6}, ids(shared[0]))
+	assert.Equal(t, []int{1, 4, 6, 7}, ids(shared[0]))
 	assert.Equal(t, []int{2, 5}, ids(shared[1]))
 }
 

@@ -63,7 +63,7 @@ func (g *Graph) remove(f int, parents []int, gone []bool) {
 		gone[f] = true
 		for _, e := range g.at[f] {
 			child := g.ends[e][1]
-			if g.ends[e][0] != f || gone[child] {
+			if g.ends[e][0] != f {
 				continue
 			}
 			if parents[child]--; parents[child] == 0 {

@@ -109,6 +109,7 @@ func TestOf(t *testing.T) {
 		{0.00005, []string{"0.3661", "0.9280", "1"}, "nor when they stand alone"},
 		{0.0005, []string{"1.000", "0.000", "-0.000", "0.000"}, "padded whole numbers are rounded like the others"},
 		{0.005, []string{"0.8660254037844387", "-0.50"}, "padded: its zeros were not dropped"},
+		{0.05, []string{"0.8660254037844387", "-0.50", "0.5"}, "nor were those of its sibling"},
 		{5e-6, []string{"1", "0", "0", "0"}, "also alone: 1 may be 0.999998 printed with six"},
 		{5e-5, []string{"90", "0", "-45"}, "90.0000"},
 		{5e-6, []string{"1", "0.000123456", "-2.5e-05", "0.00031"}, "a general format with six digits"},
