@@ -321,6 +321,7 @@ func TestHeaderTooLong(t *testing.T) {
 	_, err := Read(context.Background(), "f", strings.NewReader(text), Options{})
 	require.ErrorContains(t, err, "no row in its first 262144 bytes")
 	assert.True(t, Recognise("a.csv", []byte(text[:HeadSize])).Readable, "so that somebody is told")
+	assert.True(t, Recognise("a.csv", []byte(text[:5000])).Readable)
 	assert.True(t, Recognise("a.txt", []byte(text[:HeadSize])).None())
 }
 

@@ -49,7 +49,7 @@ type Channel struct {
 // Time is the column of time stamps.
 type Time struct {
 	Column int
-	Fine   int    // column of the fraction, in units of 1/PerUnit, if stamps stand in two columns; else -1
+	Fine   int    // column of the fraction, if stamps stand in two columns; else -1
 	Per    int64  // Fine counts in 1/Per of Unit
 	Unit   string // s, ms, us, ns; "" if the name does not say
 }
