@@ -39,7 +39,7 @@ func (v *Value) toleranceOf(p tolerance.Precision) float64 {
 	case convention.RotationVector:
 		return p.RotationVector(v.Claims.Unit())
 	case convention.AxisAngle:
-		return p.Axis() + p.Angle(v.Claims.Unit())
+		return p.AxisAngle(v.Claims.Unit())
 	default:
 		return p.Matrix()
 	}

@@ -92,6 +92,20 @@ var (
 	sinkQuat   plainQuat
 )
 
+// TestPlainCode: the code compared with computes the same.
+func TestPlainCode(t *testing.T) {
+	orders := map[plainOrder]Sequence{plainXYZ: {Axes: [3]Axis{X, Y, Z}}, plainZXY: {Axes: [3]Axis{Z, X, Y}}, plainZYX: zyx}
+	for order, s := range orders {
+		q := plainQuaternion(0.3, -1.2, 2.5, order)
+		if d := rotor.Angle(s.Rotor(0.3, -1.2, 2.5), rotor.FromQuaternion(q.W, q.V[0], q.V[1], q.V[2])); d > Rounding {
+			t.Errorf("%s: %v off", s, d)
+		}
+		if a, b, c := plainAngles(q, order); math.Abs(a-0.3)+math.Abs(b+1.2)+math.Abs(c-2.5) > 1e-14 {
+			t.Errorf("%s: %v %v %v", s, a, b, c)
+		}
+	}
+}
+
 // BenchmarkRatio reports time of dextral over time of the plain code: batches
 // in turn, the fastest of each, so that other load on the machine hits both.
 func BenchmarkRatio(b *testing.B) {

@@ -47,10 +47,14 @@ func (l Label) String() string {
 	switch {
 	case l.Full && len(l.Readings) == 1:
 		return l.Readings[0].String()
-	case l.Text == "":
+	case l.Text == "" || len(l.Readings) == 0:
 		return "sequence unstated"
 	}
-	return l.Text + " (kind of axes unstated)"
+	kind := l.Readings[0].Seq.Fixed
+	if slices.ContainsFunc(l.Readings, func(r Reading) bool { return r.Seq.Fixed != kind }) {
+		return l.Text + " (kind of axes unstated)"
+	}
+	return l.Text + " (order of turns unstated)"
 }
 
 // Same reports whether two labels have the same readings.

@@ -235,7 +235,9 @@ func TestLabelIsATerm(t *testing.T) {
 	var term convention.Term = read(t, "ZYX", noRoles)
 	assert.Equal(t, convention.OfSequence, term.Subject())
 	assert.Equal(t, "ZYX (kind of axes unstated)", term.String())
+	assert.Equal(t, "moving rpy (order of turns unstated)", read(t, "moving rpy", noRoles).String())
 	assert.Equal(t, "sequence unstated", angle.Label{}.String())
+	assert.Equal(t, "sequence unstated", angle.Label{Text: "ZYX"}.String())
 }
 
 func TestSame(t *testing.T) {
