@@ -117,6 +117,28 @@ func TestForcedScalar(t *testing.T) {
 	assert.Equal(t, kinematics.Tally{Count: 1, First: place(11)}, c.NegativeScalar)
 }
 
+// TestLargest: the widest step, the first of equals, whatever the signs.
+func TestLargest(t *testing.T) {
+	at := func(angles ...float64) (series []rotor.Rotor) {
+		for _, a := range angles {
+			series = append(series, rotor.FromRotationVector(rotor.Vec{Y: a}))
+		}
+		return series
+	}
+	series := at(0, 0.25, 0.5, 1.5, 2, 3, 3)
+	series[1], series[5] = series[1].Neg(), series[5].Neg()
+	c := fold(series)
+	assert.Equal(t, place(4), c.Largest.Place)
+	within(t, 8*ulp, math.Abs(c.Largest.Angle-1), "largest")
+	assert.Equal(t, int64(4), c.JumpCount)
+
+	c = fold(at(0, 2.5, 3))
+	assert.Equal(t, place(2), c.Largest.Place)
+	within(t, 8*ulp, math.Abs(c.Largest.Angle-2.5), "largest")
+	assert.Zero(t, fold(at(1, 1, 1)).Largest, "nothing moves")
+	assert.Zero(t, fold(nil).Largest)
+}
+
 // TestManyJumps: all are counted, the first are kept.
 func TestManyJumps(t *testing.T) {
 	series := roll(100, 0.01)
@@ -148,7 +170,8 @@ func TestNorms(t *testing.T) {
 	assert.Equal(t, c.MinNorm, worst)
 
 	c = fold([]rotor.Rotor{{S: 1.25}, {S: .75}})
-	worst, _ = c.WorstNorm()
+	worst, ok = c.WorstNorm()
+	assert.True(t, ok)
 	assert.Equal(t, c.MaxNorm, worst, "the earlier of two equally bad")
 	c = fold([]rotor.Rotor{{S: .75}, {S: 1.25}})
 	worst, _ = c.WorstNorm()
