@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"go/token"
 	"go/types"
+	"slices"
 
 	"golang.org/x/tools/go/ssa"
 
@@ -24,13 +25,14 @@ type builder struct {
 	places map[token.Pos]int32
 	pos    []token.Pos // of p.Places
 
-	blocks  [][]tape.Instr
-	current int       // block being filled
-	place   int32     // of the instruction being translated
-	ended   []bool    // blocks that stop before their end
-	reached []bool    // blocks that something leads to
-	pending []pending // edges whose phis wait for their operands
-	stops   []string
+	blocks   [][]tape.Instr
+	current  int       // block being filled
+	place    int32     // of the instruction being translated
+	ended    []bool    // blocks that stop before their end
+	reached  []bool    // blocks that something leads to
+	pending  []pending // edges whose phis wait for their operands
+	stops    []string  // parts that are not translated
+	unknowns []string  // values that are not known
 
 	initials map[*ssa.Global]*spot // while the initialiser is built: the variables
 	vars     []*ssa.Global         // the variables in the order of the results
@@ -66,6 +68,13 @@ type unsupported string
 
 func (b *builder) fail(format string, args ...any) {
 	panic(unsupported(fmt.Sprintf(format, args...)))
+}
+
+// note remembers why something is unknown.
+func (b *builder) note(what string) {
+	if !slices.Contains(b.unknowns, what) {
+		b.unknowns = append(b.unknowns, what)
+	}
 }
 
 func (b *builder) typeOf(v ssa.Value) types.Type { return b.env.subst(v.Type()) }

@@ -62,8 +62,12 @@ func (b *builder) callNamed(in *ssa.Call, name string, args []ssa.Value) {
 	}
 	d := b.define(in)
 	site.Words = d.n
+	call := tape.Instr{Op: tape.Call, A: int32(len(b.p.Calls))}
+	if d.n > 0 {
+		call.Dst = d.slot
+	}
 	b.p.Calls = append(b.p.Calls, site)
-	b.emit(tape.Instr{Op: tape.Call, Dst: d.slot, A: int32(len(b.p.Calls) - 1)})
+	b.emit(call)
 }
 
 // intrinsic translates calls of the standard library that tapes know.

@@ -2,6 +2,7 @@ package lower
 
 import (
 	"go/types"
+	"slices"
 
 	"golang.org/x/tools/go/ssa"
 
@@ -33,7 +34,9 @@ func (p *packageLowerer) globalWords(g *ssa.Global) []tape.Const {
 		return words
 	}
 	words := make([]tape.Const, len(l.fields))
-	p.globals[g] = words
+	if !p.initialising {
+		p.globals[g] = words
+	}
 	return words
 }
 
@@ -61,11 +64,14 @@ func (b *builder) global(g *ssa.Global) *spot {
 		if words == nil {
 			b.fail("uses package variable %s", g.Name())
 		}
+		if len(words) == 0 {
+			return &spot{base: inFrame} // nothing is ever read there
+		}
+		if slices.ContainsFunc(words, func(w tape.Const) bool { return w.Kind == tape.Any }) {
+			b.note("package variable " + g.Name())
+		}
 		i = int32(len(b.p.Data))
 		b.p.Data = append(b.p.Data, words...)
-		if len(words) == 0 {
-			b.fail("uses the address of package variable %s, which is empty", g.Name())
-		}
 		b.data[g] = i
 	}
 	return &spot{base: inData, slot: i}
@@ -83,6 +89,7 @@ func (b *builder) loadGlobal(in *ssa.UnOp, g *ssa.Global) bool {
 	}
 	switch {
 	case !known:
+		b.note("package variable " + g.Name())
 		b.unknown(in)
 	case len(words) == 1:
 		b.vals[in] = val{slot: b.constant(words[0].Kind, words[0].Bits), n: 1}
@@ -92,17 +99,35 @@ func (b *builder) loadGlobal(in *ssa.UnOp, g *ssa.Global) bool {
 	return true
 }
 
-// initialise interprets the initialisers of the package.
+// initialise interprets the initialisers of the package. Functions that they
+// call may read variables themselves; as these are not known by then, such
+// functions are lowered again, and the initialisers interpreted once more.
 func (p *packageLowerer) initialise() {
 	if p.initialised {
 		return
 	}
-	p.initialised = true // also while it goes on: a variable read by then is unknown
+	p.initialised = true
+	waiting := p.queue
+	written := p.writtenGlobals()
+	for range 2 {
+		p.queue, p.early = nil, nil
+		p.interpret(written)
+		p.queue, p.early = p.early, nil
+		if len(p.queue) == 0 {
+			break
+		}
+		p.drain()
+	}
+	p.queue = waiting
+}
+
+// interpret runs the initialisers and notes the values of the variables that
+// are not written anywhere else.
+func (p *packageLowerer) interpret(written map[*ssa.Global]bool) {
 	init := p.ssaPkg.Func("init")
 	if init == nil {
 		return
 	}
-	written := p.writtenGlobals()
 	b := p.newBuilder(init, nil, p.pkg.Path()+".init")
 	b.initials = map[*ssa.Global]*spot{}
 	if why := b.build(); why != "" {
@@ -113,7 +138,9 @@ func (p *packageLowerer) initialise() {
 			p.globals[g] = p.zeroWords(g)
 		}
 	}
+	p.initialising = true
 	p.drain()
+	p.initialising = false
 	b.p.Optimize()
 	m, err := tape.Link(b.p, p.library)
 	if err != nil {

@@ -30,7 +30,8 @@ type Func struct {
 	Name     string       // of the tape, such as "example.org/q.Mul" or "(example.org/q.Vec[float64]).Dot"
 	Program  *tape.Program
 	Reason   string      // why there is no tape
-	Stops    []string    // parts of the function that are not translated
+	Stops    []string    // parts of the function that are not translated: samples that come there are undecided
+	Unknown  []string    // what the function uses that is not known
 	Position []token.Pos // of the places of the program
 }
 
@@ -76,13 +77,15 @@ type packageLowerer struct {
 	exprs    map[token.Pos]ast.Expr
 	result   *Result
 
-	funcs       map[string]*Func // every name requested
-	own         tape.Library     // of this package
-	library     tape.Library     // with those of others
-	queue       []*job
-	facts       map[*types.Package]*Tapes
-	globals     map[*ssa.Global][]tape.Const
-	initialised bool
+	funcs        map[string]*Func // every name requested
+	own          tape.Library     // of this package
+	library      tape.Library     // with those of others
+	queue        []*job
+	facts        map[*types.Package]*Tapes
+	globals      map[*ssa.Global][]tape.Const
+	initialised  bool
+	initialising bool   // the functions that initialisers call are being lowered
+	early        []*job // those of them that use what is not known by then
 }
 
 // job is a function to be lowered.
@@ -295,7 +298,10 @@ func (p *packageLowerer) lower(j *job) {
 		j.into.Reason = "is not translated correctly: " + err.Error()
 		return
 	}
-	j.into.Stops = b.stops
+	j.into.Stops, j.into.Unknown = b.stops, b.unknowns
+	if p.initialising && len(b.unknowns) > 0 {
+		p.early = append(p.early, j)
+	}
 	if !b.p.MayReturn() {
 		j.into.Reason = "never returns"
 		if len(b.stops) > 0 {
@@ -383,6 +389,9 @@ func (ls *layouts) floating(t types.Type) bool {
 
 // admits is the cheap filter: it looks at the types of a package only.
 func admits(pass *analysis.Pass) bool {
+	if isStandard(pass) && pass.Pkg.Path() != "math/cmplx" {
+		return false
+	}
 	ls := layouts{known: map[types.Type]*layout{}}
 	scope := pass.Pkg.Scope()
 	for _, name := range scope.Names() {
@@ -404,6 +413,21 @@ func admits(pass *analysis.Pass) bool {
 		}
 	}
 	return false
+}
+
+// standard are the first elements of the paths of the standard library.
+const standard = " archive bufio bytes cmp compress container context crypto database debug embed encoding errors expvar " +
+	"flag fmt go hash html image index internal io iter log maps math mime net os path plugin reflect regexp runtime simd " +
+	"slices sort strconv strings structs sync syscall testing text time unicode unique unsafe vendor weak "
+
+// isStandard reports whether a package belongs to the standard library. Its
+// numeric functions are those of package math, which tapes know.
+func isStandard(pass *analysis.Pass) bool {
+	if m := pass.Module; m != nil && m.Path != "" && m.Path != "std" {
+		return false
+	}
+	first, _, _ := strings.Cut(pass.Pkg.Path(), "/")
+	return strings.Contains(standard, " "+first+" ")
 }
 
 // signature reports whether a function may deal in floating-point numbers; a
