@@ -91,16 +91,34 @@
 // float32 and float64; and all that was decided wrongly, of six hundred thousand.
 //
 //	                                          3      4      6      9     32     64    wrong
-//	@KINDS@
+//	quaternion, matrix                    69.84  99.25  99.99 100.00 100.00 100.00        0
+//	angles, quaternion                    47.50  94.54  99.86  99.90  99.91 100.00        0
+//	angles, matrix                        56.36  97.64  99.87  99.91  99.91 100.00        1
+//	angles, quaternion, nothing claimed    0.00  93.07  99.92  99.95  99.92 100.00        0
+//	two quaternions                       58.41  98.19  99.99 100.00 100.00 100.00        0
+//	two matrices                          87.30  99.63  99.99  99.99  99.99 100.00        0
+//	rotation vector, quaternion           70.32  99.03  99.92  99.92  99.93 100.00        2
+//	axis and angle, matrix                60.86  90.51  99.90  99.96  99.94 100.00        1
 //
 // The same for six decimals by family, of eight hundred thousand in all; families that
 // decide nothing have to. Below, loops with one edge changed or replaced, and series with
 // one slip or with rates of another motion, noise in every sample, of a hundred thousand each.
 //
 //	                                      right    wrong
-//	@SHAPES@
+//	generic                               99.93        0
+//	within some degrees of identity       91.46        0
+//	within some degrees of an axis map    94.80        0
+//	one axis                              52.90        0
+//	one axis, multiple of 5 degrees       43.27        0
+//	two axes                              77.71        0
+//	axis map                               0.00        0
+//	loop of three to five edges           99.99        4
+//	series, noise 1 % of the rates       100.00        0
+//	series, noise 10 % of the rates      100.00        0
+//	series, noise 30 % of the rates      100.00        0
+//	series, noise 100 % of the rates       0.00        0
 //
-// In all @TOTAL@ pairs nothing that was as claimed was called wrong. The test
+// In all 4.8 million pairs nothing that was as claimed was called wrong. The test
 // that measures this holds the table to it, with fewer cases unless told:
 //
 //	go test ./core/identify -run Confusion -v -timeout 2h -cases 100000

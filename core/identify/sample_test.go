@@ -126,7 +126,7 @@ func (d digits) roundTo(s Statement, unit convention.Unit) Statement {
 	case convention.RotationVector:
 		s.Tolerance = p.RotationVector(s.Claim.Unit)
 	case convention.AxisAngle:
-		s.Tolerance = p.Axis() + p.Angle(s.Claim.Unit)
+		s.Tolerance = p.AxisAngle(s.Claim.Unit)
 	default:
 		s.Tolerance = p.Angles(s.Claim.Unit)
 	}
