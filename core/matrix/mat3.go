@@ -41,8 +41,9 @@ func (m Mat3) Mul(n Mat3) (p Mat3) {
 	return p
 }
 
-// mul, like apply below, takes pointers so that the method is short enough to
-// be inlined and no matrix is copied onto the stack.
+// mul takes pointers, as the other functions behind methods in this package do:
+// so the method is short enough to be inlined, and matrices are not copied from
+// call to call.
 func mul(p, m, n *Mat3) {
 	for i := range p {
 		x, y, z := m[i][0], m[i][1], m[i][2]

@@ -9,17 +9,20 @@ import (
 // FromRotor returns the matrix of a unit rotor as an active rotation, whose
 // product with v is r v r~. The passive matrix, which re-expresses a fixed
 // vector in turned axes, is its transpose.
-func FromRotor(r rotor.Rotor) Mat3 {
+func FromRotor(r rotor.Rotor) (m Mat3) {
+	fromRotor(&m, r)
+	return m
+}
+
+func fromRotor(m *Mat3, r rotor.Rotor) {
 	s, a, b, c := r.S, r.E23, r.E31, r.E12
 	a2, b2, c2 := 2*a, 2*b, 2*c
 	aa, bb, cc := a*a2, b*b2, c*c2
 	ab, bc, ca := a*b2, b*c2, c*a2
 	sa, sb, sc := s*a2, s*b2, s*c2
-	return Mat3{
-		{1 - bb - cc, ab + sc, ca - sb},
-		{ab - sc, 1 - aa - cc, bc + sa},
-		{ca + sb, bc - sa, 1 - aa - bb},
-	}
+	m[0] = [3]float64{1 - bb - cc, ab + sc, ca - sb}
+	m[1] = [3]float64{ab - sc, 1 - aa - cc, bc + sa}
+	m[2] = [3]float64{ca + sb, bc - sa, 1 - aa - bb}
 }
 
 // Rotor returns the unit rotor, or its negative, of a rotation matrix, taken as
