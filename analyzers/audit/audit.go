@@ -86,6 +86,7 @@ type found struct {
 	rows     int64
 	skipped  []report.Skipped // unreadable files
 	failures []report.Failure
+	limited  []report.Failure // what was read only in part
 }
 
 // read reads all files. The list is in the order of the tree; Go files, which
@@ -146,7 +147,12 @@ func (a *audit) readGo(ctx context.Context, files []gosource.File) (*found, erro
 	a.result.Report.Audited.GoFiles = r.Files
 	code := &found{kind: goFile, values: r.Values}
 	for _, f := range r.Failures {
-		code.failures = append(code.failures, report.Failure{Place: f.Place, Message: f.Err.Error()})
+		failed := report.Failure{Place: f.Place, Message: f.Err.Error()}
+		if f.Partial {
+			code.limited = append(code.limited, failed)
+		} else {
+			code.failures = append(code.failures, failed)
+		}
 	}
 	return code, nil
 }
@@ -157,6 +163,7 @@ func (a *audit) judge(list []*found) {
 	rigs := map[string][]*rules.Value{}
 	for _, f := range list {
 		out.Failed = append(out.Failed, f.failures...)
+		out.Limited = append(out.Limited, f.limited...)
 		out.Unreadable = append(out.Unreadable, f.skipped...)
 		a.count(f)
 		for _, v := range f.values {

@@ -6,6 +6,7 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+	"regexp"
 	"slices"
 	"strings"
 
@@ -78,6 +79,11 @@ func failed(k kind, f walk.File, err error) *found {
 	return &found{kind: k, failures: []report.Failure{failure(rules.Place{Path: f.Path}, err)}}
 }
 
+// speaksOfOrientation is what a file says if it may hold orientations. A file
+// met on the way that cannot be parsed, such as a template or a test's broken
+// input, is worth a failed audit only if it says so.
+var speaksOfOrientation = regexp.MustCompile(`(?i)quat|rot(at|or|mat)|euler|roll|pitch|yaw|orient|attitude|rpy|ypr|dcm|extrinsic|transform|ax[ei]s|pose|frame|[RTq]_[a-z]`)
+
 func readConfig(_ context.Context, f walk.File) *found {
 	if err := source.CheckSize(f.Path, f.Size); err != nil {
 		return failed(configFile, f, err)
@@ -87,12 +93,15 @@ func readConfig(_ context.Context, f walk.File) *found {
 		return failed(configFile, f, err)
 	}
 	r, err := config.Read(f.Path, text)
-	if err != nil {
+	switch {
+	case err != nil && !f.Asked && !speaksOfOrientation.Match(text):
+		return &found{kind: other}
+	case err != nil:
 		return failed(configFile, f, err)
 	}
 	result := &found{kind: configFile, values: r.Values}
 	for _, w := range r.Warnings {
-		result.failures = append(result.failures, report.Failure{Place: w.Place, Message: w.Message})
+		result.limited = append(result.limited, report.Failure{Place: w.Place, Message: w.Message})
 	}
 	return result
 }

@@ -32,7 +32,7 @@ func readLog(ctx context.Context, f walk.File, head []byte, r io.Reader) *found 
 		result.kind = other
 	}
 	if read.BadRows > 0 {
-		result.failures = append(result.failures, badRows(f.Path, read))
+		result.limited = append(result.limited, badRows(f.Path, read))
 	}
 	if err != nil && ctx.Err() == nil {
 		result.failures = append(result.failures, failure(rules.Place{Path: f.Path}, err))

@@ -30,6 +30,7 @@ type File struct {
 	Name   string // as the operating system opens it
 	Size   int64
 	Policy *policy.Policy // of the nearest dextral.toml at or above it
+	Asked  bool           // named by the user, not met on the way
 }
 
 // Tree is the result of a walk.
@@ -111,6 +112,9 @@ func (w *walker) root(ctx context.Context, arg string) error {
 	w.tree.Roots = append(w.tree.Roots, sc)
 	if !info.IsDir() {
 		w.file(name, info.Size(), sc)
+		if n := len(w.tree.Files); n > 0 && w.tree.Files[n-1].Name == name {
+			w.tree.Files[n-1].Asked = true
+		}
 		return ctx.Err()
 	}
 	return w.directory(ctx, name, ig, sc)

@@ -16,6 +16,7 @@ type Report struct {
 	Undecided  []Undecided      `json:"undecided"`
 	Unreadable []Skipped        `json:"unreadable"`
 	Failed     []Failure        `json:"failed"`
+	Limited    []Failure        `json:"limited"` // audited as far as it could be read
 	LeftOut    LeftOut          `json:"leftOut"`
 	Gate       policy.Gate      `json:"gate"`
 }
@@ -67,9 +68,11 @@ func (r *Report) Sort() {
 	slices.SortStableFunc(r.Unreadable, func(a, b Skipped) int {
 		return cmp.Or(strings.Compare(a.Path, b.Path), strings.Compare(a.Why, b.Why))
 	})
-	slices.SortStableFunc(r.Failed, func(a, b Failure) int {
-		return cmp.Or(a.Place.Compare(b.Place), strings.Compare(a.Message, b.Message))
-	})
+	for _, list := range [][]Failure{r.Failed, r.Limited} {
+		slices.SortStableFunc(list, func(a, b Failure) int {
+			return cmp.Or(a.Place.Compare(b.Place), strings.Compare(a.Message, b.Message))
+		})
+	}
 }
 
 // Tally counts findings that are not waived by level, and the waived ones.

@@ -45,6 +45,11 @@ func (p *printer) summary(r *Report) {
 			p.section("", clean(f.Place.String())+": "+clean(f.Message))
 		}
 	}
+	if n := len(r.Limited); n > 0 {
+		p.section("partly", plural(n, "input")+" audited only as far as could be read")
+		groups := byReason(r.Limited, func(f Failure) (why, where string) { return clean(f.Message), clean(f.Place.String()) })
+		p.reasons(groups)
+	}
 	if text := leftOutText(r.LeftOut); text != "" {
 		p.section("left out", text)
 	}
