@@ -157,6 +157,16 @@ func quotient(op Op, a, b uint64) uint64 {
 	return a % b
 }
 
+// complexDiv divides complex numbers, whose parts are words.
+func complexDiv(d, a, b []column, lanes []uint8) {
+	for _, l := range lanes {
+		x := complex(float(a[0][l&63]), float(a[1][l&63]))
+		y := complex(float(b[0][l&63]), float(b[1][l&63]))
+		z := x / y
+		d[0][l&63], d[1][l&63] = word(real(z)), word(imag(z))
+	}
+}
+
 // convertOp converts words from one kind to another.
 func convertOp(op Op, k Kind, d, a *column, lanes []uint8) {
 	for _, l := range lanes {

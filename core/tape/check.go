@@ -61,6 +61,11 @@ func (c *checker) tables() error {
 			return fmt.Errorf("call %d: %w", i, err)
 		}
 	}
+	for i, d := range p.Data {
+		if d.Kind == Addr && d.Bits > uint64(len(p.Data)) {
+			return fmt.Errorf("word %d of the data is the address of word %d of %d", i, d.Bits-1, len(p.Data))
+		}
+	}
 	for i, r := range p.Returns {
 		if err := c.ranges(r); err != nil {
 			return fmt.Errorf("return %d: %w", i, err)

@@ -8,6 +8,20 @@ func (m *Machine) Run(b *Batch) {
 	}
 }
 
+// Peek reads the word at an address that a sample of the batch run last, which
+// must have been one of the last [Lanes], gave as a result. It reports whether
+// there is such a word and its value is known.
+func (m *Machine) Peek(sample int, address uint64) (word uint64, ok bool) {
+	lane := uint8(sample % Lanes)
+	if address == 0 || address >= uint64(len(m.mem)) {
+		return 0, false
+	}
+	if m.unk != nil && m.marked(int64(address), lane) {
+		return 0, false
+	}
+	return m.get(int64(address), lane), true
+}
+
 // runLanes evaluates n samples from first on, one in each lane.
 func (m *Machine) runLanes(b *Batch, first, n int) {
 	clear(m.taken)

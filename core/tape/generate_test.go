@@ -142,7 +142,7 @@ func (g *generator) arithmetic() {
 			op = AddF + Op(g.IntN(int(LeF)))
 		}
 		info := op.info()
-		if op >= Copy && op < firstMath || info.dst.role != write || op == Recast {
+		if op >= Copy && op < firstMath || info.dst.role != write || op == Recast || op == DivC {
 			continue
 		}
 		if op.IsMath() && g.IntN(8) > 0 {
@@ -194,7 +194,7 @@ func (g *generator) arithmetic() {
 
 // memory reads or writes an object, or makes one.
 func (g *generator) memory() {
-	switch g.IntN(12) {
+	switch g.IntN(13) {
 	case 0:
 		g.emit(Instr{Op: Copy, Dst: g.object + int32(g.IntN(objectWords)), A: g.pick(F64), C: 1})
 	case 1:
@@ -223,6 +223,11 @@ func (g *generator) memory() {
 		g.emit(Instr{Op: Store, Dst: 1, A: d, B: g.pick(F64), C: 1})
 	case 8:
 		g.slices()
+	case 12:
+		d := g.p.Slots
+		g.emit(Instr{Op: DivC, Dst: d, A: g.object, B: g.object + 2})
+		g.define(F64)
+		g.define(F64)
 	case 9:
 		g.emit(Instr{Op: Copy, Dst: g.held, A: g.pick(Addr), C: 1})
 	case 10:

@@ -199,7 +199,12 @@ func (k *linker) prepare(p *Program) linked {
 	for i := range p.Branches {
 		k.branches = append(k.branches, BranchRef{p, &p.Branches[i]})
 	}
-	k.data = append(k.data, p.Data...)
+	for _, c := range p.Data {
+		if c.Kind == Addr && c.Bits != 0 {
+			c.Bits += uint64(data - 1)
+		}
+		k.data = append(k.data, c)
+	}
 	k.unknown = k.unknown || slices.ContainsFunc(p.Data, func(c Const) bool { return c.Kind == Any })
 	l.code = make([]step, len(p.Code))
 	for i, in := range p.Code {

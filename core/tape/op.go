@@ -60,6 +60,8 @@ const (
 	FtoI
 	GtoI
 	Recast
+	// complex128
+	DivC
 	// moves and memory
 	Copy
 	Zero
@@ -172,6 +174,8 @@ func buildOpTable() []opInfo {
 		FtoI:   {name: "trunc.f64", dst: wI, a: rF, c: operand{role: target}},
 		GtoI:   {name: "trunc.f32", dst: wI, a: rG, c: operand{role: target}},
 		Recast: {name: "recast", dst: wW, a: rW, c: operand{role: target}},
+
+		DivC: {name: "div.c128", dst: operand{role: write, words: 2}, a: operand{role: read, class: F64, words: 2}, b: operand{role: read, class: F64, words: 2}},
 
 		Copy: {name: "copy", dst: wide, a: from, c: cnt}, Zero: {name: "zero", dst: wide, c: cnt}, Unknown: {name: "unknown", dst: wide, c: cnt},
 		FrameAddr: {name: "frame", dst: wP, a: operand{role: frame, wide: true}, c: cnt},

@@ -45,7 +45,7 @@ type Program struct {
 	Sig      Signature
 	Slots    int32 // words of the frame
 	Consts   []Const
-	Data     []Const // words that are only read, reached by address
+	Data     []Const // words that are only read, reached by address; one of kind Addr is 0 or an index here plus one
 	Code     []Instr
 	Blocks   []int32 // index into Code of the first instruction of each block
 	Calls    []CallSite

@@ -389,11 +389,13 @@ func (r *reference) value(in *Instr, w []any) {
 		if x.o.role != read {
 			continue
 		}
-		v := w[x.v]
-		if v == nil && x.o.class != Any {
-			v = fromWord(x.o.class, 0)
+		for k := range max(x.o.words, 1) {
+			v := w[x.v+int32(k)]
+			if v == nil && x.o.class != Any {
+				v = fromWord(x.o.class, 0)
+			}
+			args = append(args, v)
 		}
-		args = append(args, v)
 	}
 	for i, a := range args {
 		if a == nil {
@@ -413,6 +415,11 @@ func (r *reference) value(in *Instr, w []any) {
 			}
 			return
 		}
+	}
+	if in.Op == DivC {
+		z := complex(args[0].(float64), args[1].(float64)) / complex(args[2].(float64), args[3].(float64))
+		w[in.Dst], w[in.Dst+1] = real(z), imag(z)
+		return
 	}
 	switch {
 	case in.Op.IsMath():

@@ -54,6 +54,8 @@ func (m *Machine) advance(g *group) {
 			convertOp(s.op, Kind(s.c), &r[s.dst], m.col(r, s.a), lanes)
 		case famMath:
 			m.math(s, r, lanes)
+		case famComplex:
+			complexDiv(r[s.dst:], m.cols(r, s.a, 2), m.cols(r, s.b, 2), lanes)
 		case famCopy:
 			m.copyOp(s, r, g)
 		case famMemory:
@@ -262,6 +264,7 @@ const (
 	famDivide
 	famConvert
 	famMath
+	famComplex
 	famCopy
 	famMemory
 	famAllocate
@@ -281,6 +284,7 @@ var family = func() [256]uint8 {
 	set(famDivide, DivI, RemU)
 	set(famConvert, FtoG, Recast)
 	t[Wrap] = famConvert
+	t[DivC] = famComplex
 	set(famCopy, Copy, DataAddr)
 	set(famMemory, Load, BoundSlice)
 	set(famAllocate, New, Append)

@@ -87,7 +87,12 @@ func (m *Machine) spreadValue(g *group, s *step) {
 		v int32
 	}{{info.a, s.a}, {info.b, s.b}, {info.c, s.c}} {
 		if x.o.role == read {
-			marks |= m.markOf(g.base, x.v)
+			for k := range int32(max(x.o.words, 1)) {
+				if x.v < 0 {
+					break // constants
+				}
+				marks |= m.markOf(g.base, x.v+k)
+			}
 		}
 	}
 	for k := range int32(max(info.dst.words, 1)) {

@@ -176,8 +176,8 @@ func isComplex(t types.Type) bool {
 	return ok && basic.Info()&types.IsComplex != 0
 }
 
-// complexOp is complex arithmetic as the compiler does it, part by part.
-// Division, which heeds infinities, is not translated.
+// complexOp is complex arithmetic as the compiler does it: part by part, but
+// for division, which heeds infinities and always is that of complex128.
 func (b *builder) complexOp(in *ssa.BinOp, l *layout) {
 	x, y := b.value(in.X).slot, b.value(in.Y).slot
 	k := l.fields[0].Kind
@@ -195,6 +195,24 @@ func (b *builder) complexOp(in *ssa.BinOp, l *layout) {
 		b.emit(tape.Instr{Op: sub, Dst: d.slot, A: re[0], B: re[1]})
 		b.emit(tape.Instr{Op: add, Dst: d.slot + 1, A: im[0], B: im[1]})
 	default:
-		b.fail("divides complex numbers")
+		d := b.define(in)
+		if k == tape.F64 {
+			b.emit(tape.Instr{Op: tape.DivC, Dst: d.slot, A: x, B: y})
+			return
+		}
+		q := b.temp(2)
+		b.emit(tape.Instr{Op: tape.DivC, Dst: q, A: b.widened(x), B: b.widened(y)})
+		for i := range int32(2) {
+			b.emit(tape.Instr{Op: tape.FtoG, Dst: d.slot + i, A: q + i})
+		}
 	}
+}
+
+// widened is a complex64 as a complex128.
+func (b *builder) widened(x int32) int32 {
+	d := b.temp(2)
+	for i := range int32(2) {
+		b.emit(tape.Instr{Op: tape.GtoF, Dst: d + i, A: x + i})
+	}
+	return d
 }

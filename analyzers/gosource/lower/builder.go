@@ -45,13 +45,16 @@ type val struct {
 	at   *spot // for an address that is known better than as a word
 }
 
-// spot is an address: of a slot of the frame, of a word of the data, or the
-// address in a slot plus an offset.
+// spot is an address: in the frame or the data, or of the address in a slot,
+// plus an offset in words.
 type spot struct {
 	base spotBase
 	slot int32 // slot, or index into the data
-	off  int32 // words; only with inSlot
-	size int32 // words of the object it points into, from slot on; only with inFrame
+	off  int32
+	// In the frame, slot is the first of size slots that the address may be
+	// moved within, and whole the object that they belong to.
+	size  int32
+	whole tape.Range
 }
 
 type spotBase uint8
@@ -61,6 +64,43 @@ const (
 	inFrame
 	inData
 )
+
+// objectAt is the address of a new object in the frame.
+func objectAt(slot, size int32) *spot {
+	return &spot{base: inFrame, slot: slot, size: size, whole: tape.Range{Slot: slot, N: size}}
+}
+
+// field is the address of a part of size words, from which one cannot get to
+// other parts.
+func (a *spot) field(off, size int32) *spot {
+	c := *a
+	c.off += off
+	if a.base == inFrame {
+		c.slot, c.off, c.size = a.slot+c.off, 0, size
+	}
+	return &c
+}
+
+// element is the address of an element of an array, from which one may get to
+// the others.
+func (a *spot) element(off int32) *spot {
+	c := *a
+	c.off += off
+	return &c
+}
+
+// array is the address of an array of size words, within which one may move.
+func (a *spot) array(size int32) *spot { return a.field(0, size) }
+
+// free is the same address, from which one may get anywhere in the object.
+func (a *spot) free() *spot {
+	c := *a
+	if a.base == inFrame {
+		c.off += a.slot - a.whole.Slot
+		c.slot, c.size = a.whole.Slot, a.whole.N
+	}
+	return &c
+}
 
 // unsupported is what a part of a function cannot be translated for. It ends
 // the block, and the rest of the function stays.

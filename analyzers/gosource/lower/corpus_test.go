@@ -80,18 +80,6 @@ func allNumeric(f *Func) bool {
 	return floats
 }
 
-// numbers reports whether a type is numbers, or the address of numbers.
-func (ls *layouts) numbers(t types.Type) bool {
-	switch u := t.Underlying().(type) {
-	case *types.Pointer:
-		t = u.Elem()
-	case *types.Slice:
-		t = u.Elem()
-	}
-	l := ls.of(t)
-	return l != nil && l.numeric
-}
-
 // trial evaluates a function on a few samples and says what happens.
 func trial(r *Result, f *Func) string {
 	if f.Program == nil {

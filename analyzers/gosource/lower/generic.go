@@ -128,12 +128,13 @@ func argsText(args []types.Type) string {
 	return "[" + strings.Join(texts, ",") + "]"
 }
 
-// floatArgs returns the instances of a generic function that are worth
-// lowering though nobody may ask for them: every parameter float64, and every
-// one float32, where the constraints allow it.
+// floatArgs returns the instances of a generic function that are lowered though
+// nobody may ask for them: every parameter float64, every one float32, and, for
+// those who may call it elsewhere, every one int, where the constraints allow
+// it.
 func floatArgs(params *types.TypeParamList) [][]types.Type {
 	var all [][]types.Type
-	for _, basic := range []types.BasicKind{types.Float64, types.Float32} {
+	for _, basic := range []types.BasicKind{types.Float64, types.Float32, types.Int} {
 		args := make([]types.Type, params.Len())
 		ok := true
 		for i := range args {

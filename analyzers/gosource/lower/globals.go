@@ -18,8 +18,7 @@ func (p *packageLowerer) globalWords(g *ssa.Global) []tape.Const {
 	if words, ok := p.globals[g]; ok {
 		return words
 	}
-	t := g.Type().Underlying().(*types.Pointer).Elem()
-	l := p.layouts.of(t)
+	l := p.layouts.of(variableType(g))
 	if l == nil {
 		p.globals[g] = nil
 		return nil
@@ -47,7 +46,7 @@ func (p *packageLowerer) importedGlobal(g *ssa.Global, l *layout) []tape.Const {
 		return nil
 	}
 	words := fact.global(g.Name())
-	if len(words) != len(l.fields) {
+	if len(words) < len(l.fields) {
 		return nil
 	}
 	return words
@@ -71,7 +70,12 @@ func (b *builder) global(g *ssa.Global) *spot {
 			b.note("package variable " + g.Name())
 		}
 		i = int32(len(b.p.Data))
-		b.p.Data = append(b.p.Data, words...)
+		for _, w := range words {
+			if w.Kind == tape.Addr && w.Bits != 0 {
+				w.Bits += uint64(i)
+			}
+			b.p.Data = append(b.p.Data, w)
+		}
 		b.data[g] = i
 	}
 	return &spot{base: inData, slot: i}
@@ -83,6 +87,9 @@ func (b *builder) loadGlobal(in *ssa.UnOp, g *ssa.Global) bool {
 		return false
 	}
 	words := b.globalWords(g)
+	if l := b.layout(variableType(g)); l != nil && len(words) > len(l.fields) {
+		words = words[:len(l.fields)]
+	}
 	known := words != nil
 	for _, w := range words {
 		known = known && w.Kind != tape.Any
@@ -91,7 +98,7 @@ func (b *builder) loadGlobal(in *ssa.UnOp, g *ssa.Global) bool {
 	case !known:
 		b.note("package variable " + g.Name())
 		b.unknown(in)
-	case len(words) == 1:
+	case len(words) == 1 && words[0].Kind != tape.Addr:
 		b.vals[in] = val{slot: b.constant(words[0].Kind, words[0].Bits), n: 1}
 	default:
 		return false
@@ -153,21 +160,26 @@ func (p *packageLowerer) interpret(written map[*ssa.Global]bool) {
 	}
 	out := 0
 	for i, g := range b.vars {
-		fields := b.p.Sig.Results[i].Fields
-		words := make([]tape.Const, len(fields))
-		for k, f := range fields {
-			if batch.Known(0, out) && !written[g] {
-				words[k] = tape.Const{Kind: f.Kind, Bits: batch.OutBits(0, out)}
-			}
-			out++
+		n := len(b.p.Sig.Results[i].Fields)
+		if written[g] {
+			p.globals[g] = make([]tape.Const, n)
+		} else {
+			snap := snapshot{m: m, ls: &p.layouts}
+			snap.addWords(variableType(g), func(k int) (uint64, bool) {
+				return batch.OutBits(0, out+k), batch.Known(0, out+k)
+			})
+			p.globals[g] = snap.words
 		}
-		p.globals[g] = words
+		out += n
 	}
 }
 
+// variableType is the type of a package variable.
+func variableType(g *ssa.Global) types.Type { return g.Type().Underlying().(*types.Pointer).Elem() }
+
 // zeroWords returns the words of a variable that nobody sets.
 func (p *packageLowerer) zeroWords(g *ssa.Global) []tape.Const {
-	l := p.layouts.of(g.Type().Underlying().(*types.Pointer).Elem())
+	l := p.layouts.of(variableType(g))
 	if l == nil {
 		return nil
 	}
@@ -183,13 +195,15 @@ func (b *builder) initialSpot(g *ssa.Global) *spot {
 	if s, ok := b.initials[g]; ok {
 		return s
 	}
-	t := g.Type().Underlying().(*types.Pointer).Elem()
+	t := variableType(g)
 	n := b.words(t)
-	s := &spot{base: inFrame, slot: b.temp(n), size: n}
+	s := objectAt(b.temp(n), n)
 	b.initials[g] = s
 	l := b.layout(t)
-	if g.Pkg != b.ssaPkg || !l.numeric && !isError(t) || n == 0 {
-		b.blocks[0] = append([]tape.Instr{{Op: tape.Unknown, Dst: s.slot, C: n}}, b.blocks[0]...)
+	if g.Pkg != b.ssaPkg || n == 0 {
+		if n > 0 {
+			b.blocks[0] = append([]tape.Instr{{Op: tape.Unknown, Dst: s.slot, C: n}}, b.blocks[0]...)
+		}
 		return s
 	}
 	b.blocks[0] = append([]tape.Instr{{Op: tape.Zero, Dst: s.slot, C: n}}, b.blocks[0]...)
@@ -241,6 +255,10 @@ func globalOf(v ssa.Value) *ssa.Global {
 			v = x.X
 		case *ssa.IndexAddr:
 			v = x.X
+		case *ssa.Slice:
+			v = x.X
+		case *ssa.UnOp:
+			v = x.X // what the variable points to
 		default:
 			return nil
 		}

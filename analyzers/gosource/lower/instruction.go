@@ -52,6 +52,8 @@ func (b *builder) instruction(in ssa.Instruction) {
 		b.makeInterface(in, in.X)
 	case *ssa.MakeInterface:
 		b.makeInterface(in, in.X)
+	case *ssa.SliceToArrayPointer:
+		b.arrayPointer(in)
 	case *ssa.MakeClosure:
 		// Translated where it is called; as a value it is opaque.
 		b.vals[in] = val{slot: b.constant(tape.Opaque, 1), n: 1}
@@ -85,8 +87,6 @@ func kindOfInstruction(in ssa.Instruction) string {
 		return "ranges over a string or map"
 	case *ssa.TypeAssert:
 		return "asserts the type of an interface"
-	case *ssa.SliceToArrayPointer:
-		return "converts a slice to an array"
 	default:
 		return "does " + in.String()
 	}
@@ -186,6 +186,10 @@ func (b *builder) convert(in, x ssa.Value) {
 		b.changeType(in, x)
 		return
 	}
+	if isPointer(b.typeOf(x)) && isPointer(b.typeOf(in)) {
+		b.unsafePointer(in, x)
+		return
+	}
 	if !to.numeric {
 		// A string: nobody looks into it. Anything else must be kept apart.
 		if basic, ok := b.typeOf(in).Underlying().(*types.Basic); ok && basic.Info()&types.IsString != 0 {
@@ -202,6 +206,64 @@ func (b *builder) convert(in, x ssa.Value) {
 		b.scalar(from.fields[i].Kind, to.fields[i].Kind, v.slot+int32(i), d+int32(i))
 	}
 	b.vals[in] = val{slot: d, n: to.words()}
+}
+
+func isPointer(t types.Type) bool {
+	switch u := t.Underlying().(type) {
+	case *types.Pointer:
+		return true
+	case *types.Basic:
+		return u.Kind() == types.UnsafePointer
+	}
+	return false
+}
+
+// unsafePointer converts between addresses by way of unsafe.Pointer. It is
+// translated where both ends are numbers of one width throughout, such as an
+// array and its first element.
+func (b *builder) unsafePointer(in, x ssa.Value) {
+	if to, ok := b.typeOf(in).Underlying().(*types.Pointer); ok {
+		c, ok := x.(*ssa.Convert)
+		if !ok {
+			b.fail("converts %v to %v", b.typeOf(x), b.typeOf(in))
+		}
+		from, ok := b.typeOf(c.X).Underlying().(*types.Pointer)
+		if !ok || b.uniform(from.Elem()) == 0 || b.uniform(from.Elem()) != b.uniform(to.Elem()) {
+			b.fail("converts %v to %v", b.typeOf(c.X), b.typeOf(in))
+		}
+	}
+	v, ok := b.vals[x]
+	if !ok {
+		v = b.find(x)
+	}
+	if v.at != nil {
+		v.at = v.at.free()
+	}
+	b.vals[in] = v
+}
+
+// uniform returns the width in bits of the numbers that t consists of, which
+// must be held without extension, or 0.
+func (b *builder) uniform(t types.Type) int {
+	l := b.layout(t)
+	if l == nil {
+		return 0
+	}
+	width := 0
+	for _, f := range l.fields {
+		w := 0
+		switch f.Kind {
+		case tape.F64, tape.U64, tape.I64:
+			w = 64
+		case tape.F32, tape.U32:
+			w = 32
+		}
+		if w == 0 || width != 0 && w != width {
+			return 0
+		}
+		width = w
+	}
+	return width
 }
 
 // scalar converts one number of kind from in slot s to kind to in slot d.

@@ -108,6 +108,8 @@ func (l *layout) basic(b *types.Basic, path string) bool {
 		l.fields = append(l.fields, tape.Field{Path: path + ".real", Kind: k}, tape.Field{Path: path + ".imag", Kind: k})
 	case types.Invalid:
 		return false
+	case types.UnsafePointer:
+		l.other(path, tape.Addr)
 	default:
 		k, ok := basicKinds[b.Kind()]
 		if !ok {

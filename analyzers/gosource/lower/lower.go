@@ -5,6 +5,7 @@ import (
 	"go/token"
 	"go/types"
 	"reflect"
+	"slices"
 	"strings"
 
 	"golang.org/x/tools/go/analysis"
@@ -56,6 +57,7 @@ func run(pass *analysis.Pass) (any, error) {
 	p := newPackage(pass, result)
 	p.declared()
 	p.drain()
+	p.initialise()
 	p.finish()
 	if fact := p.export(); len(fact.Names)+len(fact.Globals) > 0 {
 		pass.ExportPackageFact(fact)
@@ -177,10 +179,13 @@ func (p *packageLowerer) declare(obj *types.Func, d *ast.FuncDecl, fn *ssa.Funct
 		if args != nil {
 			e = newEnv(p.ctx, fn.TypeParams(), args)
 		}
-		if !p.deals(fn.Signature, e) {
-			continue
+		switch {
+		case p.deals(fn.Signature, e) && (args == nil || args[0] != types.Typ[types.Int]):
+			p.add(fn, e, nameOf(obj, args), obj, d, args)
+		case p.onlyNumbers(fn.Signature, e):
+			// Not worth a look by itself, but others may call it.
+			p.add(fn, e, nameOf(obj, args), obj, nil, args)
 		}
-		p.add(fn, e, nameOf(obj, args), obj, d, args)
 	}
 }
 
@@ -224,9 +229,22 @@ func (p *packageLowerer) request(fn *ssa.Function, e *env) string {
 	if len(body.Blocks) > 0 {
 		p.add(body, e, name, obj, nil, args)
 	} else if obj != nil && obj.Pkg() != nil {
-		p.fetch(obj.Pkg(), name)
+		if p.fetch(obj.Pkg(), name); p.library[name] == nil && len(args) > 0 {
+			// An instance for a named type computes what that for its
+			// underlying type does, unless methods come in.
+			name = nameOf(obj, underlying(args))
+			p.fetch(obj.Pkg(), name)
+		}
 	}
 	return name
+}
+
+func underlying(args []types.Type) []types.Type {
+	out := make([]types.Type, len(args))
+	for i, a := range args {
+		out[i] = a.Underlying()
+	}
+	return out
 }
 
 // fetch gets the tape of an imported function, and of what it calls, from the
@@ -313,6 +331,22 @@ func (p *packageLowerer) lower(j *job) {
 	p.own[j.name], p.library[j.name] = b.p, b.p
 }
 
+// noteCallees adds the functions that a tape calls and nobody knows to what is
+// unknown to it.
+func (p *packageLowerer) noteCallees() {
+	for _, f := range p.funcs {
+		if f.Program == nil {
+			continue
+		}
+		for i := range f.Program.Calls {
+			name := f.Program.Calls[i].Callee
+			if what := "function " + name; p.library[name] == nil && !slices.Contains(f.Unknown, what) {
+				f.Unknown = append(f.Unknown, what)
+			}
+		}
+	}
+}
+
 // finish withdraws tapes that cannot return because of what they call.
 func (p *packageLowerer) finish() {
 	for changed := true; changed; {
@@ -328,6 +362,7 @@ func (p *packageLowerer) finish() {
 			changed = true
 		}
 	}
+	p.noteCallees()
 }
 
 // nameOf names the tape of a function.
@@ -356,6 +391,34 @@ func (p *packageLowerer) literalName(fn *ssa.Function, e *env) string {
 // deals reports whether a signature deals in floating-point numbers, directly
 // or by address.
 func (p *packageLowerer) deals(sig *types.Signature, e *env) bool {
+	return slices.ContainsFunc(variables(sig), func(v *types.Var) bool { return p.layouts.floating(e.subst(v.Type())) })
+}
+
+// onlyNumbers reports whether all parameters and results are numbers, by value
+// or address.
+func (p *packageLowerer) onlyNumbers(sig *types.Signature, e *env) bool {
+	for _, v := range variables(sig) {
+		if !p.layouts.numbers(e.subst(v.Type())) {
+			return false
+		}
+	}
+	return true
+}
+
+// numbers reports whether a type is numbers, or the address of numbers.
+func (ls *layouts) numbers(t types.Type) bool {
+	switch u := t.Underlying().(type) {
+	case *types.Pointer:
+		t = u.Elem()
+	case *types.Slice:
+		t = u.Elem()
+	}
+	l := ls.of(t)
+	return l != nil && l.numeric
+}
+
+// variables lists receiver, parameters and results.
+func variables(sig *types.Signature) []*types.Var {
 	var vars []*types.Var
 	if r := sig.Recv(); r != nil {
 		vars = append(vars, r)
@@ -366,12 +429,7 @@ func (p *packageLowerer) deals(sig *types.Signature, e *env) bool {
 	for i := range sig.Results().Len() {
 		vars = append(vars, sig.Results().At(i))
 	}
-	for _, v := range vars {
-		if p.layouts.floating(e.subst(v.Type())) {
-			return true
-		}
-	}
-	return false
+	return vars
 }
 
 // floating reports whether a type is numbers, or the address of numbers, some
@@ -389,8 +447,8 @@ func (ls *layouts) floating(t types.Type) bool {
 
 // admits is the cheap filter: it looks at the types of a package only.
 func admits(pass *analysis.Pass) bool {
-	if isStandard(pass) && pass.Pkg.Path() != "math/cmplx" {
-		return false
+	if path := pass.Pkg.Path(); path == "math/bits" || isStandard(pass) && path != "math/cmplx" {
+		return path == "math/bits"
 	}
 	ls := layouts{known: map[types.Type]*layout{}}
 	scope := pass.Pkg.Scope()

@@ -1,6 +1,7 @@
 package lower
 
 import (
+	"go/constant"
 	"go/types"
 
 	"golang.org/x/tools/go/ssa"
@@ -18,7 +19,7 @@ func (b *builder) alloc(v *ssa.Alloc) {
 		return
 	}
 	s := b.temp(n)
-	b.vals[v] = val{n: 1, at: &spot{base: inFrame, slot: s, size: n}}
+	b.vals[v] = val{n: 1, at: objectAt(s, n)}
 	if n > 0 {
 		b.emit(tape.Instr{Op: tape.Zero, Dst: s, C: n})
 	}
@@ -128,7 +129,7 @@ func (b *builder) fieldAddr(v *ssa.FieldAddr) {
 	t := b.typeOf(v.X).Underlying().(*types.Pointer).Elem()
 	a := b.address(v.X)
 	f := t.Underlying().(*types.Struct).Field(v.Field).Type()
-	b.vals[v] = val{n: 1, at: a.plus(b.fieldOffset(t, v.Field), b.words(f))}
+	b.vals[v] = val{n: 1, at: a.field(b.fieldOffset(t, v.Field), b.words(f))}
 }
 
 // indexAddr is the address of an element of an array or slice.
@@ -137,9 +138,9 @@ func (b *builder) indexAddr(v *ssa.IndexAddr) {
 	case *types.Pointer:
 		array := t.Elem().Underlying().(*types.Array)
 		n := b.words(array.Elem())
-		a := b.address(v.X)
+		a := b.address(v.X).array(n * int32(array.Len()))
 		if i, ok := constIndex(v.Index); ok && i >= 0 && i < array.Len() {
-			b.vals[v] = val{n: 1, at: a.plus(int32(i)*n, n)}
+			b.vals[v] = val{n: 1, at: a.element(int32(i) * n)}
 			return
 		}
 		base := b.addressWord(a)
@@ -172,8 +173,12 @@ func constIndex(v ssa.Value) (int64, bool) {
 	return c.Int64(), true
 }
 
-// index is an element of an array that is a value.
+// index is an element of an array that is a value, or of a constant string.
 func (b *builder) index(v *ssa.Index) {
+	if c, ok := v.X.(*ssa.Const); ok && c.Value != nil && c.Value.Kind() == constant.String {
+		b.indexString(v, constant.StringVal(c.Value))
+		return
+	}
 	array, ok := b.typeOf(v.X).Underlying().(*types.Array)
 	if !ok {
 		b.fail("indexes a %v", b.typeOf(v.X))
@@ -187,10 +192,33 @@ func (b *builder) index(v *ssa.Index) {
 	// An address is needed, and so a copy that has one.
 	s := b.temp(x.n)
 	b.emit(tape.Instr{Op: tape.Copy, Dst: s, A: x.slot, C: x.n})
-	base := b.addressWord(&spot{base: inFrame, slot: s, size: x.n})
+	base := b.addressWord(objectAt(s, x.n))
 	a := b.element(base, v.Index, b.integer(array.Len()), n)
 	d := b.define(v)
 	b.load(a, n, d.slot)
+}
+
+// indexString is a byte of a constant string, which becomes data.
+func (b *builder) indexString(v *ssa.Index, text string) {
+	if len(text) == 0 || len(text) > maxWords {
+		b.fail("indexes a string")
+	}
+	a := &spot{base: inData, slot: int32(len(b.p.Data))}
+	for _, c := range []byte(text) {
+		b.p.Data = append(b.p.Data, tape.Const{Kind: tape.U8, Bits: uint64(c)})
+	}
+	e := b.element(b.addressWord(a), v.Index, b.integer(int64(len(text))), 1)
+	d := b.define(v)
+	b.load(e, 1, d.slot)
+}
+
+// arrayPointer converts a slice to the address of an array, which panics if
+// the slice is shorter.
+func (b *builder) arrayPointer(v *ssa.SliceToArrayPointer) {
+	x := b.value(v.X)
+	n := b.typeOf(v).Underlying().(*types.Pointer).Elem().Underlying().(*types.Array).Len()
+	b.emit(tape.Instr{Op: tape.BoundSlice, A: b.integer(0), B: b.integer(n), C: x.slot + 1})
+	b.vals[v] = val{slot: x.slot, n: 1}
 }
 
 // slice is x[low:high:max] of a slice or of an array by its address.
@@ -199,7 +227,7 @@ func (b *builder) slice(v *ssa.Slice) {
 	switch t := b.typeOf(v.X).Underlying().(type) {
 	case *types.Pointer:
 		array := t.Elem().Underlying().(*types.Array)
-		addr = b.addressWord(b.address(v.X))
+		addr = b.addressWord(b.address(v.X).array(b.words(t.Elem())))
 		length = b.integer(array.Len())
 		room, words = length, b.words(array.Elem())
 	case *types.Slice:

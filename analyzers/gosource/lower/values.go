@@ -125,34 +125,22 @@ func (b *builder) address(v ssa.Value) *spot {
 
 // addressWord makes an address a word in a slot.
 func (b *builder) addressWord(a *spot) int32 {
+	word := a.slot
 	switch a.base {
 	case inFrame:
-		d := b.temp(1)
-		b.emit(tape.Instr{Op: tape.FrameAddr, Dst: d, A: a.slot, C: a.size})
-		return d
+		word = b.temp(1)
+		b.emit(tape.Instr{Op: tape.FrameAddr, Dst: word, A: a.slot, C: a.size})
 	case inData:
-		d := b.temp(1)
-		b.emit(tape.Instr{Op: tape.DataAddr, Dst: d, A: a.slot})
-		return d
+		word = b.temp(1)
+		b.emit(tape.Instr{Op: tape.DataAddr, Dst: word, A: a.slot + a.off})
+		return word
 	}
 	if a.off == 0 {
-		return a.slot
+		return word
 	}
 	d := b.temp(1)
-	b.emit(tape.Instr{Op: tape.Offset, Dst: d, A: a.slot, C: a.off})
+	b.emit(tape.Instr{Op: tape.Offset, Dst: d, A: word, C: a.off})
 	return d
-}
-
-// plus returns the address off words further, of an object of size words.
-func (a *spot) plus(off, size int32) *spot {
-	c := *a
-	if a.base == inSlot {
-		c.off += off
-	} else {
-		c.slot += off
-		c.size = size
-	}
-	return &c
 }
 
 // load copies n words at a to slots of their own.
@@ -160,7 +148,7 @@ func (b *builder) load(a *spot, n int32, dst int32) {
 	switch {
 	case n == 0:
 	case a.base == inFrame:
-		b.emit(tape.Instr{Op: tape.Copy, Dst: dst, A: a.slot, C: n})
+		b.emit(tape.Instr{Op: tape.Copy, Dst: dst, A: a.slot + a.off, C: n})
 	case a.base == inData:
 		b.emit(tape.Instr{Op: tape.Load, Dst: dst, A: b.addressWord(a), C: n})
 	default:
@@ -173,7 +161,7 @@ func (b *builder) store(a *spot, src, n int32) {
 	switch {
 	case n == 0:
 	case a.base == inFrame:
-		b.emit(tape.Instr{Op: tape.Copy, Dst: a.slot, A: src, C: n})
+		b.emit(tape.Instr{Op: tape.Copy, Dst: a.slot + a.off, A: src, C: n})
 	case a.base == inData:
 		b.fail("writes a package variable")
 	default:
