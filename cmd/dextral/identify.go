@@ -4,11 +4,14 @@ import (
 	"errors"
 	"fmt"
 	"maps"
+	"os"
+	"path/filepath"
 	"slices"
 	"strings"
 	"time"
 
 	"dextral/analyzers/audit"
+	"dextral/analyzers/series/rates"
 	"dextral/core/angle"
 	"dextral/core/convention"
 	"dextral/core/identify"
@@ -65,6 +68,7 @@ read, 3 the numbers cannot decide.`,
 	f.StringVar(&in.scalar, "scalar", "", "where the quaternions have their scalar: first or last")
 	f.StringVar(&in.sequence, "sequence", "", "sequence of the angles, as in z-y'-x'', 321, rpy")
 	f.StringVar(&in.unit, "unit", "", "unit of angles and rotation vectors: deg or rad")
+	f.StringVar(&in.time, "time", "", "column of time stamps of a log")
 	f.StringArrayVar(&in.keys, "key", nil, "keys of the values in the file to compare")
 	return c
 }
@@ -72,7 +76,7 @@ read, 3 the numbers cannot decide.`,
 // given holds the flags.
 type given struct {
 	quaternions, matrices, angles, vectors, keys []string
-	scalar, sequence, unit                       string
+	scalar, sequence, unit, time                 string
 }
 
 // values makes values of the flags, with what the flags claim as comments would.
@@ -156,6 +160,9 @@ func statement(flag string, form convention.Form, count int, text string) (*rule
 
 // file compares the values of a file that state one orientation.
 func (g *given) file(c *cobra.Command, s streams, path string) error {
+	if done, err := identifyLog(s, path, g.time); done {
+		return err
+	}
 	r, err := audit.Run(c.Context(), audit.Options{Paths: []string{path}, Today: time.Now()})
 	if err != nil {
 		return err
@@ -183,6 +190,36 @@ func (g *given) file(c *cobra.Command, s streams, path string) error {
 		}
 	}
 	return worst
+}
+
+// identifyLog reads a file as a log with angular rates. It is not done if the
+// file is none.
+func identifyLog(s streams, path, time string) (done bool, err error) {
+	if ext := strings.ToLower(filepath.Ext(path)); ext != ".csv" && ext != ".txt" && ext != ".log" {
+		return false, nil
+	}
+	f, err := os.Open(path)
+	if err != nil {
+		return false, nil // the audit of the file says why
+	}
+	defer f.Close()
+	l, err := rates.Identify(path, f, time)
+	if errors.Is(err, rates.ErrNone) {
+		return false, nil
+	}
+	if err != nil {
+		return true, err
+	}
+	if err := report.IdentifiedSeries(s.out, path, l.Columns, l.Rows, l.Result); err != nil {
+		return true, err
+	}
+	switch l.Result.Verdict {
+	case identify.Agree:
+		return true, nil
+	case identify.Undecided:
+		return true, status(exitUndecided)
+	}
+	return true, status(exitFindings)
 }
 
 // groupsOf are the values of the given keys, or those that state one orientation.

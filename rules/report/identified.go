@@ -78,3 +78,59 @@ func changesText(c identify.Class) string {
 	}
 	return fmt.Sprintf("cost %d", c.Cost)
 }
+
+// maxTies bounds the readings of a tie that are listed.
+const maxTies = 4
+
+// IdentifiedSeries prints which conventions the orientations and rates of a log
+// obey.
+func IdentifiedSeries(w io.Writer, path string, columns []string, rows int64, r identify.SeriesResult) error {
+	p := newPrinter(w, Options{})
+	p.section("given", fmt.Sprintf("%s: %s rows; quaternion %s; rates %s; time %s", path, grouped(int(rows)),
+		strings.Join(columns[:4], ", "), strings.Join(columns[4:7], ", "), columns[7]))
+	p.section("motion", r.Motion.String())
+	p.section("verdict", seriesVerdict(r))
+	word := "readings"
+	print := func(c identify.SeriesClass, note string) {
+		if len(c.Readings) > 0 {
+			p.section(word, fmt.Sprintf("%-8.3g %-9s %s", c.Residual, note, c))
+			word = ""
+		}
+	}
+	print(r.Best, "best")
+	for i, c := range r.Ties {
+		if i == maxTies {
+			p.section("", fmt.Sprintf("and %d more that fit alike", len(r.Ties)-maxTies))
+			break
+		}
+		print(c, "tie")
+	}
+	print(r.Next, "next")
+	if len(r.Stated.Readings) > 0 && r.Verdict == identify.Contradicted {
+		print(r.Stated, "as stated")
+	}
+	if r.Biased {
+		p.section("bias", "a constant offset of the rates was taken out")
+	}
+	if r.Reason != "" {
+		p.section("because", r.Reason)
+	}
+	p.line("residual: RMS of rate minus prediction over RMS of the rates")
+	return p.Flush()
+}
+
+func seriesVerdict(r identify.SeriesResult) string {
+	switch r.Verdict {
+	case identify.Agree:
+		text := "the rates are those of the orientations as stated"
+		if !r.Decided {
+			text += "; other readings cannot be excluded"
+		}
+		return text
+	case identify.Contradicted:
+		return "not as stated; the rates fit " + r.Best.String()
+	case identify.Unexplained:
+		return "under no reading are these the rates of these orientations"
+	}
+	return "cannot be decided"
+}
