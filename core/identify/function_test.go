@@ -35,6 +35,37 @@ func TestFunctionsAreToldApart(t *testing.T) {
 	}
 }
 
+// Textbook formulas, written out, are what they are called: Hamilton's product with
+// ij = k, the active matrix that sends x to y for a quarter turn about z.
+func TestTextbookFunctions(t *testing.T) {
+	product := Function{In: []int{4, 4}, Out: 4, Eval: func(in, out []float64) {
+		a, b, c, d := in[0], in[1], in[2], in[3]
+		e, f, g, h := in[4], in[5], in[6], in[7]
+		out[0] = a*e - b*f - c*g - d*h
+		out[1] = a*f + b*e + c*h - d*g
+		out[2] = a*g - b*h + c*e + d*f
+		out[3] = a*h + b*g - c*f + d*e
+	}}
+	r := product.Identify()
+	require.True(t, r.Decided())
+	first := convention.ScalarFirst
+	r.Readings[0].Error = 0
+	assert.Equal(t, FunctionReading{What: "product", Scalars: [3]convention.ScalarPlace{first, first, first}}, r.Readings[0])
+
+	toMatrix := Function{In: []int{4}, Out: 9, Eval: func(in, out []float64) {
+		x, y, z, w := in[0], in[1], in[2], in[3]
+		copy(out, []float64{
+			1 - 2*(y*y+z*z), 2 * (x*y - z*w), 2 * (x*z + y*w),
+			2 * (x*y + z*w), 1 - 2*(x*x+z*z), 2 * (y*z - x*w),
+			2 * (x*z - y*w), 2 * (y*z + x*w), 1 - 2*(x*x+y*y),
+		})
+	}}
+	r = toMatrix.Identify()
+	require.True(t, r.Decided())
+	r.Readings[0].Error = 0
+	assert.Equal(t, FunctionReading{What: "matrix of quaternion", Scalars: [3]convention.ScalarPlace{convention.ScalarLast}, Norm: UnitOnly}, r.Readings[0])
+}
+
 // Every sequence, order, sign and unit of angles, to and from quaternions and matrices.
 func TestAngleFunctionsAreSolved(t *testing.T) {
 	for _, size := range []int{4, 9} {

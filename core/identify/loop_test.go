@@ -15,12 +15,15 @@ import (
 	"github.com/stretchr/testify/require"
 )
 
-// ring draws edges that close, with translations, written with six decimals.
-func ring(g *rand.Rand, n int) []Edge {
+// ring draws edges that close, with translations of some length, written with
+// six decimals.
+func ring(g *rand.Rand, n int) []Edge { return ringOf(g, n, 1) }
+
+func ringOf(g *rand.Rand, n int, length float64) []Edge {
 	edges := make([]Edge, n)
 	rest := step{r: rotor.One}
 	for i := range n {
-		s := step{haar(g), rotor.Vec{X: g.NormFloat64(), Y: g.NormFloat64(), Z: g.NormFloat64()}}
+		s := step{haar(g), rotor.Vec{X: g.NormFloat64(), Y: g.NormFloat64(), Z: g.NormFloat64()}.Scale(length)}
 		if i == n-1 {
 			s = rest.reverse()
 		}
@@ -47,6 +50,8 @@ func TestLoopsClose(t *testing.T) {
 	for n := 2; n < 7; n++ {
 		for range 200 {
 			r := Loop(ring(g, n))
+			require.Equal(t, Agree, r.Verdict, "%+v", r)
+			r = Loop(ringOf(g, n, 1000)) // where the rounding of the rotations counts
 			require.Equal(t, Agree, r.Verdict, "%+v", r)
 		}
 	}
@@ -163,6 +168,24 @@ func replace(g *rand.Rand, e *Edge) {
 	back := e.Backward
 	*e = edgeOf(s, convention.Rotation, Claim{})
 	e.Backward = back
+}
+
+// Where the rotations say nothing, translations do.
+func TestTranslationsAreEvidence(t *testing.T) {
+	at := func(x, y, z float64) Edge {
+		return edgeOf(step{rotor.One, rotor.Vec{X: x, Y: y, Z: z}}, convention.Rotation, Claim{})
+	}
+	edges := []Edge{at(1.25, -0.75, 2), at(3, 0.5, -1), at(-4.25, 0.25, -1)}
+	assert.Equal(t, Agree, Loop(edges).Verdict)
+	edges[1] = at(-3, -0.5, 1)
+	r := Loop(edges)
+	require.Equal(t, Contradicted, r.Verdict, r.Reason)
+	require.True(t, r.Decided())
+	assert.Equal(t, 1, r.Repairs[0].Edge)
+	assert.Equal(t, []Change{Inverse}, r.Repairs[0].Changes)
+	assert.Equal(t, "edge 2 reversed", r.Repairs[0].String())
+	edges[1] = at(3, 0.5, 1)
+	assert.Equal(t, Unexplained, Loop(edges).Verdict)
 }
 
 func TestComposition(t *testing.T) {

@@ -183,6 +183,15 @@ func TestTies(t *testing.T) {
 	assert.Equal(t, []Change{Inverse}, r.Best.Changes, "a sign of the angle or a map of axes would cost more")
 	assert.Equal(t, Contradicted, r.Verdict)
 
+	equal := ternAngles(t) // two equal numbers: which of them was exchanged with the third?
+	equal.Numbers = []float64{25.3, 71.9, 25.3}
+	zyx := equal.Claim.Label.Readings[0].Seq
+	r = Same(equal, quaternion(zyx.Rotor(71.9*math.Pi/180, 25.3*math.Pi/180, 25.3*math.Pi/180)))
+	assert.Equal(t, Contradicted, r.Verdict, r.Reason)
+	assert.True(t, r.Best.Tie)
+	assert.False(t, r.Decided)
+	assert.Contains(t, r.Best.String(), "; or ")
+
 	half := quaternion(rotor.FromRotationVector(rotor.Vec{Z: math.Pi / 2}))
 	other := quaternion(rotor.FromRotationVector(rotor.Vec{X: math.Pi / 2}))
 	r = Same(half, other) // two maps of axes: anything may have happened
@@ -205,6 +214,28 @@ func TestAccidentsDecideNothing(t *testing.T) {
 	assert.Equal(t, Unexplained, Same(yaw(45), yaw(-45)).Verdict, "a left and a right one, perhaps")
 	assert.Equal(t, Unexplained, Same(yaw(37.2519), yaw(2*37.2519)).Verdict, "half angles need two numbers")
 	assert.Equal(t, Unexplained, Same(yaw(37.2519), yaw(61.3)).Verdict)
+	nearly := rotor.FromRotationVector(rotor.Vec{X: 1e-7, Y: 1.6e-7, Z: 0.65}) // what is below the tolerance is no number
+	a, b := quaternion(nearly), quaternion(nearly.Mul(nearly))
+	a.Tolerance, b.Tolerance = 4e-8, 4e-8
+	assert.Equal(t, Unexplained, Same(a, b).Verdict)
+}
+
+// Of small angles a dearer reading may miss by less than the digits show. The
+// cheapest is named, but it is not decided: here the order of the numbers was
+// planted as well.
+func TestRivals(t *testing.T) {
+	a := Statement{
+		Form: convention.Angles, Numbers: []float64{-0.611708, 1.929970, 0.006277},
+		Claim: Claim{Unit: convention.Degree, Label: label(t, "x-y-x fixed axes")},
+	}
+	a.Tolerance = decimals(6).precision.Angles(convention.Degree)
+	q := quaternion(rotor.FromQuaternion(0.999844, -0.005338, -0.000035, 0.016841))
+	q.Tolerance = decimals(6).precision.Quaternion()
+	r := Same(a, q)
+	assert.Equal(t, Contradicted, r.Verdict, r.Reason)
+	assert.Equal(t, []Change{Sequence}, r.Best.Changes)
+	assert.False(t, r.Best.Tie)
+	assert.False(t, r.Decided)
 }
 
 func TestCloseIsUndecided(t *testing.T) {

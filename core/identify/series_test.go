@@ -170,6 +170,23 @@ func TestSeriesSurvivesBadRows(t *testing.T) {
 	assert.True(t, r.Decided)
 }
 
+// A filter that is reset throws the orientation to another place now and then.
+func TestSeriesSurvivesResets(t *testing.T) {
+	samples := fly(3000, 0.01)
+	reset := rotor.One
+	for i := range samples {
+		if i%700 == 350 {
+			reset = reset.Mul(rotor.FromRotationVector(rotor.Vec{X: 0.8, Y: -0.5, Z: 0.3}))
+		}
+		w, x, y, z := reset.Mul(samples[i].unitRotor()).Quaternion()
+		samples[i].Q = [4]float64{w, x, y, z}
+	}
+	r := Series(samples, flown)
+	assert.Equal(t, Agree, r.Verdict, r.Reason)
+	assert.True(t, r.Decided)
+	assert.Less(t, r.Best.Residual, 0.05)
+}
+
 // TestSeriesConfusion measures the rows about series in the package
 // documentation: random starts, slips and amounts of noise of the rates; in a
 // third of the cases rates that have nothing to do with the orientations.
