@@ -24,7 +24,7 @@ type Joint struct {
 	Limit    float64
 }
 
-var deck = Euler{Roll: 1.5, Yaw: -90} // want `^angles deck.Roll 1.5 -90 0: form=angles by label, unit=degree by comment, sequence=roll, yaw, pitch \(kind of axes unstated\) by label; roll yaw pitch$`
+var deck = Euler{Roll: 1.5, Yaw: -90} // want `^angles deck.Roll 1.5 -90 0: form=angles by label, unit=degree by comment, sequence=roll, yaw, pitch \(order of turns unstated\) by label; roll yaw pitch$`
 
 var positional = Euler{1, 2, 3} // want `^angles positional.Roll 1 2 3: .*; roll pitch yaw$`
 
