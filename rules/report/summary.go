@@ -53,7 +53,10 @@ func (p *printer) summary(r *Report) {
 	if text := leftOutText(r.LeftOut); text != "" {
 		p.section("left out", text)
 	}
+	p.section("caution", caution)
 }
+
+const caution = "dextral finds contradictions; silence is not proof, and the responsible engineer's judgement stands"
 
 // sectionWidth holds the words in the margin of the summary and two spaces.
 const sectionWidth = len("undecided") + 2

@@ -17,11 +17,8 @@ func Text(w io.Writer, r *Report, o Options) error {
 		p.line("")
 	}
 	p.summary(r)
-	p.section("caution", caution)
 	return p.Flush()
 }
-
-const caution = "dextral finds contradictions; silence is not proof, and the responsible engineer's judgement stands"
 
 // labelWidth holds the words in the margin of a finding and two spaces.
 const labelWidth = len("warning") + 2
