@@ -35,9 +35,19 @@ var shapes = []struct {
 // byNumbers finds channels in a log without header. Columns that have unit norm,
 // or make a rotation matrix, in the rows at its start are what a shape says if
 // they stand where it has them. Four other columns of unit norm are
-// undecided: they may be a quaternion either way round, or not be one.
+// undecided: they may be a quaternion either way round, or not be one. Rows with
+// words among the numbers are no log without header, but something with keys.
 func byNumbers(h *head) columns.Found {
 	var f columns.Found
+	words := 0
+	for _, row := range h.rows {
+		if slices.ContainsFunc(row, func(c fold.Cell) bool { return c.State == fold.Gap }) {
+			words++
+		}
+	}
+	if 10*words > len(h.rows) {
+		return f
+	}
 	for _, s := range shapes {
 		if s.width != h.width {
 			continue
@@ -54,6 +64,9 @@ func byNumbers(h *head) columns.Found {
 			return f
 		}
 	}
+	if len(h.rows) < fewest {
+		return f
+	}
 	for first := 0; first+4 <= h.width; first++ {
 		c := h.shaped(convention.Quaternion, first, 0)
 		if h.looksRight(&c) {
@@ -64,6 +77,10 @@ func byNumbers(h *head) columns.Found {
 	}
 	return f
 }
+
+// fewest is the number of rows in which four columns must have unit norm: numbers
+// of size one do so within a hundredth once in a few hundred times by chance.
+const fewest = 5
 
 // shaped is the channel of the columns from first on.
 func (h *head) shaped(form convention.Form, first, rows int) columns.Channel {

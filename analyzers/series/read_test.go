@@ -218,6 +218,8 @@ func TestHeaderless(t *testing.T) {
 	for name, text := range map[string]string{
 		"labels":       "1 0 0 0\n0 0 1 0\n0 0 0 1\n",
 		"measurements": "1.5 2.5 3.5 4.5 5 6 7 8\n1.5 2.5 3.5 4.5 5 6 7 8\n",
+		"calibration":  "R: 0.5 0.5 0.5 0.5\nR: 0.5 0.5 0.5 -0.5\nT: 1 2 3 4\nT: 1 2 3 4\nR: 0.5 0.5 0.5 0.5\nR: 0.5 0.5 0.5 -0.5\n",
+		"few rows":     "0.5 0.5 0.5 0.5 7\n0.5 0.5 0.5 -0.5 7\n",
 	} {
 		r := read(t, text, Options{})
 		assert.Empty(t, r.Channels, name)
@@ -314,6 +316,23 @@ func TestListOfOrientations(t *testing.T) {
 	assert.Contains(t, r.Undecided[0].Why, "not a series")
 	r = read(t, "t,mode,qw,qx,qy,qz\n0,on,1,0,0,0\n1,off,-1,0,0,0\n", Options{})
 	assert.Len(t, r.Channels, 1)
+}
+
+// Independent orientations, such as check values, are no series: nothing can jump there.
+func TestIndependentRows(t *testing.T) {
+	rng := rand.New(rand.NewPCG(9, 9))
+	random := func(int) string {
+		r, _ := rotor.Rotor{S: rng.NormFloat64(), E23: rng.NormFloat64(), E31: rng.NormFloat64(), E12: rng.NormFloat64()}.Unit()
+		w, x, y, z := r.Quaternion()
+		return fmt.Sprintf("%.9f,%.9f,%.9f,%.9f", w, x, y, z)
+	}
+	r := read(t, flight("qw,qx,qy,qz\n", 40, random), Options{})
+	require.Len(t, r.Channels, 1)
+	assert.Contains(t, r.Channels[0].Value.Why, "a list of orientations")
+	r = read(t, flight("t,qw,qx,qy,qz\n", 40, func(i int) string { return fmt.Sprintf("%d,%s", i, random(i)) }), Options{})
+	assert.Empty(t, r.Channels[0].Value.Why, "whoever gives times says that it is a series")
+	r = read(t, flight("case,t,qw,qx,qy,qz\n", 40, func(i int) string { return fmt.Sprintf("%d,%d,%s", i/4, i%4, wxyz(i)) }), Options{})
+	assert.Contains(t, r.Channels[0].Value.Why, "column t runs backwards at 9 of 40 rows")
 }
 
 func TestHeaderTooLong(t *testing.T) {
