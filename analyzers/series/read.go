@@ -94,8 +94,8 @@ func (l *layout) result(path, format string, origin int64, total *part) Result {
 	for i := range l.channels {
 		s := l.series(i, &f.Channels[i], place, r.Clock)
 		s.Rows = f.Rows
-		if r.Clock != nil {
-			s.Unit = r.Clock.Unit
+		if s.Clock != nil {
+			s.Unit = s.Clock.Unit
 			s.Stamp = func(t float64) string { return l.fold.Start.After(t).String() }
 		}
 		r.Channels = append(r.Channels, s)
@@ -124,8 +124,15 @@ func (l *layout) series(i int, f *fold.Summary, place func(int64) rules.Place, c
 		s.Ranges = append(s.Ranges, f.Ranges[k].Range)
 	}
 	s.Value.Why = doubtAfterwards(s, f)
+	if s.Clock != nil && !timesOfOne(s.Clock) {
+		s.Clock = nil // its column is no fault of a series
+	}
 	return s
 }
+
+// timesOfOne reports whether a column of times can be that of one series. A log
+// that was put together of parts runs backwards here and there, not at every tenth row.
+func timesOfOne(c *rules.Clock) bool { return 10*c.Reversed.Count <= c.Count }
 
 // doubtAfterwards says what only all rows together show: that the channel is not
 // what it is read as.
@@ -141,7 +148,7 @@ func doubtAfterwards(s *rules.Series, f *fold.Summary) string {
 		return fmt.Sprintf("its numbers are whole, of norm %.6g to %.6g: a quaternion times a scale that nothing states", c.MinNorm.Value, c.MaxNorm.Value)
 	case s.Clock == nil && c.Wide.Count > c.JumpCount:
 		return fmt.Sprintf("no time stamps, and %d neighbours are more than 90 degrees apart: a list of orientations, not a series", c.Wide.Count)
-	case s.Clock != nil && 10*s.Clock.Reversed.Count > s.Clock.Count:
+	case s.Clock != nil && !timesOfOne(s.Clock):
 		return fmt.Sprintf("column %s runs backwards at %d of %d rows: not the times of one series", s.Clock.Column, s.Clock.Reversed.Count, s.Clock.Count)
 	}
 	return ""

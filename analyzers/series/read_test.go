@@ -333,6 +333,7 @@ func TestIndependentRows(t *testing.T) {
 	assert.Empty(t, r.Channels[0].Value.Why, "whoever gives times says that it is a series")
 	r = read(t, flight("case,t,qw,qx,qy,qz\n", 40, func(i int) string { return fmt.Sprintf("%d,%d,%s", i/4, i%4, wxyz(i)) }), Options{})
 	assert.Contains(t, r.Channels[0].Value.Why, "column t runs backwards at 9 of 40 rows")
+	assert.Nil(t, r.Channels[0].Clock, "nor is that a fault of the log")
 }
 
 func TestHeaderTooLong(t *testing.T) {
