@@ -19,6 +19,7 @@ import (
 	"strings"
 
 	"dextral/analyzers/config/jsondoc"
+	"dextral/analyzers/config/tomldoc"
 	"dextral/analyzers/config/tree"
 	"dextral/analyzers/config/yamldoc"
 	"dextral/analyzers/source"
@@ -50,6 +51,7 @@ var formats = map[string]format{
 	".yml":   {"YAML", yamldoc.Read, nil},
 	".json":  {"JSON", jsondoc.Read, nil},
 	".jsonc": {"JSON", jsondoc.Read, nil},
+	".toml":  {"TOML", tomldoc.Read, nil},
 	".gltf":  {"glTF", jsondoc.Read, gltf},
 }
 

@@ -2,6 +2,7 @@ package tree
 
 import (
 	"bytes"
+	"slices"
 	"sort"
 	"strings"
 
@@ -49,8 +50,44 @@ func (d *Document) alone(c Comment) bool {
 	return len(bytes.TrimSpace(d.File.Text[line.From:max(line.From, c.Span.From)])) == 0
 }
 
-// HashComment makes a Comment of a span that begins with # and ends with its
-// line.
-func HashComment(f *source.File, s source.Span) Comment {
-	return Comment{Span: s, Text: strings.TrimSpace(strings.TrimLeft(f.Slice(s), "# \t"))}
+// HashComments finds the comments of a file that begin with # and end with their
+// line: from an offset on, outside the given texts, behind one of the bytes
+// before (any byte if before is empty) or at the head of the file.
+func HashComments(f *source.File, from int, texts []source.Span, before string) []Comment {
+	slices.SortFunc(texts, func(a, b source.Span) int { return a.From - b.From })
+	var found []Comment
+	for at := from; at < len(f.Text); {
+		hash := bytes.IndexByte(f.Text[at:], '#')
+		if hash < 0 {
+			break
+		}
+		at += hash
+		for len(texts) > 0 && texts[0].To <= at {
+			texts = texts[1:]
+		}
+		switch {
+		case len(texts) > 0 && texts[0].From <= at:
+			at = texts[0].To
+		case at > from && before != "" && strings.IndexByte(before, f.Text[at-1]) < 0:
+			at++
+		default:
+			span := source.Span{From: at, To: lineEnd(f.Text, at)}
+			found = append(found, Comment{Span: span, Text: strings.TrimSpace(strings.TrimLeft(f.Slice(span), "# \t"))})
+			at = span.To
+		}
+	}
+	return found
+}
+
+// lineEnd is the offset of the LF or CRLF that ends a line, or of the end of the
+// text.
+func lineEnd(text []byte, at int) int {
+	end := len(text)
+	if i := bytes.IndexByte(text[at:], '\n'); i >= 0 {
+		end = at + i
+	}
+	if end > at && text[end-1] == '\r' {
+		end--
+	}
+	return end
 }

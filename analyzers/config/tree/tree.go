@@ -20,6 +20,8 @@
 package tree
 
 import (
+	"bytes"
+	"fmt"
 	"strings"
 
 	"dextral/analyzers/source"
@@ -31,6 +33,21 @@ const (
 	MaxNodes   = 1_000_000 // nodes that stand in the file
 	MaxAliased = 100_000   // nodes that references to other nodes add
 )
+
+// CheckCount refuses a text that may hold more than MaxNodes nodes, before a
+// parser spends memory on them. Every node but the first must follow one of the
+// marks.
+func CheckCount(f *source.File, text []byte, marks ...string) error {
+	nodes := 1
+	for _, m := range marks {
+		nodes += bytes.Count(text, []byte(m))
+	}
+	if nodes <= MaxNodes {
+		return nil
+	}
+	return f.ErrorAt(source.Span{}, fmt.Sprintf("this file may hold %d items, more than the %d that are read", nodes, MaxNodes),
+		"split it, or exclude it from the audit")
+}
 
 // Kind is the kind of a node.
 type Kind uint8

@@ -79,15 +79,7 @@ func TestGet(t *testing.T) {
 func TestComments(t *testing.T) {
 	text := "# far\n\n# near\n# nearer\nx: 1 # beside\n# below\n"
 	d, _ := document(text)
-	for at := strings.Index(text, "#"); at < len(text); {
-		end := at + strings.Index(text[at:], "\n")
-		d.Comments = append(d.Comments, HashComment(d.File, source.Span{From: at, To: end}))
-		next := strings.Index(text[end:], "#")
-		if next < 0 {
-			break
-		}
-		at = end + next
-	}
+	d.Comments = HashComments(d.File, 0, nil, "")
 	x := source.Span{From: strings.Index(text, "x"), To: strings.Index(text, "x") + 4}
 	assert.Equal(t, []Comment{d.Comments[3]}, d.OnLines(x))
 	assert.Equal(t, "beside", d.OnLines(x)[0].Text)

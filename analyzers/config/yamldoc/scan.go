@@ -2,7 +2,6 @@ package yamldoc
 
 import (
 	"bytes"
-	"slices"
 	"strings"
 	"unicode/utf8"
 
@@ -154,35 +153,4 @@ func words(text []byte, at int, value string) source.Span {
 		span.To = at
 	}
 	return span
-}
-
-// comments finds the comments between the scalars of a file.
-func comments(f *source.File, base int, scalars []source.Span) []tree.Comment {
-	slices.SortFunc(scalars, func(a, b source.Span) int { return a.From - b.From })
-	var found []tree.Comment
-	for at := base; at < len(f.Text); {
-		hash := bytes.IndexByte(f.Text[at:], '#')
-		if hash < 0 {
-			break
-		}
-		at += hash
-		for len(scalars) > 0 && scalars[0].To <= at {
-			scalars = scalars[1:]
-		}
-		if len(scalars) > 0 && scalars[0].From <= at {
-			at = scalars[0].To
-			continue
-		}
-		if at > base && !strings.ContainsRune(" \t\r\n,[]{}\"'", rune(f.Text[at-1])) {
-			at++ // part of a tag, an anchor or a directive
-			continue
-		}
-		span := source.Span{From: at, To: lineEnd(f.Text, at)}
-		if span.To > span.From && f.Text[span.To-1] == '\r' {
-			span.To--
-		}
-		found = append(found, tree.HashComment(f, span))
-		at = span.To
-	}
-	return found
 }

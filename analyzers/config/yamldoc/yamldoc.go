@@ -32,7 +32,7 @@ import (
 // Read reads all documents of a YAML file. Errors are of type *source.Error.
 func Read(f *source.File) (*tree.Document, error) {
 	text, base := f.Body()
-	if err := checkBounds(f, text); err != nil {
+	if err := tree.CheckCount(f, text, ",", ":", "\n", "[", "{", "- "); err != nil {
 		return nil, err
 	}
 	if head := []byte("%YAML:"); bytes.HasPrefix(text, head) {
@@ -61,22 +61,8 @@ func Read(f *source.File) (*tree.Document, error) {
 			r.doc.Roots = append(r.doc.Roots, n)
 		}
 	}
-	r.doc.Comments = comments(f, base, r.texts)
+	r.doc.Comments = tree.HashComments(f, base, r.texts, " \t\r\n,[]{}\"'") // else part of a tag or an anchor
 	return r.doc, nil
-}
-
-// checkBounds refuses a text that may hold too many nodes, before the parser
-// spends memory on them. Every node but the first follows one of these bytes.
-func checkBounds(f *source.File, text []byte) error {
-	nodes := 1
-	for _, b := range []string{",", ":", "\n", "[", "{", "- "} {
-		nodes += bytes.Count(text, []byte(b))
-	}
-	if nodes <= tree.MaxNodes {
-		return nil
-	}
-	return f.ErrorAt(source.Span{}, fmt.Sprintf("this YAML file may hold %d items, more than the %d that are read", nodes, tree.MaxNodes),
-		"split it, or exclude it from the audit")
 }
 
 // reader turns the nodes of one file.
