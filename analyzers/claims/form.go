@@ -1,6 +1,8 @@
 package claims
 
 import (
+	"strings"
+
 	"dextral/core/convention"
 	"dextral/rules"
 )
@@ -145,5 +147,5 @@ func (n *Name) bare() Meaning {
 // SpeaksOfMatrix reports whether the name, or the custom behind it, says that the
 // numbers have rows and columns.
 func (n *Name) SpeaksOfMatrix() bool {
-	return n.any(matrixWord|dcm) || n.sym != 0 || notSymbols[n.Text] != ""
+	return n.any(matrixWord|dcm) || n.sym != 0 || notSymbols[strings.TrimRight(n.Text, "0123456789")] != ""
 }

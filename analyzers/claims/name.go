@@ -102,7 +102,7 @@ func (n *Name) readStem() {
 // readNot finds words that say that this is no orientation.
 func (n *Name) readNot() {
 	if len(n.words) == 1 || len(n.words) == 2 && lexicon[n.words[1].text] == 0 {
-		if why := notSymbols[n.words[0].raw]; why != "" {
+		if why := notSymbols[strings.TrimRight(n.words[0].raw, "0123456789")]; why != "" { // P1, P2
 			n.Not = why
 			return
 		}

@@ -84,6 +84,7 @@ camera_matrix             | -                     | -                     | matr
 camera_rotation_matrix    | -                     | -                     | label rotation matrix | name rigid transform
 K                         | -                     | -                     | matrix?               | matrix?
 P_rect_02                 | -                     | -                     | -                     | -
+P1                        | -                     | -                     | matrix?               | matrix?
 E                         | -                     | -                     | matrix?               | matrix?
 Tg                        | -                     | -                     | matrix?               | matrix?
 projection_matrix         | -                     | -                     | matrix?               | matrix?

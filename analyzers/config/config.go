@@ -21,6 +21,7 @@ import (
 	"dextral/analyzers/config/jsondoc"
 	"dextral/analyzers/config/tomldoc"
 	"dextral/analyzers/config/tree"
+	"dextral/analyzers/config/xmldoc"
 	"dextral/analyzers/config/yamldoc"
 	"dextral/analyzers/source"
 	"dextral/rules"
@@ -43,16 +44,46 @@ type Warning struct {
 type format struct {
 	name string
 	read func(*source.File) (*tree.Document, error)
-	spec specification // what the format itself fixes; nil for nothing
+	spec func(*tree.Document) specification // for what the format itself fixes; nil for nothing
+}
+
+// always is for formats with one specification.
+func always(spec specification) func(*tree.Document) specification {
+	return func(*tree.Document) specification { return spec }
 }
 
 var formats = map[string]format{
-	".yaml":  {"YAML", yamldoc.Read, nil},
-	".yml":   {"YAML", yamldoc.Read, nil},
-	".json":  {"JSON", jsondoc.Read, nil},
-	".jsonc": {"JSON", jsondoc.Read, nil},
-	".toml":  {"TOML", tomldoc.Read, nil},
-	".gltf":  {"glTF", jsondoc.Read, gltf},
+	".yaml":   {"YAML", yamldoc.Read, nil},
+	".yml":    {"YAML", yamldoc.Read, nil},
+	".json":   {"JSON", jsondoc.Read, nil},
+	".jsonc":  {"JSON", jsondoc.Read, nil},
+	".toml":   {"TOML", tomldoc.Read, nil},
+	".xml":    {"XML", xmldoc.Read, byRoot},
+	".urdf":   {"URDF", xmldoc.Read, byRoot},
+	".xacro":  {"URDF", xmldoc.Read, byRoot},
+	".sdf":    {"SDF", xmldoc.Read, byRoot},
+	".world":  {"SDF", xmldoc.Read, byRoot},
+	".launch": {"launch file", xmldoc.Read, byRoot},
+	".mjcf":   {"MJCF", xmldoc.Read, byRoot},
+	".gltf":   {"glTF", jsondoc.Read, always(gltf)},
+}
+
+// byRoot tells the formats in XML by their root element. Others are read by
+// custom, as OpenCV's storage is.
+func byRoot(d *tree.Document) specification {
+	for _, e := range d.Roots[0].Entries {
+		switch e.Key {
+		case "robot":
+			return urdf
+		case "sdf", "gazebo":
+			return sdf
+		case "launch":
+			return launch
+		case "mujoco", "mujocoinclude":
+			return mjcf
+		}
+	}
+	return nil
 }
 
 // Format names the format of a file by its name; "" if it is none that is read.
@@ -74,7 +105,11 @@ func Read(name string, text []byte) (Result, error) {
 	if err != nil {
 		return Result{}, err
 	}
-	w := newWalker(doc, format.spec)
+	var spec specification
+	if format.spec != nil {
+		spec = format.spec(doc)
+	}
+	w := newWalker(doc, spec)
 	w.walk()
 	return w.result(), nil
 }

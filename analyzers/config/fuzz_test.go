@@ -10,6 +10,8 @@ import (
 	"dextral/rules"
 )
 
+var fuzzNames = []string{"m.yaml", "m.json", "m.gltf", "m.toml", "m.xml"}
+
 // Laws of Read, for any text in any format: no panic; an error says where and
 // what to do; every number stands where its place says; what is decided has as
 // many numbers as its form, and a claim that decides it.
@@ -20,13 +22,18 @@ func FuzzRead(f *testing.F) {
 		"{\"T\": {\"qx\": 0, \"qy\": 0, \"qz\": 0, \"qw\": 1}, \"rpy\": [NaN, 1e999, 2]}", "nodes: [{rotation: [1, 1, 1, 1]}]",
 		"h: {axis: [0, 0, 1], angle_deg: 3}\nc: {x_axis: [1, 0, 0], y_axis: [0, 1, 0], z_axis: [0, 0, 1]}\n", "b: &b {rpy: [1, 2, 3]}\nc: {<<: *b}\n",
 		"euler_zyx: \"1 2 3\" # moving axes\norientation: {type: quaternion, value: {w: 1, x: 0, y: 0, z: 0}}\n", "rotation: [0 0 0 1]\n",
+		"[a]\nrpy_deg = [1, 2, 3] # zyx\n[[b]]\nq = {w = 1, x = 0, y = 0, z = 0}\n",
+		"<robot><joint name='j'><parent link='a'/><child link='b'/><origin rpy='0 0 1' quat_xyzw='0 0 0 1'/><axis xyz='0 0 1'/></joint></robot>",
+		"<sdf><model><pose degrees='true'>1 2 3 4 5 6</pose><pose rotation_format='quat_xyzw'>1 2 3 0 0 0 1</pose></model></sdf>",
+		"<launch><node exec='static_transform_publisher' args='0 0 0 1 2 3 map odom 10'/><node type='static_transform_publisher' args='--qx 0 --qy 0 --qz 0 --qw 1 --frame-id a --child-frame-id b'/></launch>",
+		"<opencv_storage><R type_id='opencv-matrix'><rows>3</rows><cols>3</cols><data>1 0 0 0 1 0 0 0 1</data></R></opencv_storage>", "<mujoco><body quat='1 0 0 0'/></mujoco>",
 	} {
-		for kind := range byte(3) {
+		for kind := range byte(len(fuzzNames)) {
 			f.Add(kind, []byte(text))
 		}
 	}
 	f.Fuzz(func(t *testing.T, kind byte, text []byte) {
-		name := []string{"m.yaml", "m.json", "m.gltf"}[kind%3]
+		name := fuzzNames[int(kind)%len(fuzzNames)]
 		file := source.New(name, text)
 		result, err := Read(name, text)
 		if err != nil {

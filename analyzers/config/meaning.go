@@ -24,13 +24,10 @@ func open(f convention.Form, by rules.Source, why string) reading {
 	return reading{Meaning: claims.Meaning{Form: f, Source: by, Why: why}}
 }
 
-// meaning says what numbers of a shape claim to be at a spot. The format's
-// specification comes first, then the key. Where the key leaves two readings,
-// or says nothing, a neighbouring key or a comment may say it.
+// meaning says what numbers of a shape claim to be at a spot. The key
+// says it first. Where it leaves two readings, or says nothing, a neighbouring
+// key or a comment may say it.
 func (w *walker) meaning(s *spot, shape claims.Shape) reading {
-	if w.spec != nil {
-		return w.spec.meaning(s, shape)
-	}
 	if w.otherwise(s) {
 		return reading{}
 	}

@@ -29,9 +29,6 @@ type part struct {
 // entries were taken whole.
 func (w *walker) named(s *spot) map[int]bool {
 	done := map[int]bool{}
-	if w.spec != nil {
-		return done
-	}
 	w.axisAngles(s, done)
 	groups := map[string][]part{}
 	var order []string

@@ -1,6 +1,7 @@
 package config
 
 import (
+	"slices"
 	"strings"
 
 	"dextral/analyzers/claims"
@@ -45,10 +46,10 @@ func (w *walker) tellers(m *tree.Node) []teller {
 // about its value: with what it says, and a claim to be filled in.
 func (w *walker) eachNeighbour(s *spot, see func(claims.Neighbour, rules.Claim)) {
 	var maps []*tree.Node
-	if s.node.Kind == tree.Map {
-		maps = append(maps, s.node)
+	if own := s.owner().node; own.Kind == tree.Map {
+		maps = append(maps, own)
 	}
-	if h := s.holder(); h != nil && h.node != s.node {
+	if h := s.holder(); h != nil && !slices.Contains(maps, h.node) {
 		maps = append(maps, h.node)
 	}
 	for _, m := range maps {

@@ -1,51 +1,67 @@
 package config
 
 import (
-	"regexp"
-
-	"dextral/analyzers/claims"
+	"dextral/analyzers/config/tree"
+	"dextral/core/angle"
 	"dextral/core/convention"
 	"dextral/rules"
 )
 
-// specification is what a format itself fixes. Under one, only what it names is
-// an orientation: other keys of such a format are not read by custom.
-type specification []rule
+// specification reads a format that fixes its own conventions. It is asked about
+// every node of a tree and keeps the values that the format's text names; under
+// it, nothing is read by custom.
+type specification func(w *walker, s *spot)
 
-// rule says what stands at a path.
-type rule struct {
-	title string // chapter and verse, for claims
-	path  *regexp.Regexp
-	shape claims.Shape
+// fixed is what a specification says about one value.
+type fixed struct {
+	title string // chapter and verse
 	form  convention.Form
-	why   string // why it is no orientation to be judged; "" if it is one
+	by    rules.Source // of the claim to be of that form; Format unless the text only recommends it
+	why   string       // why it stays undecided; "" if it does not
 	terms []convention.Term
 }
 
-// gltf is glTF 2.0, section 3.5.3 (Transformations) and 5.25 (Node), from
-// memory. A node's matrix is column by column and may carry scale; a rotation is
-// a unit quaternion x y z w.
-var gltf = specification{
-	{"glTF 2.0, node.rotation: a unit quaternion x y z w", regexp.MustCompile(`^nodes\[\d+\]\.rotation$`), claims.Four,
-		convention.Quaternion, "", []convention.Term{convention.ScalarLast}},
-	{"glTF 2.0, node.matrix: column by column", regexp.MustCompile(`^nodes\[\d+\]\.matrix$`), claims.Rigid,
-		convention.Matrix, "glTF allows scale in a node's matrix", []convention.Term{convention.ColumnMajor}},
+// keep keeps a value at a spot with what the specification says of it. What keys
+// and comments say is added as usual: where they contradict the format, that is
+// to be seen.
+func (w *walker) keep(s *spot, f fixed, v *rules.Value) {
+	if f.by == 0 {
+		f.by = rules.Format
+	}
+	r := open(f.form, f.by, f.why)
+	r.terms, r.title = f.terms, f.title
+	w.describe(s, r, v)
 }
 
-// at is the rule for a spot.
-func (spec specification) at(s *spot, shape claims.Shape) *rule {
-	for i := range spec {
-		if r := &spec[i]; r.shape == shape && r.path.MatchString(s.path()) {
-			return r
-		}
+// keyName is the key of a spot; of an item that of its list, of the text of an
+// element that of the element.
+func (s *spot) keyName() string {
+	if s.in != nil && (s.index >= 0 || s.owner() != s) {
+		return s.in.keyName()
 	}
-	return nil
+	return s.key
 }
 
-// meaning is the reading of numbers at a spot.
-func (spec specification) meaning(s *spot, shape claims.Shape) reading {
-	if r := spec.at(s, shape); r != nil {
-		return reading{claims.Meaning{Form: r.form, Source: rules.Format, Why: r.why}, r.terms, r.title}
+// rollPitchYaw are the names of three angles in the order in which most formats list them.
+var rollPitchYaw = [3]angle.Role{angle.RoleRoll, angle.RolePitch, angle.RoleYaw}
+
+// label is a full label of an angle sequence that a specification states.
+func label(text string, roles [3]angle.Role) angle.Label {
+	l, err := angle.ParseLabel(text, roles)
+	if err != nil || !l.Full {
+		panic("not a full label: " + text)
 	}
-	return reading{}
+	return l
+}
+
+// element is the nearest map around a spot, which in XML is the element that an
+// attribute, or a child, belongs to.
+func (s *spot) element() *spot { return s.holder() }
+
+// attribute is the text of an attribute, or of a child that holds nothing else.
+func attribute(n *tree.Node, key string) string {
+	if v := n.Get(key); v != nil && v.Kind == tree.Scalar {
+		return v.Text
+	}
+	return ""
 }

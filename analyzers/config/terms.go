@@ -17,7 +17,9 @@ func (w *walker) describe(s *spot, m reading, v *rules.Value) {
 		w.claimForm(s, m, v, r)
 	}
 	for _, term := range m.terms {
-		v.Claims = append(v.Claims, rules.Claim{Says: term, Source: rules.Format, Text: m.title, Place: w.doc.File.Place(s.keyAt)})
+		c := w.claim(s, term, rules.Format)
+		c.Text = m.title
+		v.Claims = append(v.Claims, c)
 	}
 	w.nameTerms(s, m.Form, v)
 	w.remarkTerms(m.Form, v, r)
@@ -86,7 +88,7 @@ func stated(t convention.Term) bool {
 // nameTerms adds what the key says. Components of a quaternion are in order
 // whatever the key says of order.
 func (w *walker) nameTerms(s *spot, f convention.Form, v *rules.Value) {
-	n := s.name
+	n := w.nameOf(s)
 	for _, t := range []convention.Term{n.Scalar, n.Unit, n.Storage, n.Product, n.Hand} {
 		w.addTerm(f, v, w.claim(s, t, rules.Label))
 	}
@@ -104,6 +106,9 @@ func (w *walker) addTerm(f convention.Form, v *rules.Value, c rules.Claim) {
 	}
 	if c.Says.Subject() == convention.OfScalar && named(v) {
 		return
+	}
+	if best, ok := v.Claims.On(c.Says.Subject()); ok && best.Source == rules.Format && !c.Source.Stated() {
+		return // what is only inferred adds nothing to what the format fixes
 	}
 	for _, other := range v.Claims {
 		if other.Says.Subject() == c.Says.Subject() && other.Source == c.Source && other.Says.String() == c.Says.String() {

@@ -3,6 +3,7 @@ package config
 import (
 	"fmt"
 	"slices"
+	"strconv"
 
 	"dextral/analyzers/claims"
 	"dextral/analyzers/config/tree"
@@ -64,7 +65,7 @@ func (w *walker) nameOf(s *spot) *claims.Name {
 	case s.name != nil:
 	case s.in == nil:
 		s.name = w.name("", "")
-	case s.index >= 0:
+	case s.index >= 0 || s.owner() != s:
 		s.name = w.nameOf(s.in)
 	default:
 		s.name = w.name(w.nameOf(s.in).Text, s.key)
@@ -80,11 +81,19 @@ func (s *spot) path() string {
 	case s.in == nil:
 		s.where = fmt.Sprintf("document %d", s.index+1)
 	case s.index >= 0:
-		s.where = fmt.Sprintf("%s[%d]", s.in.path(), s.index)
+		s.where = fmt.Sprintf("%s[%s]", s.in.path(), s.itemName())
 	default:
 		s.where = join(s.in.path(), s.key)
 	}
 	return s.where
+}
+
+// itemName is what the item of a list goes by.
+func (s *spot) itemName() string {
+	if keys := s.in.node.ItemKeys; keys != nil && keys[s.index].Name != "" {
+		return keys[s.index].Name
+	}
+	return strconv.Itoa(s.index)
 }
 
 // otherwise reports whether something around a spot says that nothing below it
@@ -132,24 +141,43 @@ func (w *walker) comment(span source.Span, text string) *claims.Comment {
 
 // entry is the spot of a map's entry.
 func (s *spot) entry(e *tree.Entry) *spot {
-	return &spot{node: e.Value, in: s, key: e.Key, index: -1, keyAt: e.KeyAt}
+	child := &spot{node: e.Value, in: s, key: e.Key, index: -1, keyAt: e.KeyAt}
+	if e.Key == "" { // the text of an element goes by the element
+		child.keyAt = s.keyAt
+	}
+	return child
 }
 
 // item is the spot of a list's item.
 func (s *spot) item(i int) *spot {
-	return &spot{node: s.node.Items[i], in: s, index: i, keyAt: s.keyAt}
+	child := &spot{node: s.node.Items[i], in: s, index: i, keyAt: s.keyAt}
+	if s.node.ItemKeys != nil {
+		child.keyAt = s.node.ItemKeys[i].At
+	}
+	return child
 }
 
 func join(path, key string) string {
 	if path == "" {
 		return key
 	}
+	if key == "" { // the text of an element
+		return path
+	}
 	return path + "." + key
+}
+
+// owner is the element whose text a spot is, or the spot itself.
+func (s *spot) owner() *spot {
+	if s.in != nil && s.index < 0 && s.key == "" {
+		return s.in
+	}
+	return s
 }
 
 // holder is the nearest map around a spot, nil for none.
 func (s *spot) holder() *spot {
-	for p := s.in; p != nil; p = p.in {
+	for p := s.owner().in; p != nil; p = p.in {
 		if p.node.Kind == tree.Map {
 			return p
 		}
@@ -158,6 +186,10 @@ func (s *spot) holder() *spot {
 }
 
 func (w *walker) visit(s *spot) {
+	if w.spec != nil {
+		w.specified(s)
+		return
+	}
 	switch s.node.Kind {
 	case tree.Scalar:
 		_ = w.numbers(s) || w.words(s)
@@ -178,6 +210,17 @@ func (w *walker) visit(s *spot) {
 				w.visit(s.entry(&s.node.Entries[i]))
 			}
 		}
+	}
+}
+
+// specified walks a tree whose format fixes everything.
+func (w *walker) specified(s *spot) {
+	w.spec(w, s)
+	for i := range s.node.Items {
+		w.visit(s.item(i))
+	}
+	for i := range s.node.Entries {
+		w.visit(s.entry(&s.node.Entries[i]))
 	}
 }
 

@@ -14,7 +14,7 @@ import (
 // -z). Each number of the value stands where the word is that it comes from. It
 // reports whether the node is one of these.
 func (w *walker) words(s *spot) bool {
-	if w.spec != nil || !mayBeWords(s.node) {
+	if !mayBeWords(s.node) {
 		return false
 	}
 	name := w.nameOf(s)

@@ -8,43 +8,27 @@ import (
 	"github.com/stretchr/testify/require"
 
 	"dextral/analyzers/config/tree"
+	"dextral/analyzers/config/tree/treetest"
 	"dextral/analyzers/source"
 )
 
-func outline(d *tree.Document, n *tree.Node) string {
-	var parts []string
-	switch n.Kind {
-	case tree.List:
-		for _, i := range n.Items {
-			parts = append(parts, outline(d, i))
-		}
-		return "[" + strings.Join(parts, " ") + "]"
-	case tree.Map:
-		for _, e := range n.Entries {
-			parts = append(parts, e.Key+"="+d.File.Slice(e.KeyAt)+":"+outline(d, e.Value))
-		}
-		return "{" + strings.Join(parts, " ") + "}"
-	}
-	return "<" + d.File.Slice(n.Raw) + ">"
-}
-
 func TestRead(t *testing.T) {
 	for name, c := range map[string]struct{ text, want string }{
-		"plain":            {`{"q": [1, -2.5e-3, null, true]}`, "{q=q:[<1> <-2.5e-3> <null> <true>]}"},
+		"plain":            {`{"q": [1, -2.5e-3, null, true]}`, "{q:[<1> <-2.5e-3> <null> <true>]}"},
 		"strings":          {`["1 0 0", "\u0031", "a\nb", ""]`, `[<1 0 0> <> <> <>]`},
-		"comments, commas": {"// head\n{\"a\": [1, /* two */ 2,], // end\n}\n", "{a=a:[<1> <2>]}"},
+		"comments, commas": {"// head\n{\"a\": [1, /* two */ 2,], // end\n}\n", "{a:[<1> <2>]}"},
 		"not finite":       {`[NaN, -Infinity, Infinity, "NaN"]`, "[<NaN> <-Infinity> <Infinity> <NaN>]"},
-		"CRLF and a mark":  {"\ufeff{\r\n\"a\": 1\r\n}", "{a=a:<1>}"},
-		"key twice":        {`{"a": 1, "a": 2}`, "{a=a:<1> a=a:<2>}"},
-		"escaped key":      {`{"\u0071": 1}`, `{q=\u0071:<1>}`},
-		"lone surrogate":   {`{"a": "\ud800"}`, "{a=a:<>}"},
+		"CRLF and a mark":  {"\ufeff{\r\n\"a\": 1\r\n}", "{a:<1>}"},
+		"key twice":        {`{"a": 1, "a": 2}`, "{a:<1> a:<2>}"},
+		"escaped key":      {`{"\u0071": 1}`, `{\u0071:<1>}`},
+		"lone surrogate":   {`{"a": "\ud800"}`, "{a:<>}"},
 		"huge":             {`[1e999, 123456789012345678901234567890]`, "[<1e999> <123456789012345678901234567890>]"},
 	} {
 		t.Run(name, func(t *testing.T) {
 			d, err := Read(source.New("mount.json", []byte(c.text)))
 			require.NoError(t, err)
 			require.Len(t, d.Roots, 1)
-			assert.Equal(t, c.want, outline(d, d.Roots[0]))
+			assert.Equal(t, c.want, treetest.Outline(d, d.Roots[0]))
 		})
 	}
 }
@@ -113,24 +97,6 @@ func FuzzRead(f *testing.F) {
 			require.LessOrEqual(t, e.Place.Line, file.Lines())
 			return
 		}
-		whole := source.Span{To: len(text)}
-		for _, c := range d.Comments {
-			require.True(t, whole.Holds(c.Span))
-		}
-		var visit func(n *tree.Node)
-		visit = func(n *tree.Node) {
-			require.True(t, whole.Holds(n.Span) && n.Span.Holds(n.Raw) || n.Raw.Empty())
-			if !n.Raw.Empty() {
-				require.Equal(t, strings.Fields(n.Text), strings.Fields(file.Slice(n.Raw)))
-			}
-			for _, i := range n.Items {
-				visit(i)
-			}
-			for _, e := range n.Entries {
-				require.True(t, whole.Holds(e.KeyAt))
-				visit(e.Value)
-			}
-		}
-		visit(d.Roots[0])
+		require.NoError(t, treetest.Check(d))
 	})
 }

@@ -9,6 +9,7 @@ import (
 	"github.com/stretchr/testify/require"
 
 	"dextral/analyzers/config/tree"
+	"dextral/analyzers/config/tree/treetest"
 	"dextral/analyzers/source"
 )
 
@@ -17,23 +18,6 @@ func read(t *testing.T, text string) *tree.Document {
 	d, err := Read(source.New("mount.toml", []byte(text)))
 	require.NoError(t, err)
 	return d
-}
-
-func outline(d *tree.Document, n *tree.Node) string {
-	var parts []string
-	switch n.Kind {
-	case tree.List:
-		for _, i := range n.Items {
-			parts = append(parts, outline(d, i))
-		}
-		return "[" + strings.Join(parts, " ") + "]"
-	case tree.Map:
-		for _, e := range n.Entries {
-			parts = append(parts, d.File.Slice(e.KeyAt)+":"+outline(d, e.Value))
-		}
-		return "{" + strings.Join(parts, " ") + "}"
-	}
-	return "<" + d.File.Slice(n.Raw) + ">"
 }
 
 func TestRead(t *testing.T) {
@@ -52,7 +36,7 @@ func TestRead(t *testing.T) {
 	} {
 		t.Run(name, func(t *testing.T) {
 			d := read(t, c.text)
-			assert.Equal(t, c.want, outline(d, d.Roots[0]))
+			assert.Equal(t, c.want, treetest.Outline(d, d.Roots[0]))
 		})
 	}
 }
@@ -137,24 +121,6 @@ func FuzzRead(f *testing.F) {
 			require.LessOrEqual(t, e.Place.Line, file.Lines())
 			return
 		}
-		whole := source.Span{To: len(text)}
-		var visit func(n *tree.Node)
-		visit = func(n *tree.Node) {
-			require.True(t, whole.Holds(n.Span) && n.Span.From <= n.Span.To && (n.Raw.Empty() || n.Span.Holds(n.Raw)), "%v %v", n.Span, n.Raw)
-			if !n.Raw.Empty() {
-				require.Equal(t, strings.Fields(n.Text), strings.Fields(file.Slice(n.Raw)))
-			}
-			for _, i := range n.Items {
-				visit(i)
-			}
-			for _, e := range n.Entries {
-				require.True(t, whole.Holds(e.KeyAt))
-				visit(e.Value)
-			}
-		}
-		visit(d.Roots[0])
-		for _, c := range d.Comments {
-			require.Equal(t, byte('#'), text[c.Span.From])
-		}
+		require.NoError(t, treetest.Check(d))
 	})
 }

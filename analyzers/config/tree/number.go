@@ -72,16 +72,19 @@ func (d *Document) Words(n *Node) []Word {
 	return words
 }
 
-// number makes a rules.Number of a word.
-func (d *Document) number(w Word) (rules.Number, bool) {
+// NumberIn reads a word that is a number.
+func (d *Document) NumberIn(w Word) (rules.Number, bool) {
 	x, ok := Float(w.Text)
-	return rules.Number{Text: w.Text, Value: x, Place: d.File.Place(w.Span)}, ok
+	if !ok {
+		return rules.Number{}, false
+	}
+	return rules.Number{Text: w.Text, Value: x, Place: d.File.Place(w.Span)}, true
 }
 
 // Number reads a scalar that is one number.
 func (d *Document) Number(n *Node) (rules.Number, bool) {
 	if words := d.Words(n); len(words) == 1 {
-		return d.number(words[0])
+		return d.NumberIn(words[0])
 	}
 	return rules.Number{}, false
 }
@@ -112,7 +115,7 @@ func (d *Document) Numbers(n *Node, limit int) []rules.Number {
 	numbers := make([]rules.Number, len(words))
 	for i, w := range words {
 		ok := false
-		if numbers[i], ok = d.number(w); !ok {
+		if numbers[i], ok = d.NumberIn(w); !ok {
 			return nil
 		}
 	}

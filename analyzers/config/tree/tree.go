@@ -68,6 +68,16 @@ type Node struct {
 	Raw     source.Span // Scalar: where the words of Text stand, without quotes; empty if nowhere
 	Items   []*Node     // List
 	Entries []Entry     // Map, in file order
+
+	ItemKeys []ItemKey // List: of each item, where the format writes one; nil mostly
+}
+
+// ItemKey is the key of a list's item: where a format repeats the key for each,
+// where that stands, and the name that the item goes by in paths, "" for its
+// index.
+type ItemKey struct {
+	Name string
+	At   source.Span
 }
 
 // Entry is a key with its value.

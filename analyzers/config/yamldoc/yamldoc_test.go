@@ -9,6 +9,7 @@ import (
 	"github.com/stretchr/testify/require"
 
 	"dextral/analyzers/config/tree"
+	"dextral/analyzers/config/tree/treetest"
 	"dextral/analyzers/source"
 )
 
@@ -17,28 +18,6 @@ func read(t *testing.T, text string) *tree.Document {
 	d, err := Read(source.New("mount.yaml", []byte(text)))
 	require.NoError(t, err)
 	return d
-}
-
-// outline prints a tree: kinds as brackets, scalars as they stand in the file.
-func outline(d *tree.Document, n *tree.Node) string {
-	tag := n.Tag
-	if tag != "" {
-		tag += " "
-	}
-	var parts []string
-	switch n.Kind {
-	case tree.List:
-		for _, i := range n.Items {
-			parts = append(parts, outline(d, i))
-		}
-		return tag + "[" + strings.Join(parts, " ") + "]"
-	case tree.Map:
-		for _, e := range n.Entries {
-			parts = append(parts, d.File.Slice(e.KeyAt)+":"+outline(d, e.Value))
-		}
-		return tag + "{" + strings.Join(parts, " ") + "}"
-	}
-	return tag + "<" + d.File.Slice(n.Raw) + ">"
 }
 
 func TestRead(t *testing.T) {
@@ -66,7 +45,7 @@ func TestRead(t *testing.T) {
 		t.Run(name, func(t *testing.T) {
 			d := read(t, c.text)
 			require.Len(t, d.Roots, 1)
-			assert.Equal(t, c.want, outline(d, d.Roots[0]))
+			assert.Equal(t, c.want, treetest.Outline(d, d.Roots[0]))
 		})
 	}
 }
@@ -74,7 +53,7 @@ func TestRead(t *testing.T) {
 func TestDocuments(t *testing.T) {
 	d := read(t, "a: 1\n---\nb: 2\n...\n")
 	require.Len(t, d.Roots, 2)
-	assert.Equal(t, "{b:<2>}", outline(d, d.Roots[1]))
+	assert.Equal(t, "{b:<2>}", treetest.Outline(d, d.Roots[1]))
 	assert.Empty(t, read(t, "").Roots)
 	assert.Empty(t, read(t, "# nothing but a comment\n").Roots)
 }
@@ -223,28 +202,6 @@ func FuzzRead(f *testing.F) {
 			require.LessOrEqual(t, e.Place.Line, file.Lines())
 			return
 		}
-		for _, c := range d.Comments {
-			require.Equal(t, byte('#'), text[c.Span.From])
-		}
-		whole := source.Span{To: len(text)}
-		var visit func(n *tree.Node)
-		visit = func(n *tree.Node) {
-			require.True(t, whole.Holds(n.Span) && whole.Holds(n.Raw), "%v %v", n.Span, n.Raw)
-			require.LessOrEqual(t, n.Span.From, n.Span.To)
-			if !n.Raw.Empty() {
-				require.Equal(t, strings.Fields(n.Text), strings.Fields(file.Slice(n.Raw)))
-				require.True(t, n.Span.Holds(n.Raw))
-			}
-			for _, i := range n.Items {
-				visit(i)
-			}
-			for _, e := range n.Entries {
-				require.True(t, whole.Holds(e.KeyAt))
-				visit(e.Value)
-			}
-		}
-		for _, root := range d.Roots {
-			visit(root)
-		}
+		require.NoError(t, treetest.Check(d))
 	})
 }
