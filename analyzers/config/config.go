@@ -15,10 +15,12 @@
 package config
 
 import (
+	"bytes"
 	"path"
 	"strings"
 
 	"dextral/analyzers/config/jsondoc"
+	"dextral/analyzers/config/linedoc"
 	"dextral/analyzers/config/tomldoc"
 	"dextral/analyzers/config/tree"
 	"dextral/analyzers/config/xmldoc"
@@ -53,20 +55,63 @@ func always(spec specification) func(*tree.Document) specification {
 }
 
 var formats = map[string]format{
-	".yaml":   {"YAML", yamldoc.Read, nil},
-	".yml":    {"YAML", yamldoc.Read, nil},
-	".json":   {"JSON", jsondoc.Read, nil},
-	".jsonc":  {"JSON", jsondoc.Read, nil},
-	".toml":   {"TOML", tomldoc.Read, nil},
-	".xml":    {"XML", xmldoc.Read, byRoot},
-	".urdf":   {"URDF", xmldoc.Read, byRoot},
-	".xacro":  {"URDF", xmldoc.Read, byRoot},
-	".sdf":    {"SDF", xmldoc.Read, byRoot},
-	".world":  {"SDF", xmldoc.Read, byRoot},
-	".launch": {"launch file", xmldoc.Read, byRoot},
-	".mjcf":   {"MJCF", xmldoc.Read, byRoot},
-	".gltf":   {"glTF", jsondoc.Read, always(gltf)},
+	".yaml":       {"YAML", yamldoc.Read, nil},
+	".yml":        {"YAML", yamldoc.Read, nil},
+	".json":       {"JSON", jsondoc.Read, nil},
+	".jsonc":      {"JSON", jsondoc.Read, nil},
+	".gltf":       {"glTF", jsondoc.Read, always(gltf)},
+	".toml":       {"TOML", tomldoc.Read, nil},
+	".xml":        {"XML", xmldoc.Read, byRoot},
+	".urdf":       {"URDF", xmldoc.Read, byRoot},
+	".xacro":      {"URDF", xmldoc.Read, byRoot},
+	".sdf":        {"SDF", xmldoc.Read, byRoot},
+	".world":      {"SDF", xmldoc.Read, byRoot},
+	".launch":     {"launch file", xmldoc.Read, byRoot},
+	".mjcf":       {"MJCF", xmldoc.Read, byRoot},
+	".ini":        {"INI", linedoc.Sections, nil},
+	".cfg":        {"INI", linedoc.Sections, nil},
+	".conf":       {"INI", linedoc.Sections, nil},
+	".properties": {"properties", linedoc.Sections, nil},
+	".param":      {"parameter file", linedoc.Parameters, always(parameters)},
+	".params":     {"parameter file", linedoc.Parameters, always(parameters)},
+	".parm":       {"parameter file", linedoc.Parameters, always(parameters)},
+	".g2o":        graphFormat,
 }
+
+// Formats that are told by their first lines.
+var (
+	graphFormat   = format{"pose graph", linedoc.Graph, always(poseGraph)}
+	messageFormat = format{"CCSDS attitude parameter message", linedoc.KeyValue, always(ccsds)}
+	colonFormat   = format{"calibration text", linedoc.Colon, nil}
+)
+
+// Format names the format of a file by its name; "" if the name does not tell,
+// or tells of none that is read.
+func Format(name string) string { return formats[strings.ToLower(path.Ext(name))].name }
+
+// Recognise names the format of a file by its name or, where that does not tell,
+// by its first bytes; "" if it is none that is read.
+func Recognise(name string, head []byte) string { return recognise(name, head).name }
+
+func recognise(name string, head []byte) format {
+	extension := strings.ToLower(path.Ext(name))
+	if f, ok := formats[extension]; ok {
+		return f
+	}
+	start := bytes.TrimPrefix(head[:min(len(head), 64)], []byte(source.ByteOrderMark))
+	switch {
+	case bytes.HasPrefix(bytes.TrimLeft(start, " \r\n"), []byte("CCSDS_APM_VERS")):
+		return messageFormat
+	case linedoc.IsGraph(head):
+		return graphFormat
+	case extension == ".txt" && linedoc.IsColon(head[:min(len(head), headSize)]):
+		return colonFormat
+	}
+	return format{}
+}
+
+// headSize is how much of a text is looked at to tell what it is.
+const headSize = 4096
 
 // byRoot tells the formats in XML by their root element. Others are read by
 // custom, as OpenCV's storage is.
@@ -81,15 +126,14 @@ func byRoot(d *tree.Document) specification {
 			return launch
 		case "mujoco", "mujocoinclude":
 			return mjcf
+		case "apm":
+			return ccsds
 		}
 	}
 	return nil
 }
 
-// Format names the format of a file by its name; "" if it is none that is read.
-func Format(name string) string { return formats[strings.ToLower(path.Ext(name))].name }
-
-// Read reads a file whose Format is known. The error is of type *source.Error,
+// Read reads a file whose format Recognise knows. The error is of type *source.Error,
 // with the place of the fault and what to do; the values found before it are
 // not returned.
 func Read(name string, text []byte) (Result, error) {
@@ -97,8 +141,8 @@ func Read(name string, text []byte) (Result, error) {
 	if err := f.CheckText(); err != nil {
 		return Result{}, err
 	}
-	format, ok := formats[strings.ToLower(path.Ext(name))]
-	if !ok {
+	format := recognise(name, text)
+	if format.read == nil {
 		return Result{}, f.ErrorAt(source.Span{}, "this format is not read", "give the file the usual ending of its format")
 	}
 	doc, err := format.read(f)

@@ -59,6 +59,13 @@ func TestFormat(t *testing.T) {
 	} {
 		assert.Equal(t, want, Format(name), name)
 	}
+	for _, c := range []struct{ name, head, want string }{
+		{"m.kvn", "\ufeff\r\nCCSDS_APM_VERS = 2.0\n", "CCSDS attitude parameter message"}, {"m.kvn", "CCSDS_AEM_VERS = 2.0\n", ""},
+		{"m.txt", "EDGE_SE3:QUAT 0 1 1\n", "pose graph"}, {"m.txt", "R: 1 0 0 0 1 0 0 0 1\n", "calibration text"}, {"m.log", "R: 1 0 0 0 1 0 0 0 1\n", ""},
+		{"m.txt", "R: see below\n", ""}, {"m", "", ""}, {"m.yaml", "", "YAML"},
+	} {
+		assert.Equal(t, c.want, Recognise(c.name, []byte(c.head)), c.name+" "+c.head)
+	}
 	_, err := Read("mount.txt", []byte("q: 1"))
 	assert.ErrorContains(t, err, "mount.txt:1:1: this format is not read")
 }

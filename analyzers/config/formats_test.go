@@ -1,6 +1,7 @@
 package config
 
 import (
+	"strings"
 	"testing"
 
 	"github.com/stretchr/testify/assert"
@@ -99,4 +100,80 @@ func TestTOML(t *testing.T) {
 		"cam.mount.quaternion: quaternion; label scalar first (w x y z); label quaternion; of cam.mount/",
 		"imu[0].R: rotation matrix; name rotation matrix; comment v_body = R v_imu",
 	}, summaries(t, "m.toml", text))
+}
+
+func TestINI(t *testing.T) {
+	text := "[cam.mount]\nrpy_deg = 1, 2, 3 ; roll pitch yaw, fixed axes x-y-z\nquaternion_wxyz = [1, 0, 0, 0]\n\n[lens]\n# v_body = R v_lens\nR = 1 0 0\n    0 1 0\n    0 0 1\n" +
+		"[park]\npark.qw=1\npark.qx=0\npark.qy=0\npark.qz=0\n"
+	assert.Equal(t, []string{
+		"cam.mount.rpy_deg: angles; label angles; comment angles; label degree; comment x-y-z (fixed axes); of cam.mount/",
+		"cam.mount.quaternion_wxyz: quaternion; label quaternion; label scalar first (w x y z); of cam.mount/",
+		"lens.R: rotation matrix; name rotation matrix; comment v_body = R v_lens",
+		"park.park: quaternion; label scalar first (w x y z); label quaternion",
+	}, summaries(t, "m.ini", text))
+}
+
+func TestParameters(t *testing.T) {
+	assert.Equal(t, []string{"AHRS_ORIENTATION: nothing; undecided", "COMPASS_ORIENT2: nothing; undecided"},
+		summaries(t, "m.param", "AHRS_ORIENTATION,6 # Yaw270\nCOMPASS_ORIENT2 0\nGMB_ROLL,1\nGMB_PITCH,2\nGMB_YAW,3\nAHRS_TRIM_X,0.01\nROT_FILTER,2\n"))
+}
+
+func TestColonText(t *testing.T) {
+	assert.Equal(t, []string{
+		"P0: matrix; undecided",
+		"R0_rect: rotation matrix; name rotation matrix",
+		"Tr_velo_to_cam: rigid transform; name rigid transform; name v_cam = R v_velo",
+	}, summaries(t, "m.txt", "P0: 7e2 0 6e2 0 0 7e2 1e2 0 0 0 1 0\nR0_rect: 1 0 0 0 1 0 0 0 1\nTr_velo_to_cam: 1 0 0 0 0 1 0 0 0 0 1 0\nT: 1 2 3\n"))
+}
+
+func TestPoseGraph(t *testing.T) {
+	assert.Equal(t, []string{
+		"VERTEX_SE3:QUAT[0]: quaternion; format quaternion; format scalar last (x y z w)",
+		"EDGE_SE3:QUAT[0 1]: quaternion; format quaternion; format scalar last (x y z w)",
+		"EDGE3[0 1]: angles; format angles; format radian; undecided",
+	}, summaries(t, "m.g2o", "VERTEX_SE3:QUAT 0 1 2 3 0 0 0 1\nEDGE_SE3:QUAT 0 1 1 2 3 0 0 0 1 10 0 0\nEDGE3 0 1 1 2 3 4 5 6\nVERTEX_SE2 0 1 2 3\n"))
+}
+
+// The two issues of the standard: the second fixes the direction by the frames,
+// the first has a keyword for it and leaves the quaternion's meaning open
+// (CCSDS 504.0-B-2, annexes F and J).
+func TestCCSDS(t *testing.T) {
+	second := "CCSDS_APM_VERS = 2.0\nEPOCH = 2031-03-04T12:00:00\nQUAT_START\nREF_FRAME_A = ICRF\nREF_FRAME_B = BODY\nQ1 = 0\nQ2 = 0\nQ3 = 0\nQC = 1\nQ1_DOT = 0 [1/s]\nQUAT_STOP\n" +
+		"EULER_START\nREF_FRAME_A = ICRF\nREF_FRAME_B = BODY\nEULER_ROT_SEQ = ZYX\nANGLE_1 = 3 [deg]\nANGLE_2 = 2 [deg]\nANGLE_3 = 1 [deg]\nEULER_STOP\n"
+	want := []string{
+		"QUAT: quaternion; format scalar first (w x y z); format quaternion; format v_ICRF = R v_BODY; of /ICRF_to_BODY",
+		"EULER: angles; format angles; format v_ICRF = R v_BODY; format degree; format z-y'-x'' (moving axes); of /ICRF_to_BODY",
+	}
+	assert.Equal(t, want, summaries(t, "m.kvn", second))
+	v := readText(t, "m.kvn", second).Values[1]
+	assert.Equal(t, "3", v.Numbers[0].Text, "without its unit")
+
+	xml := `<apm id="CCSDS_APM_VERS" version="2.0"><body><segment><data><quaternionState><REF_FRAME_A>ICRF</REF_FRAME_A><REF_FRAME_B>BODY</REF_FRAME_B>
+<quaternion><Q1>0</Q1><Q2>0</Q2><Q3>0</Q3><QC>1</QC></quaternion></quaternionState>
+<eulerAngleState><REF_FRAME_A>ICRF</REF_FRAME_A><REF_FRAME_B>BODY</REF_FRAME_B><EULER_ROT_SEQ>ZYX</EULER_ROT_SEQ>
+<ANGLE_1 units="deg">3</ANGLE_1><ANGLE_2 units="deg">2</ANGLE_2><ANGLE_3 units="deg">1</ANGLE_3></eulerAngleState></data></segment></body></apm>`
+	var values []string
+	for _, s := range summaries(t, "m.xml", xml) {
+		_, says, _ := strings.Cut(s, ": ")
+		values = append(values, says)
+	}
+	for i, s := range want {
+		_, says, _ := strings.Cut(s, ": ")
+		assert.Equal(t, says, values[i])
+	}
+
+	first := "CCSDS_APM_VERS = 1.0\nQ_FRAME_A = BODY\nQ_FRAME_B = ICRF\nQ_DIR = B2A\nQ1 = 0\nQ2 = 0\nQ3 = 0\nQC = 1\n" +
+		"EULER_FRAME_A = ICRF\nEULER_FRAME_B = BODY\nEULER_DIR = A2B\nEULER_ROT_SEQ = 321\nZ_ANGLE = 3\nY_ANGLE = 2\nX_ANGLE = 1\n"
+	assert.Equal(t, []string{
+		"Q1, Q2, Q3, QC: quaternion; format scalar first (w x y z); format quaternion; of /ICRF_to_BODY",
+		"EULER_ROT_SEQ: angles; format angles; format degree; format z-y'-x'' (moving axes); of /ICRF_to_BODY",
+	}, summaries(t, "m.kvn", first))
+	assert.Equal(t, []float64{3, 2, 1}, readText(t, "m.kvn", first).Values[1].Floats(), "as written")
+
+	wrong := readText(t, "m.kvn", strings.Replace(first, "321", "331", 1))
+	assert.False(t, wrong.Values[1].Decided())
+	assert.Equal(t, `m.kvn:12:17 EULER_ROT_SEQ "331" names no sequence of these angles; it must be three axes, none twice in a row`,
+		wrong.Warnings[0].Place.String()+" "+wrong.Warnings[0].Message)
+	assert.Empty(t, wrong.Values[0].Of)
+	assert.Empty(t, readText(t, "m.kvn", strings.Replace(first, "Q_DIR = B2A", "Q_DIR = A2B", 1)).Values[0].Of, "the other way round is another orientation")
 }

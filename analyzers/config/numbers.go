@@ -34,7 +34,7 @@ func sizeOf(count int) (shape claims.Shape, rows, cols int, ok bool) {
 // numbers reads a list of numbers, or a text of several. It reports whether the
 // node is one, be it an orientation or not.
 func (w *walker) numbers(s *spot) bool {
-	if s.node.Kind == tree.Scalar && !strings.ContainsAny(s.node.Text, " \t\n,;") {
+	if s.node.Kind == tree.Scalar && !strings.ContainsAny(s.node.Text, " \t\n,;]") {
 		return false
 	}
 	numbers := w.doc.Numbers(s.node, maxNumbers)

@@ -44,12 +44,11 @@ type Word struct {
 }
 
 // isSeparator reports whether a character parts the words of a scalar that
-// holds several.
-func isSeparator(c byte) bool {
-	return c == ' ' || c == '\t' || c == '\n' || c == '\r' || c == ',' || c == ';'
-}
+// holds several: white space, commas, semicolons and brackets, as where a format
+// without lists holds "[[1, 0, 0], [0, 1, 0], [0, 0, 1]]".
+func isSeparator(c byte) bool { return strings.IndexByte(" \t\n\r,;[]()", c) >= 0 }
 
-// Words splits a scalar at white space, commas and semicolons. It returns nil
+// Words splits a scalar at white space, commas, semicolons and brackets. It returns nil
 // for what is no scalar or stands nowhere verbatim.
 func (d *Document) Words(n *Node) []Word {
 	if n == nil || n.Kind != Scalar || n.Raw.Empty() {

@@ -38,7 +38,7 @@ func document(text string) (*Document, *Node) {
 
 func TestNumbers(t *testing.T) {
 	for text, want := range map[string][]string{
-		"1 2 3": {"1", "2", "3"}, " 1,2;\n3\t": {"1", "2", "3"}, "1": {"1"}, "1 two": nil, "": nil, ", ,": nil, "1 2 3 4": nil, "[1, 2]": nil,
+		"1 2 3": {"1", "2", "3"}, " 1,2;\n3\t": {"1", "2", "3"}, "1": {"1"}, "1 two": nil, "": nil, ", ,": nil, "1 2 3 4": nil, "[[1, 2], (3)]": {"1", "2", "3"}, "1 [deg]": nil, "{1, 2}": nil,
 	} {
 		d, n := document(text)
 		var got []string

@@ -167,63 +167,10 @@ func (r *reader) close(e *element) {
 		n.SetRaw(r.file, e.raw)
 		e.node.Entries = append(e.node.Entries, tree.Entry{Value: n})
 	}
-	gather(e.node)
+	tree.Gather(e.node)
 	if e.name != "" {
 		parent := r.open[len(r.open)-1].node
 		parent.Entries = append(parent.Entries, tree.Entry{Key: e.name, KeyAt: e.keyAt, Value: e.node})
-	}
-}
-
-// gather makes one list of the children that share a name.
-func gather(n *tree.Node) {
-	first := map[string]int{}
-	kept := n.Entries[:0]
-	for _, e := range n.Entries {
-		at, again := first[e.Key]
-		if !again {
-			first[e.Key] = len(kept)
-			kept = append(kept, e)
-			continue
-		}
-		list := kept[at].Value
-		if list.Tag != listTag {
-			list = &tree.Node{Kind: tree.List, Tag: listTag, Span: list.Span, Items: []*tree.Node{list}, ItemKeys: []tree.ItemKey{keyOf(kept[at])}}
-			kept[at].Value = list
-		}
-		list.Items = append(list.Items, e.Value)
-		list.ItemKeys = append(list.ItemKeys, keyOf(e))
-		list.Span = list.Span.Cover(e.Value.Span)
-	}
-	n.Entries = kept
-	for _, e := range kept {
-		if e.Value.Tag == listTag {
-			e.Value.Tag = ""
-			unique(e.Value.ItemKeys)
-		}
-	}
-}
-
-// listTag marks a list under construction; no element can be called so.
-const listTag = "<list>"
-
-func keyOf(e tree.Entry) tree.ItemKey {
-	k := tree.ItemKey{At: e.KeyAt}
-	if name := e.Value.Get("name"); name != nil && name.Kind == tree.Scalar {
-		k.Name = name.Text
-	}
-	return k
-}
-
-// unique drops names that do not tell the items of a list apart.
-func unique(keys []tree.ItemKey) {
-	count := map[string]int{}
-	for _, k := range keys {
-		count[k.Name]++
-	}
-	for i := range keys {
-		if count[keys[i].Name] > 1 || strings.ContainsAny(keys[i].Name, "[]") {
-			keys[i].Name = ""
-		}
 	}
 }
 
