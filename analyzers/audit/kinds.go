@@ -123,5 +123,8 @@ func readByHead(ctx context.Context, f walk.File) *found {
 		return failed(other, f, err)
 	}
 	head = head[:n]
+	if config.Recognise(f.Name, head) != "" {
+		return readConfig(ctx, f)
+	}
 	return readLog(ctx, f, head, io.MultiReader(bytes.NewReader(head), file))
 }
