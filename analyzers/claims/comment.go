@@ -51,7 +51,7 @@ func ReadComment(text string) *Comment {
 	c.Product = one(c.words, productPhrases)
 	c.Hand = one(c.words, handPhrases)
 	c.Form = one(c.words, formPhrases)
-	c.Unit = unitIn(text)
+	c.Unit = UnitIn(text)
 	c.Roles, _ = rolesIn(c.words)
 	c.Angular = c.Roles[0] != angle.RoleNone || c.Form == convention.Angles || one(c.words, phrases[bool]{"angle": true, "angles": true})
 	c.readDirection()
@@ -66,9 +66,9 @@ var formPhrases = phrases[convention.Form]{
 	"axis angle": convention.AxisAngle, "axis angles": convention.AxisAngle, "angle axis": convention.AxisAngle,
 }
 
-// unitIn reads the unit of angles in a text: one in brackets before others, and
+// UnitIn reads the unit of angles in a text: one in brackets before others, and
 // none where two are left. Rates and temperatures are not angles.
-func unitIn(text string) convention.Unit {
+func UnitIn(text string) convention.Unit {
 	var found convention.Unit
 	var units []string
 	if m := bracketUnit.FindAllStringSubmatch(text, -1); m != nil {

@@ -66,7 +66,7 @@ func ReadIn(outer, name string) *Name {
 // either side (body_T_cam0). Case matters: r, t and Q are other things.
 func (n *Name) readSymbol() {
 	for i, w := range n.words {
-		if i > 1 || i == 1 && len(n.words) != 3 {
+		if i > 1 || i == 1 && len(n.words) < 3 {
 			return
 		}
 		switch {

@@ -52,6 +52,7 @@ r                         | -                     | -                     | -   
 T_cam_imu                 | -                     | -                     | -                     | name rigid transform
 body_T_cam0               | -                     | -                     | -                     | name rigid transform
 T_BS                      | -                     | -                     | -                     | name rigid transform
+cam_R_m2c                 | -                     | -                     | name rotation matrix  | name rigid transform
 Tr_velo_to_cam            | -                     | -                     | -                     | name rigid transform
 cam_to_body               | -                     | -                     | -                     | name rigid transform
 transform_matrix          | -                     | -                     | -                     | name rigid transform

@@ -66,7 +66,7 @@ func (k *Name) Neighbour(value string) (Neighbour, bool) {
 	return n, true
 }
 
-func readUnit(n *Neighbour, value string) { n.Unit = unitIn(value) }
+func readUnit(n *Neighbour, value string) { n.Unit = UnitIn(value) }
 
 func readOrder(n *Neighbour, value string) {
 	readConvention(n, value)
@@ -95,7 +95,7 @@ func readForm(n *Neighbour, value string) {
 	words := wordsOf(value)
 	n.Form = one(words, formPhrases)
 	n.Scalar = one(words, scalarPhrases)
-	n.Unit = unitIn(value)
+	n.Unit = UnitIn(value)
 	n.Roles, _ = rolesIn(wordsOf(value))
 	n.Sequence = strings.Join(wordsOf(value), " ")
 }

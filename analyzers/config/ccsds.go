@@ -5,6 +5,7 @@ import (
 	"strconv"
 	"strings"
 
+	"dextral/analyzers/claims"
 	"dextral/analyzers/config/tree"
 	"dextral/core/angle"
 	"dextral/core/convention"
@@ -140,7 +141,13 @@ func (w *walker) ccsdsAngles(s *spot, sequence *tree.Node) {
 	} else {
 		f.terms = append(f.terms, l)
 	}
-	w.keepBlock(s, parts, frames, f, &rules.Value{Numbers: x, Roles: roles})
+	v := &rules.Value{Numbers: x, Roles: roles}
+	for _, p := range parts {
+		e := s.node.Entries[p.entry]
+		unit := e.Value.Tag + attribute(e.Value, "units")
+		w.addTerm(convention.Angles, v, rules.Claim{Says: claims.UnitIn(unit), Source: rules.Label, Text: e.Key + " " + unit, Place: w.doc.File.Place(e.KeyAt)})
+	}
+	w.keepBlock(s, parts, frames, f, v)
 }
 
 // keepBlock keeps the value of a block. All blocks of a message hold at one

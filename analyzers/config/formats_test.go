@@ -5,6 +5,8 @@ import (
 	"testing"
 
 	"github.com/stretchr/testify/assert"
+
+	"dextral/core/convention"
 )
 
 func TestURDF(t *testing.T) {
@@ -142,7 +144,7 @@ func TestCCSDS(t *testing.T) {
 		"EULER_START\nREF_FRAME_A = ICRF\nREF_FRAME_B = BODY\nEULER_ROT_SEQ = ZYX\nANGLE_1 = 3 [deg]\nANGLE_2 = 2 [deg]\nANGLE_3 = 1 [deg]\nEULER_STOP\n"
 	want := []string{
 		"QUAT: quaternion; format scalar first (w x y z); format quaternion; format v_ICRF = R v_BODY; of /ICRF_to_BODY",
-		"EULER: angles; format angles; format v_ICRF = R v_BODY; format degree; format z-y'-x'' (moving axes); of /ICRF_to_BODY",
+		"EULER: angles; label degree; format angles; format v_ICRF = R v_BODY; format degree; format z-y'-x'' (moving axes); of /ICRF_to_BODY",
 	}
 	assert.Equal(t, want, summaries(t, "m.kvn", second))
 	v := readText(t, "m.kvn", second).Values[1]
@@ -169,6 +171,9 @@ func TestCCSDS(t *testing.T) {
 		"EULER_ROT_SEQ: angles; format angles; format degree; format z-y'-x'' (moving axes); of /ICRF_to_BODY",
 	}, summaries(t, "m.kvn", first))
 	assert.Equal(t, []float64{3, 2, 1}, readText(t, "m.kvn", first).Values[1].Floats(), "as written")
+
+	radians := readText(t, "m.kvn", strings.ReplaceAll(second, "[deg]", "[rad]")).Values[1]
+	assert.Len(t, radians.Claims.Conflicts(convention.OfUnit), 1, "the format's unit is not open to choice")
 
 	wrong := readText(t, "m.kvn", strings.Replace(first, "321", "331", 1))
 	assert.False(t, wrong.Values[1].Decided())

@@ -10,7 +10,7 @@ import (
 
 // KeyValue reads the key-value notation of CCSDS messages: KEY = value [unit].
 // What stands between X_START and X_STOP is a map under the key X; blocks that
-// repeat are a list. Lines of data without a key are left out. COMMENT lines are
+// repeat are a list; a unit is the tag of its value. Lines of data without a key are left out. COMMENT lines are
 // comments.
 func KeyValue(f *source.File) (*tree.Document, error) {
 	r, err := newReader(f)
@@ -27,7 +27,10 @@ func KeyValue(f *source.File) (*tree.Document, error) {
 			return
 		}
 		if key, value, ok := r.cut(s, "="); ok && !key.Empty() {
-			r.entry(top.node, key, r.scalar(r.withoutUnit(value)))
+			number, unit := r.cutUnit(value)
+			n := r.scalar(number)
+			n.Tag = unit
+			r.entry(top.node, key, n)
 			return
 		}
 		if name, ok := strings.CutSuffix(text, "_START"); ok && name != "" && !strings.ContainsAny(name, " \t") {
@@ -64,11 +67,11 @@ func (r *reader) closed(open []block) []block {
 	return open
 }
 
-// withoutUnit takes a unit in brackets off the end of a value.
-func (r *reader) withoutUnit(s source.Span) source.Span {
+// cutUnit takes a unit in brackets off the end of a value.
+func (r *reader) cutUnit(s source.Span) (source.Span, string) {
 	text := r.file.Text[s.From:s.To]
 	if i := bytes.LastIndexByte(text, '['); i > 0 && text[len(text)-1] == ']' {
-		return r.trim(source.Span{From: s.From, To: s.From + i})
+		return r.trim(source.Span{From: s.From, To: s.From + i}), string(text[i:])
 	}
-	return s
+	return s, ""
 }

@@ -71,7 +71,7 @@ func TestColon(t *testing.T) {
 
 func TestKeyValue(t *testing.T) {
 	for name, c := range map[string]struct{ text, want string }{
-		"blocks":   {"V = 2.0\nCOMMENT a = b\nQUAT_START\nQ1 = 0.5 [1/s]\nQUAT_STOP\nX = y z\n", "{V:<2.0> QUAT:{Q1:<0.5>} X:<y z>} #a = b"},
+		"blocks":   {"V = 2.0\nCOMMENT a = b\nQUAT_START\nQ1 = 0.5 [1/s]\nQUAT_STOP\nX = y z\n", "{V:<2.0> QUAT:{Q1:[1/s] <0.5>} X:<y z>} #a = b"},
 		"repeated": {"Q_START\nA = 1\nQ_STOP\nQ_START\nA = 2\nQ_STOP\n", "{Q:[{A:<1>} {A:<2>}]}"},
 		"open":     {"Q_START\nA = 1\n", "{Q:{A:<1>}}"},
 		"crossed":  {"Q_START\nA = 1\nR_STOP\nB = 2\nQ_STOP\n", "{Q:{A:<1> B:<2>}}"},
