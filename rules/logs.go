@@ -99,7 +99,7 @@ func signJumps(s *Series) *Finding {
 		f.Evidence = append(f.Evidence, Evidence{What: fmt.Sprintf("and %d more rows", rest)})
 	}
 	f.Remedy = "R and -R are one rotation: choose the sign of each sample so that its scalar product with the sample before is not negative"
-	if c.ForcedScalar() {
+	if c.ForcedScalar() && s.Value.Claims.Scalar() != convention.ScalarUnstated { // else S is not known to be the scalar
 		f.Evidence = append(f.Evidence, Evidence{What: "rows with a negative scalar", Computed: Plain(0)})
 		f.Remedy += "; the scalar is nowhere negative, so the recorder seems to force its sign"
 	}

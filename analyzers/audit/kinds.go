@@ -11,6 +11,7 @@ import (
 	"strings"
 
 	"dextral/analyzers/config"
+	"dextral/analyzers/series"
 	"dextral/analyzers/source"
 	"dextral/analyzers/walk"
 	"dextral/rules"
@@ -48,10 +49,8 @@ func kindOf(name string) kind {
 // unreadConfigs names formats that often hold orientations and have no reader
 // yet, by extension.
 var unreadConfigs = map[string]string{
-	".toml": "TOML", ".xml": "XML", ".urdf": "URDF", ".xacro": "URDF macro", ".sdf": "SDF", ".world": "SDF", ".launch": "launch file",
-	".ini": "INI", ".cfg": "INI", ".conf": "INI", ".properties": "properties", ".param": "parameter file", ".params": "parameter file", ".parm": "parameter file",
-	".kvn": "CCSDS KVN", ".aem": "CCSDS attitude ephemeris", ".apm": "CCSDS attitude parameter message", ".acm": "CCSDS attitude comprehensive message",
-	".tf": "SPICE frame kernel", ".tk": "SPICE text kernel", ".g2o": "pose graph", ".bvh": "motion capture (BVH)", ".mjcf": "MJCF", ".glb": "binary glTF",
+	".aem": "CCSDS attitude ephemeris", ".acm": "CCSDS attitude comprehensive message",
+	".tf": "SPICE frame kernel", ".tk": "SPICE text kernel", ".bvh": "motion capture (BVH)", ".glb": "binary glTF",
 	".usd": "USD", ".usda": "USD", ".fbx": "FBX", ".dae": "COLLADA",
 }
 
@@ -107,7 +106,7 @@ func readConfig(_ context.Context, f walk.File) *found {
 }
 
 // headSize is how much of a file is read to tell what it is.
-const headSize = 64 << 10
+const headSize = series.HeadSize
 
 // readByHead opens a file whose name does not settle what it is, and looks at
 // its first bytes.
