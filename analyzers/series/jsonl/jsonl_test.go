@@ -138,7 +138,7 @@ func TestAgainstEncodingJSON(t *testing.T) {
 }
 
 func FuzzRow(f *testing.F) {
-	for _, s := range []string{`{"a":1,"b":{"c":2,"d":[3,4]},"e":5}`, `{"a":{"a":[[1]]}}` + "\n" + `{"a":"\\\""}`, `{`, `{"":1}`} {
+	for _, s := range []string{`{"a":1,"b":{"c":2,"d":[3,4]},"e":5}`, `{"a":{"a":[[1]]}}` + "\n" + `{"a":"\\\""}`, `{`, `{"":1}`, "{}0\n{\"\":\"0\"}"} {
 		f.Add(s)
 	}
 	f.Fuzz(func(t *testing.T, s string) {

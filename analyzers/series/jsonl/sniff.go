@@ -43,7 +43,7 @@ func Sniff(path string, head []byte, last bool) (*Head, bool) {
 		if len(bytes.TrimSpace(record)) > 0 {
 			l := learner{walk: walk{text: record, table: &h.Table}, head: h, path: path, line: int(number)}
 			l.space()
-			if l.peek() != '{' || !l.learn(h.root, "") {
+			if l.peek() != '{' || !l.learn(h.root, "") || l.at < len(record) {
 				if len(h.Rows) < 2 {
 					return nil, false
 				}
