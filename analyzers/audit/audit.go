@@ -55,6 +55,12 @@ func Run(ctx context.Context, o Options) (*Result, error) {
 	if err != nil {
 		return nil, err
 	}
+	return Tree(ctx, tree, o)
+}
+
+// Tree audits files that were listed by other means, each under its printed
+// path, such as those of a revision that is not checked out.
+func Tree(ctx context.Context, tree *walk.Tree, o Options) (*Result, error) {
 	a := &audit{result: &Result{}, tree: tree, policies: map[string]*policy.Policy{}}
 	for _, f := range tree.Files {
 		a.policies[f.Path] = f.Policy
