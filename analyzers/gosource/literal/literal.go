@@ -7,18 +7,19 @@ import (
 
 	"golang.org/x/tools/go/analysis"
 
+	"dextral/analyzers/gosource/doc"
 	"dextral/analyzers/source"
 	"dextral/rules"
 )
 
 //go:embed doc.go
-var doc string
+var essay string
 
 // Analyzer finds the orientations that a package's composite literals state.
 // It reports nothing: its Result is for package rules to judge.
 var Analyzer = &analysis.Analyzer{
 	Name:             "orientationliteral",
-	Doc:              extractDoc(doc),
+	Doc:              doc.Section(essay),
 	Run:              run,
 	RunDespiteErrors: true, // what type-checks is worth reading
 	ResultType:       reflect.TypeFor[*Result](),

@@ -1,11 +1,12 @@
-package literal
+// Package doc serves one text both to go doc and to the help of an analyzer.
+package doc
 
 import "strings"
 
-// extractDoc returns the comment above the package clause of a doc.go from its
+// Section returns the comment above the package clause of a doc.go from its
 // "# Analyzer" heading on: a summary line "name: text", then the rest. One
 // text so serves both go doc and the analyzer's help.
-func extractDoc(source string) string {
+func Section(source string) string {
 	comment, _, _ := strings.Cut(source, "\npackage ")
 	var lines []string
 	for line := range strings.Lines(comment) {

@@ -1,0 +1,112 @@
+package measure
+
+import (
+	_ "embed" // of the package's essay
+	"go/types"
+	"reflect"
+	"sync"
+
+	"golang.org/x/tools/go/analysis"
+
+	"dextral/analyzers/gosource/doc"
+	"dextral/analyzers/gosource/lower"
+	"dextral/core/operation"
+	"dextral/core/tape"
+)
+
+//go:embed doc.go
+var essay string
+
+// Analyzer measures the numeric functions of a package.
+var Analyzer = &analysis.Analyzer{
+	Name:       "measure",
+	Doc:        doc.Section(essay),
+	Run:        run,
+	Requires:   []*analysis.Analyzer{lower.Analyzer},
+	ResultType: reflect.TypeFor[*Result](),
+}
+
+// Result is what the functions of a package compute.
+type Result struct {
+	Funcs  []*Function // in the order of the source
+	byFunc map[*types.Func][]*Function
+}
+
+// Of returns what is known of a declared function: one entry, or one for each
+// instance of a generic one; none if it could not be evaluated.
+func (r *Result) Of(f *types.Func) []*Function { return r.byFunc[f] }
+
+// Operand is a group of numbers that go into a function or come out of it.
+type Operand struct {
+	operation.Operand
+	Name     string     // as the author calls it: "q", "p.Rot", "roll, pitch, yaw"
+	Go       types.Type // nil for a run of parameters
+	Ports    []int      // of the tape's inputs or outputs, in order
+	Receiver bool       // it is, or is part of, the receiver
+	Written  bool       // an output: a parameter that the function writes
+}
+
+// Layout is one way to see the numbers of a function as operands.
+type Layout struct{ In, Out []Operand }
+
+// Case is a function with its integers, truth values and named constants set.
+type Case struct {
+	Label    string        // such as "order == XYZ"; "" where there is nothing to set
+	Settings map[int]int64 // by tape input
+	Layout                 // the one that Identity speaks of
+	Identity *operation.Identity
+}
+
+// Function is a numeric function that can be evaluated.
+type Function struct {
+	*lower.Func
+	Layout             // of the first case
+	Layouts []Layout   // all ways to see its numbers, likeliest first
+	Cases   []*Case    // at least one
+	Flow    *tape.Flow // which input may influence which output
+	Single  bool       // it computes in float32
+
+	mu      sync.Mutex
+	machine *tape.Machine
+	batch   *tape.Batch
+}
+
+func run(pass *analysis.Pass) (any, error) {
+	lowered := pass.ResultOf[lower.Analyzer].(*lower.Result)
+	r := &Result{byFunc: map[*types.Func][]*Function{}}
+	for _, l := range lowered.Funcs {
+		f := newFunction(lowered, l)
+		if f == nil {
+			continue
+		}
+		r.Funcs = append(r.Funcs, f)
+		r.byFunc[l.Object] = append(r.byFunc[l.Object], f)
+	}
+	return r, nil
+}
+
+// newFunction prepares a function for evaluation, or returns nil if it cannot
+// be evaluated or has no numbers to look at.
+func newFunction(lowered *lower.Result, l *lower.Func) *Function {
+	if l.Program == nil || !l.Program.Sig.Runnable() {
+		return nil
+	}
+	machine, err := lowered.Link(l)
+	if err != nil {
+		return nil
+	}
+	f := &Function{Func: l, machine: machine, batch: machine.NewBatch(tape.Lanes), Flow: tape.Analyze(l.Program, lowered.Library)}
+	f.Layouts = f.layouts()
+	if len(f.Layouts) == 0 {
+		return nil
+	}
+	f.Layout = f.Layouts[0]
+	for _, p := range f.batch.Outputs() {
+		f.Single = f.Single || p.Kind == tape.F32
+	}
+	for _, p := range f.batch.Inputs() {
+		f.Single = f.Single || p.Kind == tape.F32
+	}
+	f.Cases = f.cases()
+	return f
+}
