@@ -15,7 +15,7 @@ import (
 )
 
 // The rotation of most cases: 30 degrees about z, then 20 about y', then 10 about
-// x''. The angles of the turns below were recomputed with plain quaternion algebra
+// x”. The angles of the turns below were recomputed with plain quaternion algebra
 // in another language: 143.09588, 71.63420, 43.64958, 29.87368, 60.77609, 35.17337.
 func tern() rotor.Rotor {
 	s := angle.Sequence{Axes: [3]angle.Axis{angle.Z, angle.Y, angle.X}}

@@ -122,4 +122,6 @@ func loopChanges(before, after *Chain) []LoopChange {
 }
 
 // loopName names a loop by its frames, whatever the first one.
-func loopName(l frame.Loop) string { return strings.Join(slices.Sorted(slices.Values(l.Frames)), "\x00") }
+func loopName(l frame.Loop) string {
+	return strings.Join(slices.Sorted(slices.Values(l.Frames)), "\x00")
+}
