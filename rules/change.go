@@ -111,7 +111,11 @@ const noticeable = 1e-4 * math.Pi / 180
 func (c *Change) turn(pattern, explained bool) string {
 	least, most := math.Inf(1), 0.0
 	var turned pairOfRotors
-	for _, p := range stancePairs(c.Before, c.After, pattern) {
+	pairs := stancePairs(c.Before, c.After, pattern)
+	for _, p := range pairs {
+		if c.reversed() {
+			p.after = p.after.Reverse()
+		}
 		angle := rotor.Angle(p.before, p.after)
 		least = min(least, angle)
 		if angle >= most {
@@ -119,11 +123,16 @@ func (c *Change) turn(pattern, explained bool) string {
 		}
 	}
 	open := c.Before.tolerance() + c.After.tolerance()
+	if c.Before.Form == c.After.Form && !explained {
+		open = noticeable // somebody edited the digits, so that they are meant
+	}
 	switch {
 	case most <= min(open, noticeable):
 		return "the same rotation"
 	case most <= open:
 		return "the same rotation, to " + degrees(most)
+	case least <= open && sameText(c.Before, c.After) && narrowed(c.Before, c.After):
+		return "the numbers stay, and so does the rotation if they were read so before"
 	case least <= open:
 		c.Effect, c.Angle = Open, most
 		return fmt.Sprintf("nothing states how the numbers are read: the same rotation if their reader changed with them, else a turn of %s", degrees(most))
@@ -137,6 +146,13 @@ func (c *Change) turn(pattern, explained bool) string {
 		return "a turn of " + by
 	}
 	return c.cause(turned, by, open)
+}
+
+// reversed reports whether the two values state opposite directions between the
+// same frames.
+func (c *Change) reversed() bool {
+	was, is := c.Before.Claims.Direction(), c.After.Claims.Direction()
+	return was.Stated() && is.Stated() && was.To != was.From && is == was.Reverse()
 }
 
 // cause explains a turn that is no plain rewriting of the numbers.
@@ -237,25 +253,31 @@ func sameText(a, b *Value) bool {
 	return slices.EqualFunc(a.Numbers, b.Numbers, func(x, y Number) bool { return x.Text == y.Text || same(x.Value, y.Value) })
 }
 
-// stance is one way to take a value as a rotation, named so that the stances of
-// two values can be matched.
+// stance is one way to take a value as a rotation, named by what the claims leave
+// open.
 type stance struct {
-	name string
+	scalar  convention.ScalarPlace
+	unit    convention.Unit
+	reading string
 	rotor.Rotor
 }
 
 type pairOfRotors struct{ before, after rotor.Rotor }
 
-// stancePairs matches the readings of two values: those of one name if both have
-// the same names, else every one with every other. Where the numbers were
-// rewritten as a change of convention would, their reader may have changed too.
+// stancePairs matches the readings of two values. What nobody states is read one
+// way before and after, unless the numbers were rewritten as a change of that
+// convention would: their reader may have changed with them.
 func stancePairs(a, b *Value, rewritten bool) []pairOfRotors {
 	before, after := a.stances(), b.stances()
-	named := !rewritten && slices.EqualFunc(before, after, func(x, y stance) bool { return x.name == y.name })
+	labels := slices.EqualFunc(before, after, func(x, y stance) bool { return x.reading == y.reading })
 	var pairs []pairOfRotors
-	for i, x := range before {
-		for j, y := range after {
-			if !named || i == j {
+	for _, x := range before {
+		for _, y := range after {
+			free := rewritten && a.Form == b.Form && a.Form != convention.Angles
+			scalar := free || x.scalar == 0 || y.scalar == 0 || x.scalar == y.scalar
+			unit := x.unit == 0 || y.unit == 0 || x.unit == y.unit || rewritten
+			reading := !labels || x.reading == y.reading
+			if scalar && unit && reading {
 				pairs = append(pairs, pairOfRotors{x.Rotor, y.Rotor})
 			}
 		}
@@ -263,54 +285,67 @@ func stancePairs(a, b *Value, rewritten bool) []pairOfRotors {
 	return pairs
 }
 
+// narrowed reports whether one value has every reading of the other.
+func narrowed(a, b *Value) bool {
+	within := func(x, y []stance) bool {
+		return !slices.ContainsFunc(x, func(s stance) bool {
+			return !slices.ContainsFunc(y, func(t stance) bool { return rotor.Angle(s.Rotor, t.Rotor) < noticeable })
+		})
+	}
+	x, y := a.stances(), b.stances()
+	return within(x, y) || within(y, x)
+}
+
 // stances are the rotations that a value may state, by its claims. Angles of
 // which nobody states a sequence have none.
 func (v *Value) stances() []stance {
 	x := v.Floats()
 	var list []stance
-	add := func(r rotor.Rotor, name string, args ...any) {
+	add := func(s stance, r rotor.Rotor) {
 		if u, ok := r.Unit(); ok {
-			list = append(list, stance{fmt.Sprintf(name, args...), u})
+			s.Rotor = u
+			list = append(list, s)
 		}
 	}
 	switch v.Form {
 	case convention.Quaternion:
-		if p := v.Claims.Scalar(); p != convention.ScalarLast {
-			add(rotor.FromQuaternion(x[0], x[1], x[2], x[3]), "first")
-		}
-		if p := v.Claims.Scalar(); p != convention.ScalarFirst {
-			add(rotor.FromQuaternion(x[3], x[0], x[1], x[2]), "last")
+		first, last := rotor.FromQuaternion(x[0], x[1], x[2], x[3]), rotor.FromQuaternion(x[3], x[0], x[1], x[2])
+		switch v.Claims.Scalar() {
+		case convention.ScalarFirst:
+			add(stance{}, first)
+		case convention.ScalarLast:
+			add(stance{}, last)
+		default:
+			add(stance{scalar: convention.ScalarFirst}, first)
+			add(stance{scalar: convention.ScalarLast}, last)
 		}
 	case convention.Rotation, convention.Transform:
 		if m, ok := v.rotationPart(); ok && m.Det() > 0 {
 			if near, _, ok := matrix.Nearest(m); ok {
-				add(near.Rotor(), "matrix")
+				add(stance{}, near.Rotor())
 			}
 		}
 	case convention.RotationVector, convention.AxisAngle, convention.Angles:
-		for _, u := range v.units() {
-			v.threeNumbers(x, u, add)
+		if u := v.Claims.Unit(); u != convention.UnitUnstated {
+			v.threeNumbers(x, stance{}, u, add)
+			break
+		}
+		for _, u := range []convention.Unit{convention.Radian, convention.Degree} {
+			v.threeNumbers(x, stance{unit: u}, u, add)
 		}
 	}
 	return list
 }
 
-func (v *Value) units() []convention.Unit {
-	if u := v.Claims.Unit(); u != convention.UnitUnstated {
-		return []convention.Unit{u}
-	}
-	return []convention.Unit{convention.Radian, convention.Degree}
-}
-
-func (v *Value) threeNumbers(x []float64, u convention.Unit, add func(rotor.Rotor, string, ...any)) {
-	s := u.InRadians()
+func (v *Value) threeNumbers(x []float64, s stance, u convention.Unit, add func(stance, rotor.Rotor)) {
+	f := u.InRadians()
 	vec := rotor.Vec{X: x[0], Y: x[1], Z: x[2]}
 	switch v.Form {
 	case convention.RotationVector:
-		add(rotor.FromRotationVector(vec.Scale(s)), "vector %s", u)
+		add(s, rotor.FromRotationVector(vec.Scale(f)))
 	case convention.AxisAngle:
-		if r, ok := rotor.FromAxisAngle(vec, x[3]*s); ok {
-			add(r, "axis %s", u)
+		if r, ok := rotor.FromAxisAngle(vec, x[3]*f); ok {
+			add(s, r)
 		}
 	default:
 		label := v.statement().Claim.Label
@@ -318,7 +353,8 @@ func (v *Value) threeNumbers(x []float64, u convention.Unit, add func(rotor.Roto
 			return
 		}
 		for _, r := range label.Readings {
-			add(r.Rotor([3]float64{x[0] * s, x[1] * s, x[2] * s}), "%s %s", r, u)
+			s.reading = r.String()
+			add(s, r.Rotor([3]float64{x[0] * f, x[1] * f, x[2] * f}))
 		}
 	}
 }

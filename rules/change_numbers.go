@@ -44,9 +44,14 @@ func halves(v *Value) []written {
 	return list
 }
 
-// is reports whether q is p times f, as far as digits tell.
+// is reports whether q is p times f, as far as digits tell. Where f changes a sign
+// only, one is the other or rounds it; else both are rounded.
 func (p written) is(q written, f float64) bool {
-	return math.Abs(p.value*f-q.value) <= p.half*math.Abs(f)+q.half
+	slack := p.half*math.Abs(f) + q.half
+	if math.Abs(f) == 1 {
+		slack = max(p.half, q.half)
+	}
+	return math.Abs(p.value*f-q.value) <= slack*(1+1e-9)
 }
 
 // all reports whether b[i] is a[order[i]] with the given signs, all scaled.

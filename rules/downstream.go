@@ -15,6 +15,7 @@ import (
 type Move struct {
 	Root, Frame string
 	Angle       float64  // rad
+	UpTo        bool     // depending on how angles with a bare label are read
 	Through     []*Value // the edges on the way that turned
 }
 
@@ -66,32 +67,51 @@ func (c *Chain) root(part []string) string {
 }
 
 func move(before, after *Chain, root, f string) (Move, bool) {
-	was, slackWas, old, okWas := before.along(root, f)
-	is, slackIs, now, okIs := after.along(root, f)
-	m := Move{Root: root, Frame: f, Angle: rotor.Angle(was, is)}
-	if !okWas || !okIs || m.Angle <= slackWas+slackIs {
-		return m, false
-	}
-	for _, v := range now {
-		if !slices.ContainsFunc(old, func(w *Value) bool { return w.Key == v.Key && sameText(w, v) }) {
-			m.Through = append(m.Through, v)
+	m := Move{Root: root, Frame: f}
+	least := math.Inf(1)
+	for k := range max(before.readings(), after.readings()) {
+		was, slackWas, old, okWas := before.along(root, f, k)
+		is, slackIs, now, okIs := after.along(root, f, k)
+		angle := rotor.Angle(was, is)
+		if !okWas || !okIs || angle <= slackWas+slackIs {
+			return m, false // or not in every reading, which is no certain move
 		}
+		m.Angle, least = max(m.Angle, angle), min(least, angle)
+		m.UpTo = m.Angle-least > slackWas+slackIs
+		m.Through = changed(old, now)
 	}
-	return m, true
+	return m, m.Angle > 0
 }
 
-// along is the rotation with v_to = R v_from, how far the digits leave it open,
-// and the values that it is made of.
-func (c *Chain) along(to, from string) (r rotor.Rotor, slack float64, values []*Value, ok bool) {
+// changed are the values of now that were not the same before.
+func changed(old, now []*Value) []*Value {
+	return slices.DeleteFunc(now, func(v *Value) bool {
+		return slices.ContainsFunc(old, func(w *Value) bool { return w.Key == v.Key && sameText(w, v) })
+	})
+}
+
+// readings is how many ways the most ambiguous edge can be read.
+func (c *Chain) readings() int {
+	n := 0
+	for _, l := range c.Links {
+		n = max(n, len(l.Value.stances()))
+	}
+	return n
+}
+
+// along is the rotation with v_to = R v_from in the k-th reading of every edge,
+// how far the digits leave it open, and the values that it is made of. Edges with
+// fewer readings keep their last one: teams read all their angles one way.
+func (c *Chain) along(to, from string, k int) (r rotor.Rotor, slack float64, values []*Value, ok bool) {
 	_, steps, ok := c.Graph.Path(to, from)
 	r = rotor.One
 	for _, s := range steps {
 		v := c.Links[s.Edge.ID].Value
 		readings := v.stances()
-		if len(readings) != 1 {
+		if len(readings) == 0 {
 			return r, 0, nil, false
 		}
-		q := readings[0].Rotor
+		q := readings[min(k, len(readings)-1)].Rotor
 		if s.Reversed {
 			q = q.Reverse()
 		}

@@ -42,7 +42,7 @@ type FrameLoop struct {
 func FrameGraphs(chains []*rules.Chain) []FrameGraph {
 	var graphs []FrameGraph
 	for _, c := range chains {
-		g := FrameGraph{Title: title(c), Parts: c.Graph.Parts()}
+		g := FrameGraph{Title: ChainTitle(c), Parts: c.Graph.Parts()}
 		if c.Sense != rules.NoSubscripts {
 			g.Sense = c.Sense.String()
 		}
@@ -59,7 +59,8 @@ func FrameGraphs(chains []*rules.Chain) []FrameGraph {
 	return graphs
 }
 
-func title(c *rules.Chain) string {
+// ChainTitle names a chain by its file, or the files of a rig.
+func ChainTitle(c *rules.Chain) string {
 	var paths []string
 	for _, l := range c.Links {
 		if p := l.Value.Place.Path; len(paths) == 0 || paths[len(paths)-1] != p {
