@@ -150,8 +150,8 @@ func (g source) matrix3(f Family, i int) []float64 {
 	return m
 }
 
-// matrix4 is a rigid transform; every other one has no translation, because
-// what turns directions alone need not respect one.
+// matrix4 is a rigid transform: without translation, because what turns directions
+// alone need not respect one, and with Wide also with one in the last column or row.
 func (g source) matrix4(f Family, i int) []float64 {
 	m := make([]float64, 16)
 	if f == General {
@@ -168,6 +168,11 @@ func (g source) matrix4(f Family, i int) []float64 {
 		copy(m[4*row:], r[row][:])
 	}
 	m[15] = 1
+	if f == Wide && i%3 > 0 {
+		for k := range 3 {
+			m[[]int{0, 4*k + 3, 12 + k}[i%3]] = g.between(-2, 2)
+		}
+	}
 	return m
 }
 

@@ -24,12 +24,29 @@ var Analyzer = &analysis.Analyzer{
 	Run:        run,
 	Requires:   []*analysis.Analyzer{lower.Analyzer},
 	ResultType: reflect.TypeFor[*Result](),
+	FactTypes:  []analysis.Fact{(*Meanings)(nil)},
 }
 
 // Result is what the functions of a package compute.
 type Result struct {
-	Funcs  []*Function // in the order of the source
-	byFunc map[*types.Func][]*Function
+	Funcs    []*Function // in the order of the source
+	Types    []*Type     // named types of four, nine or sixteen numbers that they deal in, by name; also imported ones
+	byFunc   map[*types.Func][]*Function
+	imported func(*types.Package) *Meanings
+}
+
+// Imported is what is known of an imported package, which may be nothing.
+func (r *Result) Imported(pkg *types.Package) *Meanings { return r.imported(pkg) }
+
+// Type finds what is known of a type by its name with the path of its package,
+// or nil.
+func (r *Result) Type(name string) *Type {
+	for _, t := range r.Types {
+		if t.Name == name {
+			return t
+		}
+	}
+	return nil
 }
 
 // Of returns what is known of a declared function: one entry, or one for each
@@ -73,7 +90,7 @@ type Function struct {
 
 func run(pass *analysis.Pass) (any, error) {
 	lowered := pass.ResultOf[lower.Analyzer].(*lower.Result)
-	r := &Result{byFunc: map[*types.Func][]*Function{}}
+	r := &Result{byFunc: map[*types.Func][]*Function{}, imported: importer(pass)}
 	for _, l := range lowered.Funcs {
 		f := newFunction(lowered, l)
 		if f == nil {
@@ -81,8 +98,29 @@ func run(pass *analysis.Pass) (any, error) {
 		}
 		r.Funcs = append(r.Funcs, f)
 		r.byFunc[l.Object] = append(r.byFunc[l.Object], f)
+		f.identify()
+	}
+	r.settle()
+	if m := r.export(pass.Pkg.Path()); len(m.Types)+len(m.Funcs) > 0 {
+		pass.ExportPackageFact(m)
 	}
 	return r, nil
+}
+
+// importer reads the facts of imported packages, each once.
+func importer(pass *analysis.Pass) func(*types.Package) *Meanings {
+	known := map[*types.Package]*Meanings{}
+	return func(pkg *types.Package) *Meanings {
+		m, ok := known[pkg]
+		if !ok {
+			m = new(Meanings)
+			if pkg != nil && pkg != pass.Pkg {
+				pass.ImportPackageFact(pkg, m)
+			}
+			known[pkg] = m
+		}
+		return m
+	}
 }
 
 // newFunction prepares a function for evaluation, or returns nil if it cannot
