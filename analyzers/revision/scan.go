@@ -169,13 +169,17 @@ func (v *version) nearest(p string) *policy.Policy {
 }
 
 // widen adds what is judged together with the files that differ: what lies below
-// a dextral.toml that differs, and the other files of a rig.
+// a dextral.toml that differs, the other files of a rig and of a Go package.
 func (s *scanned) widen(v *version, old, now map[string]bool) {
 	rigs := map[*policy.Policy]map[string]bool{}
+	packages := map[string]bool{}
 	var sheets []string
 	for p := range union(old, now) {
 		if slices.Contains(policy.Names, path.Base(p)) {
 			sheets = append(sheets, path.Dir(p))
+		}
+		if path.Ext(p) == ".go" {
+			packages[path.Dir(p)] = true
 		}
 		if sc := v.nearest(p); sc.RigOf(s.print(p)) != "" {
 			if rigs[sc] == nil {
@@ -184,13 +188,13 @@ func (s *scanned) widen(v *version, old, now map[string]bool) {
 			rigs[sc][sc.RigOf(s.print(p))] = true
 		}
 	}
-	if len(sheets)+len(rigs) == 0 {
+	if len(sheets)+len(rigs)+len(packages) == 0 {
 		return
 	}
 	for p := range v.files {
 		sc := v.nearest(p)
 		below := slices.ContainsFunc(sheets, func(dir string) bool { return dir == "." || strings.HasPrefix(p, dir+"/") })
-		if below || rigs[sc][sc.RigOf(s.print(p))] {
+		if below || path.Ext(p) == ".go" && packages[path.Dir(p)] || rigs[sc][sc.RigOf(s.print(p))] {
 			old[p], now[p] = true, true
 		}
 	}
@@ -254,6 +258,8 @@ func (v *version) excluded(s *scanned, p string) bool {
 	return false
 }
 
+// blobs writes files of a commit and lists them for the audit; Go files with what
+// they are compiled against.
 func (s *scanned) blobs(ctx context.Context, v *version, list []entry) error {
 	ids := make([]string, len(list))
 	for i, e := range list {
@@ -263,20 +269,28 @@ func (s *scanned) blobs(ctx context.Context, v *version, list []entry) error {
 	if err != nil {
 		return err
 	}
+	var write []blob
+	var goDirs []string
 	for i, e := range list {
-		name := filepath.Join(v.dir, filepath.FromSlash(e.path))
+		name := v.name(e.path)
 		switch {
 		case sizes[i] < 0:
-			v.fail(s.print(e.path), errors.New("its old contents are not in this clone; fetch them first"))
+			v.fail(s.print(e.path), errors.New("its contents are not in this clone; fetch them first"))
 			continue
 		case sizes[i] > largest:
 			s.leave(e.path, fmt.Sprintf("larger than %d MB", largest>>20))
 			continue
+		case path.Ext(e.path) == ".go":
+			goDirs = append(goDirs, path.Dir(e.path))
 		}
-		if err := s.repo.write(ctx, e.id, name); err != nil {
-			return err
-		}
+		write = append(write, blob{e.id, name})
 		v.add(s.print(e.path), name, sizes[i], v.nearest(e.path))
 	}
-	return nil
+	if err := s.repo.write(ctx, write); err != nil {
+		return err
+	}
+	return s.support(ctx, v, goDirs)
 }
+
+// name is where a file of a commit is written.
+func (v *version) name(p string) string { return filepath.Join(v.dir, filepath.FromSlash(p)) }
