@@ -25,6 +25,7 @@ import (
 	"os"
 	"path/filepath"
 	"slices"
+	"strings"
 	"time"
 
 	"dextral/analyzers/audit"
@@ -96,7 +97,7 @@ func (s *scanned) review(ctx context.Context, o Options) (*report.Review, error)
 		return nil, err
 	}
 	r := &report.Review{
-		Base: short(s.base), Head: short(s.head), Files: s.changed, LeftOut: s.leftOut,
+		Base: named(o.Base, s.base, o.Fork), Head: named(o.Head, s.head, false), Files: s.changed, LeftOut: s.leftOut,
 		Audit: after.Report, Changes: rules.Changes(before.Values, after.Values, s.renamed),
 	}
 	r.Changes = append(r.Changes, seriesChanges(before.Series, after.Series, s.renamed)...)
@@ -118,11 +119,14 @@ func (s *scanned) audit(ctx context.Context, v *version, o Options) (*audit.Resu
 	return audit.Tree(ctx, &v.tree, options)
 }
 
-func short(id string) string {
-	if len(id) > 12 {
-		return id[:12]
+// named is a commit as the user called it, with its id; where two branches parted
+// has no name.
+func named(name, id string, fork bool) string {
+	id = id[:min(len(id), 12)]
+	if fork || name == "" || strings.HasPrefix(id, name) || strings.HasPrefix(name, id) {
+		return id
 	}
-	return id
+	return name + " (" + id + ")"
 }
 
 // seriesChanges are the channels of logs whose claims differ; their numbers are

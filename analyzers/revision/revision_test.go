@@ -1,6 +1,7 @@
 package revision
 
 import (
+	"bytes"
 	"context"
 	"flag"
 	"os"
@@ -13,6 +14,7 @@ import (
 	"dextral/rules"
 	"dextral/rules/report"
 
+	"github.com/santhosh-tekuri/jsonschema/v6"
 	"github.com/stretchr/testify/assert"
 	"github.com/stretchr/testify/require"
 	"golang.org/x/tools/txtar"
@@ -46,6 +48,8 @@ func TestCases(t *testing.T) {
 			}
 			assert.Equal(t, file(archive, "want"), got, string(archive.Comment))
 
+			fits(t, repo.review(Options{Base: "HEAD"}))
+
 			repo.commit() // two commits say what a commit and the working tree say
 			assert.Equal(t, got, essence(t, repo.review(Options{Base: "HEAD~1", Head: "HEAD"})))
 		})
@@ -66,6 +70,22 @@ func essence(t *testing.T, r *report.Review) string {
 		}
 	}
 	return strings.Join(kept, "\n") + "\n"
+}
+
+// fits holds the JSON of a review against its schema.
+func fits(t *testing.T, r *report.Review) {
+	t.Helper()
+	schema, err := jsonschema.UnmarshalJSON(bytes.NewReader(report.ReviewSchema))
+	require.NoError(t, err)
+	c := jsonschema.NewCompiler()
+	require.NoError(t, c.AddResource("review.json", schema))
+	compiled, err := c.Compile("review.json")
+	require.NoError(t, err)
+	var b bytes.Buffer
+	require.NoError(t, report.ReviewJSON(&b, r))
+	doc, err := jsonschema.UnmarshalJSON(&b)
+	require.NoError(t, err)
+	assert.NoError(t, compiled.Validate(doc))
 }
 
 func file(a *txtar.Archive, name string) string {
@@ -168,6 +188,9 @@ func TestNothingIsWritten(t *testing.T) {
 	r.write("a.yaml", right)
 	r.commit()
 	r.write("a.yaml", wrong)
+	temp := t.TempDir()
+	t.Setenv("TMPDIR", temp)
+	t.Setenv("TMP", temp) // Windows
 	before := r.git("status", "--porcelain", "--ignored")
 	index, err := os.Stat(".git/index")
 	require.NoError(t, err)
@@ -176,7 +199,7 @@ func TestNothingIsWritten(t *testing.T) {
 	after, err := os.Stat(".git/index")
 	require.NoError(t, err)
 	assert.Equal(t, index.Size(), after.Size())
-	left, err := filepath.Glob(filepath.Join(os.TempDir(), "dextral-review-*"))
+	left, err := os.ReadDir(temp)
 	require.NoError(t, err)
 	assert.Empty(t, left)
 }

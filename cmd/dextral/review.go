@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 	"io"
 	"strings"
@@ -31,7 +32,15 @@ that was to be compared could not be.`,
   dextral review --fork origin/main        what this branch changed since it parted
   dextral review v1.4 v1.5
   dextral review --format markdown main > comment.md`,
-		Args: cobra.RangeArgs(1, 2),
+		Args: func(_ *cobra.Command, args []string) error {
+			switch {
+			case len(args) == 0:
+				return errors.New("name the revision to compare with, such as: dextral review main")
+			case len(args) > 2:
+				return fmt.Errorf("a review compares two revisions, not %d", len(args))
+			}
+			return nil
+		},
 		RunE: func(c *cobra.Command, args []string) error {
 			write, ok := reviewFormats[format]
 			if !ok {
@@ -71,11 +80,12 @@ that was to be compared could not be.`,
 }
 
 // reviewFormatNames lists the formats of review.
-var reviewFormatNames = []string{"text", "markdown", "sarif"}
+var reviewFormatNames = []string{"text", "markdown", "sarif", "json"}
 
 var reviewFormats = map[string]func(io.Writer, *report.Review) error{
 	"text":     func(w io.Writer, r *report.Review) error { return report.ReviewText(w, r, layout(w)) },
 	"markdown": report.ReviewMarkdown,
+	"json":     report.ReviewJSON,
 	"sarif": func(w io.Writer, r *report.Review) error {
 		return report.ReviewSARIF(w, r, version(), report.RuleInfos(rules.Catalogue()))
 	},
