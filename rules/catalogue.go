@@ -45,6 +45,7 @@ const (
 	ParentCycle           = "parent-cycle"
 	ChildOfTwo            = "child-of-two"
 	ClaimsConflict        = "claims-conflict"
+	SingularPoint         = "singular-point"
 	WaiverExpired         = "waiver-expired"
 	WaiverUnused          = "waiver-unused"
 )
@@ -79,6 +80,7 @@ var catalogue = []Rule{
 	{ParentCycle, "A frame is its own ancestor in a tree of parents and children.", Warning},
 	{ChildOfTwo, "A frame has two parents in a tree of parents and children.", Warning},
 	{ClaimsConflict, "Two stated claims about one value contradict each other.", Error},
+	{SingularPoint, "A function on rotations fails where its formula is singular.", Warning},
 	{WaiverExpired, "A waiver has passed its last day.", Warning},
 	{WaiverUnused, "A waiver matches no finding.", Warning},
 }

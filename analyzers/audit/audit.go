@@ -89,6 +89,7 @@ type found struct {
 	values   []*rules.Value
 	series   []*rules.Series
 	pairs    []*rules.SeriesPair
+	findings []*rules.Finding // on functions
 	rows     int64
 	skipped  []report.Skipped // unreadable files
 	failures []report.Failure
@@ -151,7 +152,7 @@ func (a *audit) readGo(ctx context.Context, files []gosource.File) (*found, erro
 	}
 	a.result.Report.Audited.GoPackages = r.Packages
 	a.result.Report.Audited.GoFiles = r.Files
-	code := &found{kind: goFile, values: r.Values}
+	code := &found{kind: goFile, values: r.Values, findings: r.Findings}
 	for _, f := range r.Failures {
 		failed := report.Failure{Place: f.Place, Message: f.Err.Error()}
 		if f.Partial {
@@ -181,6 +182,7 @@ func (a *audit) judge(list []*found) {
 				rigs[p.Path+"#"+rig] = append(rigs[p.Path+"#"+rig], v)
 			}
 		}
+		out.Findings = append(out.Findings, f.findings...)
 		out.Findings = append(out.Findings, rules.CheckValues(f.values)...)
 		for _, chain := range chains(f) {
 			a.result.Chains = append(a.result.Chains, chain)

@@ -16,6 +16,7 @@ import (
 	"golang.org/x/tools/go/analysis/checker"
 	"golang.org/x/tools/go/packages"
 
+	"dextral/analyzers/gosource/found"
 	"dextral/analyzers/gosource/literal"
 	"dextral/analyzers/source"
 	"dextral/rules"
@@ -33,15 +34,21 @@ func (l *loader) audit(u *unit) {
 	}()
 	pkg, errs := u.check()
 	l.report(u, pkg, errs)
-	graph, err := checker.Analyze(passes, []*packages.Package{pkg}, &checker.Options{Sequential: true})
+	run := passes
+	if pkg.IllTyped {
+		run = passes[:1] // functions are judged by all they call, which is not known here
+	}
+	graph, err := checker.Analyze(run, []*packages.Package{pkg}, &checker.Options{Sequential: true})
 	if err != nil {
 		l.fail(l.whole(u.files[0]), err, false)
 		return
 	}
 	for _, action := range graph.Roots {
-		switch found := action.Result.(type) {
+		switch result := action.Result.(type) {
 		case *literal.Result:
-			l.collect(u, found)
+			l.collect(u, result)
+		case *found.Result:
+			l.judged(u, result)
 		default:
 			l.fail(l.whole(u.files[0]), fmt.Errorf("%s: %w", action.Analyzer.Name, action.Err), true)
 		}
@@ -64,6 +71,22 @@ func (l *loader) collect(u *unit, found *literal.Result) {
 				s.Place.Path = l.print(s.Place.Path)
 				r.Skipped = append(r.Skipped, s)
 			}
+		}
+	})
+}
+
+// judged adds what a pass over functions found in the audited files.
+func (l *loader) judged(u *unit, result *found.Result) {
+	l.add(func(r *Result) {
+		for _, f := range result.Findings {
+			if !u.audited[f.Place.Path] {
+				continue
+			}
+			f.Place.Path = l.print(f.Place.Path)
+			for i := range f.Related {
+				f.Related[i].Place.Path = l.print(f.Related[i].Place.Path)
+			}
+			r.Findings = append(r.Findings, f)
 		}
 	})
 }

@@ -13,11 +13,17 @@ import (
 	"golang.org/x/tools/go/analysis"
 
 	"dextral/analyzers/gosource/literal"
+	"dextral/analyzers/gosource/singular"
 	"dextral/rules"
 )
 
-// passes are the analyzers that Load runs over each package.
-var passes = []*analysis.Analyzer{literal.Analyzer}
+// passes are the analyzers that Load runs over each package: literal for the
+// values that it states, the others for the functions that it defines.
+var passes = append([]*analysis.Analyzer{literal.Analyzer}, Passes...)
+
+// Passes are the analyzers that judge functions. They can be used by any driver of
+// go/analysis.
+var Passes = []*analysis.Analyzer{singular.Analyzer}
 
 // File is one Go source file to audit.
 type File struct {
@@ -27,15 +33,16 @@ type File struct {
 
 // Result is what the Go files of a tree state.
 type Result struct {
-	Values   []*rules.Value // in order of place
-	Skipped  []literal.Skip // literals that look like orientations but are not judged, in order of place
-	Packages int            // packages type-checked
-	Files    int            // files of these packages that were read
-	Tests    int            // test files, testdata, mocks and fakes: not read
-	Vendored int            // files under a vendor directory: not read
-	Silent   int            // files in whose directory nothing speaks of orientations: not read any further
-	Failures []Failure      // in order of place
-	Notes    []string       // how the audit was limited, each once, sorted
+	Values   []*rules.Value   // in order of place
+	Findings []*rules.Finding // on functions, in order of place
+	Skipped  []literal.Skip   // literals that look like orientations but are not judged, in order of place
+	Packages int              // packages type-checked
+	Files    int              // files of these packages that were read
+	Tests    int              // test files, testdata, mocks and fakes: not read
+	Vendored int              // files under a vendor directory: not read
+	Silent   int              // files in whose directory nothing speaks of orientations: not read any further
+	Failures []Failure        // in order of place
+	Notes    []string         // how the audit was limited, each once, sorted
 }
 
 // Failure is a package or file that could not be read as it should.
@@ -133,6 +140,7 @@ func (r *Result) sorted() *Result {
 	slices.SortFunc(r.Values, func(a, b *rules.Value) int {
 		return cmp.Or(a.Place.Compare(b.Place), strings.Compare(a.Key, b.Key))
 	})
+	slices.SortStableFunc(r.Findings, (*rules.Finding).Compare)
 	slices.SortFunc(r.Skipped, func(a, b literal.Skip) int { return a.Place.Compare(b.Place) })
 	slices.SortFunc(r.Failures, func(a, b Failure) int {
 		return cmp.Or(a.Place.Compare(b.Place), strings.Compare(a.Err.Error(), b.Err.Error()))

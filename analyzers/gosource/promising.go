@@ -11,7 +11,8 @@ import (
 // A package that mentions orientations somewhere may still state none: it is
 // worth type-checking only if a declaration holds numbers and words of
 // orientations together, or numbers and the name of a type whose declaration
-// has such words. The test errs on the side of admitting.
+// has such words; or if a function multiplies and has to do with one of either. The
+// test errs on the side of admitting.
 
 // text is a parsed file with its source.
 type text struct {
@@ -38,7 +39,7 @@ func promising(names []string) bool {
 	types := cuedTypes(files)
 	for _, f := range files {
 		for _, decl := range f.tree.Decls {
-			if holdsNumbers(decl) && f.speaks(decl, types) {
+			if (holdsNumbers(decl) || calculates(decl)) && f.speaks(decl, types) {
 				return true
 			}
 		}
@@ -124,6 +125,25 @@ func holdsNumbers(decl ast.Decl) bool {
 				return false
 			}
 			found = found || hasNumber(n)
+		}
+		return !found
+	})
+	return found
+}
+
+// calculates reports a function that multiplies.
+func calculates(decl ast.Decl) bool {
+	f, ok := decl.(*ast.FuncDecl)
+	if !ok || f.Body == nil {
+		return false
+	}
+	found := false
+	ast.Inspect(f.Body, func(n ast.Node) bool {
+		switch n := n.(type) {
+		case *ast.BinaryExpr:
+			found = found || n.Op == token.MUL
+		case *ast.AssignStmt:
+			found = found || n.Tok == token.MUL_ASSIGN
 		}
 		return !found
 	})

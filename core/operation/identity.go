@@ -1,11 +1,14 @@
 package operation
 
+import "math"
+
 // Identity is what a function computes, as far as samples tell.
 type Identity struct {
 	Readings []Reading // all that agree with every sample; none if it is no known operation
 	Residual float64   // the largest error of the first reading, relative to the size of the result
 	OnUnit   bool      // it was told from others on the unit manifold only: off it, nothing known fits
 	Why      string    // why nothing is said
+	matches  []match   // what the readings come from, one for each
 }
 
 // Known reports whether anything is known of the function.
@@ -35,6 +38,26 @@ func (id *Identity) Is(op Op) bool {
 		}
 	}
 	return false
+}
+
+// Miss is how far the result of another sample is from what the identity has it
+// be, relative to its size, in the reading that it fits best; infinite where a number
+// is none. It is false where the operation is not defined for these inputs, or the
+// function did not return.
+func (f *Function) Miss(id *Identity, s *Sample) (miss float64, ok bool) {
+	if !id.Known() || !s.OK {
+		return 0, false
+	}
+	scratch := make([]float64, 16)
+	miss = math.Inf(1)
+	for _, m := range id.matches {
+		t := trial{f: f}
+		n := t.canonical(s, m.stored)
+		if e := m.of.error(n.in, n.out, scratch); !math.IsNaN(e) {
+			miss, ok = math.Min(miss, e), true
+		}
+	}
+	return miss, ok
 }
 
 // Function is a function to be identified.
@@ -88,6 +111,8 @@ type match struct {
 	reading Reading
 	error   float64
 	general bool // off it too
+	of      *hypothesis
+	stored  combo
 }
 
 // conclude prefers what also holds off the manifold.
@@ -113,6 +138,7 @@ func (t *trial) conclude(found []match) *Identity {
 		}
 		if !contains(id.Readings, m.reading) {
 			id.Readings = append(id.Readings, m.reading)
+			id.matches = append(id.matches, m)
 		}
 	}
 	if len(id.Readings) == 0 {

@@ -188,7 +188,7 @@ func (t *trial) test(h *hypothesis, c combo, cache []canonical, scratch []float6
 	if len(h.reading.Orders) > 0 && !equalOrders(h.reading.Orders, c.orders(t.f.In, t.f.Out)) {
 		return match{}, false // solved for another storage
 	}
-	m := match{reading: h.reading, general: true}
+	m := match{reading: h.reading, general: true, of: h, stored: c}
 	tested := 0
 	tolerance := t.f.Tolerance()
 	for i := range t.samples {

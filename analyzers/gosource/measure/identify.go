@@ -19,7 +19,7 @@ func (f *Function) identify() {
 func (f *Function) identifyCase(c *Case) {
 	for i, l := range f.Layouts {
 		c.Layout = l
-		if id := f.question(c).Identify(); id.Known() || i == 0 {
+		if id := f.Question(c).Identify(); id.Known() || i == 0 {
 			c.Identity = id
 			if id.Known() {
 				return
@@ -29,8 +29,8 @@ func (f *Function) identifyCase(c *Case) {
 	c.Layout = f.Layouts[0]
 }
 
-// question is the function as package operation sees it.
-func (f *Function) question(c *Case) *operation.Function {
+// Question is a case of the function as package operation sees it.
+func (f *Function) Question(c *Case) *operation.Function {
 	q := &operation.Function{Single: f.Single, Eval: func(s []operation.Sample) { f.Evaluate(c, s) }}
 	for _, o := range c.In {
 		q.In = append(q.In, o.Operand)
