@@ -46,6 +46,7 @@ const (
 	ChildOfTwo            = "child-of-two"
 	ClaimsConflict        = "claims-conflict"
 	SingularPoint         = "singular-point"
+	WrongTerm             = "wrong-term"
 	WaiverExpired         = "waiver-expired"
 	WaiverUnused          = "waiver-unused"
 )
@@ -81,6 +82,7 @@ var catalogue = []Rule{
 	{ChildOfTwo, "A frame has two parents in a tree of parents and children.", Warning},
 	{ClaimsConflict, "Two stated claims about one value contradict each other.", Error},
 	{SingularPoint, "A function on rotations fails where its formula is singular.", Warning},
+	{WrongTerm, "A function nearly computes the operation that it is called, but for a term, a component or a branch.", Error},
 	{WaiverExpired, "A waiver has passed its last day.", Warning},
 	{WaiverUnused, "A waiver matches no finding.", Warning},
 }

@@ -14,6 +14,7 @@ import (
 
 	"dextral/analyzers/gosource/literal"
 	"dextral/analyzers/gosource/singular"
+	"dextral/analyzers/gosource/wrongterm"
 	"dextral/rules"
 )
 
@@ -23,7 +24,7 @@ var passes = append([]*analysis.Analyzer{literal.Analyzer}, Passes...)
 
 // Passes are the analyzers that judge functions. They can be used by any driver of
 // go/analysis.
-var Passes = []*analysis.Analyzer{singular.Analyzer}
+var Passes = []*analysis.Analyzer{wrongterm.Analyzer, singular.Analyzer}
 
 // File is one Go source file to audit.
 type File struct {

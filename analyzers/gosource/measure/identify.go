@@ -29,7 +29,8 @@ func (f *Function) identifyCase(c *Case) {
 	c.Layout = f.Layouts[0]
 }
 
-// Question is a case of the function as package operation sees it.
+// Question is a case of the function as package operation sees it: Identify and Explain are
+// asked of it.
 func (f *Function) Question(c *Case) *operation.Function {
 	q := &operation.Function{Single: f.Single, Eval: func(s []operation.Sample) { f.Evaluate(c, s) }}
 	for _, o := range c.In {

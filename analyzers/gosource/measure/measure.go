@@ -83,6 +83,7 @@ type Function struct {
 	Flow    *tape.Flow // which input may influence which output
 	Single  bool       // it computes in float32
 
+	library tape.Library
 	mu      sync.Mutex
 	machine *tape.Machine
 	batch   *tape.Batch
@@ -133,7 +134,7 @@ func newFunction(lowered *lower.Result, l *lower.Func) *Function {
 	if err != nil {
 		return nil
 	}
-	f := &Function{Func: l, machine: machine, batch: machine.NewBatch(tape.Lanes), Flow: tape.Analyze(l.Program, lowered.Library)}
+	f := &Function{Func: l, library: lowered.Library, machine: machine, batch: machine.NewBatch(tape.Lanes), Flow: tape.Analyze(l.Program, lowered.Library)}
 	f.Layouts = f.layouts()
 	if len(f.Layouts) == 0 {
 		return nil

@@ -1,0 +1,311 @@
+package operation
+
+import (
+	"math"
+	"slices"
+	"sort"
+
+	"dextral/core/angle"
+	"dextral/core/convention"
+)
+
+// Miss is an operation that a function nearly computes, and what stands between
+// them.
+type Miss struct {
+	Reading    Reading
+	Samples    []Sample    // on the unit manifold: evaluated, with the paths taken
+	Expected   [][]float64 // what the operation gives for each, stored as the function stores
+	Wrong      []bool      // which of them differ
+	Components []int       // results, by place, that differ in some sample; all others agree in all
+	Worst      int         // the sample that differs most
+	Error      float64     // its error, relative to the size of the result
+	Mean       float64     // mean error of the samples that differ
+	Terms      []Term      // the terms that differ, where the results are sums of terms
+	Edit       string      // one change of the inputs that makes them agree, in words; "" if there is none
+}
+
+// Share is the share of samples in which the function is right.
+func (m *Miss) Share() float64 {
+	right := 0
+	for _, w := range m.Wrong {
+		if !w {
+			right++
+		}
+	}
+	return float64(right) / float64(max(1, len(m.Wrong)))
+}
+
+// Angle is the largest angle, in radians, between the rotation expected and the
+// one found, where both are rotations in the form of the last operand; 0 if it is
+// none.
+func (f *Function) Angle(m *Miss) float64 {
+	if len(f.Out) != 1 || f.Out[0].Kind == Three || f.Out[0].Kind == Scalar {
+		return 0
+	}
+	worst := 0.0
+	for i, w := range m.Wrong {
+		if !w {
+			continue
+		}
+		order := f.Out[0].Order
+		if n := len(m.Reading.Orders); n > 0 {
+			order = m.Reading.Orders[n-1]
+		}
+		a := rotationIn(reordered(m.Samples[i].Out, f.Out, []Order{order}))
+		b := rotationIn(reordered(m.Expected[i], f.Out, []Order{order}))
+		if angle := 2 * halfTurn(a.Reverse().Mul(b)); angle > worst {
+			worst = angle
+		}
+	}
+	return worst
+}
+
+// candidate is a hypothesis in one storage with its score.
+type candidate struct {
+	h     hypothesis
+	combo combo
+	score float64 // share of results that differ, and a little for how much
+}
+
+// Explain finds the operation out of ops that the function comes nearest to, and
+// explains the difference. It returns nil if there is none of this shape, the
+// function gives nothing to compare, or it computes one of them.
+func (f *Function) Explain(ops ...Op) *Miss {
+	var list []hypothesis
+	for _, h := range append(slices.Clone(f.Shape().hypotheses()), f.enumerated(ops)...) {
+		if h.eval != nil && slices.Contains(ops, h.reading.Op) {
+			list = append(list, h)
+		}
+	}
+	if len(list) == 0 {
+		return nil
+	}
+	t := &trial{f: f, combos: combosOf(f.In, f.Out)}
+	t.cover()
+	if len(t.samples) < unitSamples {
+		return nil
+	}
+	best := t.rank(list)
+	if len(best) == 0 || best[0].score == 0 {
+		return nil
+	}
+	var chosen *Miss
+	cost := math.Inf(1)
+	for _, c := range best {
+		m := t.miss(c)
+		t.explain(m, c)
+		k := 1e3 + 1e3*c.score
+		switch {
+		case len(m.Terms) > 0:
+			k = float64(len(m.Terms))
+		case m.Edit != "":
+			k = 2.5
+		case m.Share() > 0.2:
+			k = 20 + 100*c.score
+		}
+		if k < cost {
+			chosen, cost = m, k
+		}
+	}
+	return chosen
+}
+
+// cover draws samples on the manifold until no new path turns up, and evaluates
+// them.
+func (t *trial) cover() {
+	paths := map[string]bool{}
+	add := func(s []Sample) (news bool) {
+		t.f.Eval(s)
+		for i := range s {
+			if s[i].OK {
+				news = news || !paths[s[i].Path]
+				paths[s[i].Path] = true
+				t.samples = append(t.samples, s[i])
+			}
+		}
+		return news
+	}
+	add(Draw(t.f.In, Unit, 64, 2))
+	add(Draw(t.f.In, Wide, 24, 2))
+	add(Draw(t.f.In, Tiny, 8, 2))
+	for round := range uint64(4) {
+		if !add(Draw(t.f.In, Unit, 64, 3+round)) {
+			break
+		}
+	}
+}
+
+// rank scores hypotheses and returns the best few.
+func (t *trial) rank(list []hypothesis) []candidate {
+	var all []candidate
+	few := t.samples[:min(len(t.samples), 24)]
+	for _, c := range t.combos {
+		ready := make([]canonical, len(few))
+		for i := range few {
+			ready[i] = t.canonical(&few[i], c)
+		}
+		for _, h := range list {
+			if len(h.reading.Orders) > 0 && !equalOrders(h.reading.Orders, c.orders(t.f.In, t.f.Out)) {
+				continue
+			}
+			h.reading.Orders = c.orders(t.f.In, t.f.Out)
+			all = append(all, candidate{h, c, t.score(&h, ready)})
+		}
+	}
+	sort.SliceStable(all, func(i, j int) bool { return all[i].score < all[j].score })
+	return all[:min(len(all), 12)]
+}
+
+func (t *trial) score(h *hypothesis, samples []canonical) float64 {
+	differ, total, size := 0, 0, 0.0
+	want := make([]float64, 16)
+	for _, s := range samples {
+		if h.valid != nil && !h.valid(s.in) {
+			continue
+		}
+		w := want[:len(s.out)]
+		h.eval(s.in, w)
+		h.alignSign(w, s.out)
+		for k, x := range s.out {
+			total++
+			e := t.f.componentError(h.reading, w[k], x)
+			if !(e <= t.f.Tolerance()) {
+				differ++
+				size += math.Min(1, e)
+			}
+		}
+	}
+	if total == 0 {
+		return 2
+	}
+	return (float64(differ) + 0.1*size) / float64(total)
+}
+
+// componentError is the distance of two numbers, as angles where they are some.
+func (f *Function) componentError(r Reading, want, got float64) float64 {
+	d := want - got
+	if r.Op == AnglesOf {
+		d = math.Remainder(d*r.Unit.InRadians(), 2*math.Pi)
+	}
+	d = math.Abs(d) / math.Max(1, math.Abs(want))
+	if math.IsNaN(d) {
+		return math.Inf(1)
+	}
+	return d
+}
+
+// alignSign gives an expected quaternion of either sign the one that is nearer,
+// by the number of components that agree.
+func (h *hypothesis) alignSign(want, got []float64) {
+	if !h.sign || len(want) != 4 {
+		return
+	}
+	plus, minus := 0.0, 0.0
+	for k := range want {
+		plus += math.Min(1e-3, math.Abs(want[k]-got[k]))
+		minus += math.Min(1e-3, math.Abs(want[k]+got[k]))
+	}
+	if minus < plus {
+		for k := range want {
+			want[k] = -want[k]
+		}
+	}
+}
+
+// miss compares a candidate with all samples.
+func (t *trial) miss(c candidate) *Miss {
+	m := &Miss{Reading: c.h.reading}
+	differs := make([]bool, size(t.f.Out))
+	wrong := 0
+	for i := range t.samples {
+		s := &t.samples[i]
+		ready := t.canonical(s, c.combo)
+		if c.h.valid != nil && !c.h.valid(ready.in) {
+			continue
+		}
+		want := make([]float64, len(ready.out))
+		c.h.eval(ready.in, want)
+		c.h.alignSign(want, ready.out)
+		stored := t.stored(want, c.combo)
+		worst := 0.0
+		slack := t.f.Tolerance()
+		if c.h.slack != nil {
+			slack += c.h.slack(ready.in)
+		}
+		for k, x := range s.Out {
+			e := t.f.componentError(m.Reading, stored[k], x)
+			if e > slack {
+				differs[k] = true
+				worst = math.Max(worst, e)
+			}
+		}
+		m.Samples = append(m.Samples, *s)
+		m.Expected = append(m.Expected, stored)
+		m.Wrong = append(m.Wrong, worst > 0)
+		if worst > 0 {
+			wrong++
+			m.Mean += math.Min(1, worst)
+		}
+		if worst > m.Error {
+			m.Error, m.Worst = worst, len(m.Samples)-1
+		}
+	}
+	m.Mean /= float64(max(1, wrong))
+	for k, d := range differs {
+		if d {
+			m.Components = append(m.Components, k)
+		}
+	}
+	return m
+}
+
+// stored puts canonical results into the order of the function.
+func (t *trial) stored(canonical []float64, c combo) []float64 {
+	out := slices.Clone(canonical)
+	at := 0
+	for i, o := range t.f.Out {
+		if o.Kind == Quaternion {
+			c.out[i].store(canonical[at:at+4], out[at:at+4])
+		}
+		at += o.Size
+	}
+	return out
+}
+
+// enumerated lists hypotheses that are solved for when a function is right.
+func (f *Function) enumerated(ops []Op) []hypothesis {
+	var all []hypothesis
+	from, to := slices.Contains(ops, FromAngles), slices.Contains(ops, AnglesOf)
+	if solvers[f.Shape()] == nil || !from && !to || f.In[0].Kind == Three == (f.Out[0].Kind == Three) {
+		return nil
+	}
+	for _, unit := range units {
+		for _, seq := range angle.Sequences()[:12] {
+			for _, p := range permutations {
+				for _, reversed := range [2]bool{false, true} {
+					way := angle.Reading{Seq: seq, Order: p}
+					r := Reading{Op: FromAngles, Angles: &way, Unit: unit, Reversed: [2]bool{reversed}}
+					if f.In[0].Kind == Three {
+						all = append(all, hypothesis{reading: r, sign: true, eval: func(in, out []float64) { putRotation(out, r.rotation(in)) }})
+						continue
+					}
+					r.Op = AnglesOf
+					all = append(all, hypothesis{reading: r, eval: func(in, out []float64) { r.putAngles(in, out, unit) }})
+				}
+			}
+		}
+	}
+	return all
+}
+
+// putAngles are the angles of a rotation as the reading has them.
+func (r *Reading) putAngles(in, out []float64, unit convention.Unit) {
+	rotation := rotationIn(in)
+	if r.Reversed[0] {
+		rotation = rotation.Reverse()
+	}
+	n := r.Angles.Numbers(rotation).Numbers()
+	for k := range out {
+		out[k] = n[k] / unit.InRadians()
+	}
+}
