@@ -128,7 +128,11 @@ func (s suspect) finding() *rules.Finding {
 	if condition != "" {
 		what = "for " + condition + " " + what
 	}
-	message := fmt.Sprintf("%s is called %q, but is not quite the %s: %s", key, s.claim.Word, s.miss.Reading.Op, what)
+	says := "name"
+	if s.claim.Source == rules.Comment {
+		says = "comment"
+	}
+	message := fmt.Sprintf("%s is not quite the %s that its %s says: %s", key, s.miss.Reading.Op, says, what)
 	if s.c.Label != "" {
 		message += " (with " + s.c.Label + ")"
 	}
