@@ -13,6 +13,8 @@ import (
 	"golang.org/x/tools/go/analysis"
 
 	"dextral/analyzers/gosource/literal"
+	"dextral/analyzers/gosource/longway"
+	"dextral/analyzers/gosource/roundtrip"
 	"dextral/analyzers/gosource/singular"
 	"dextral/analyzers/gosource/wrongterm"
 	"dextral/rules"
@@ -24,7 +26,7 @@ var passes = append([]*analysis.Analyzer{literal.Analyzer}, Passes...)
 
 // Passes are the analyzers that judge functions. They can be used by any driver of
 // go/analysis.
-var Passes = []*analysis.Analyzer{wrongterm.Analyzer, singular.Analyzer}
+var Passes = []*analysis.Analyzer{longway.Analyzer, roundtrip.Analyzer, singular.Analyzer, wrongterm.Analyzer}
 
 // File is one Go source file to audit.
 type File struct {

@@ -71,15 +71,18 @@ func examine(f *measure.Function, c *measure.Case) *failure {
 		return nil
 	}
 	q := f.Question(c)
-	samples := append(valid(q.In), operation.Brink(q.In, perEdge)...)
+	samples := append(valid(q, c.Identity), operation.Brink(q.In, perEdge)...)
 	f.Evaluate(c, samples)
 	var worst *failure
 	of, same := 0, 0
 	for _, s := range samples {
-		p := judge(q, c, s)
-		if !s.OK || unique(c, s) {
+		if !s.OK { // an error or a panic is an honest answer
 			continue
 		}
+		if undetermined(c.Identity, s) && (finite(s.Out) || c.Identity.Is(operation.Exponential)) {
+			continue
+		}
+		p := judge(q, c, s)
 		of++
 		if p == nil {
 			continue
@@ -93,6 +96,10 @@ func examine(f *measure.Function, c *measure.Case) *failure {
 		worst.of, worst.same = of, same
 	}
 	return worst
+}
+
+func finite(list []float64) bool {
+	return !slices.ContainsFunc(list, func(x float64) bool { return math.IsNaN(x) || math.IsInf(x, 0) })
 }
 
 func compareBool(a, b bool) int {
@@ -117,42 +124,49 @@ var defined = map[operation.Op]bool{
 }
 
 // valid are the singular samples whose inputs are what a caller may hand over: no
-// zero quaternions, matrices or axes.
-func valid(in []operation.Operand) []operation.Sample {
-	return slices.DeleteFunc(operation.Draw(in, operation.Singular, 0, 0), func(s operation.Sample) bool {
+// zero quaternions, matrices or axes, and axes of unit length.
+func valid(q *operation.Function, id *operation.Identity) []operation.Sample {
+	axes := id.Is(operation.FromAxisAngle) || id.Is(operation.TwoVectors) || id.Readings[0].Detail == "about an axis"
+	return slices.DeleteFunc(operation.Draw(q.In, operation.Singular, 0, 0), func(s operation.Sample) bool {
 		at := 0
-		for _, o := range in {
+		for _, o := range q.In {
 			n := 0.0
 			for _, x := range s.In[at : at+o.Size] {
 				n = math.Hypot(n, x)
 			}
 			at += o.Size
-			vectors := o.Kind == operation.Three && len(in) > 1 // an axis, or a direction
-			if n == 0 && (o.Kind == operation.Quaternion || o.Kind == operation.Matrix3 || o.Kind == operation.Matrix4 || vectors) {
-				return true
+			switch o.Kind {
+			case operation.Quaternion, operation.Matrix3, operation.Matrix4:
+				if n == 0 {
+					return true
+				}
+			case operation.Three:
+				if axes && math.Abs(n-1) > 1e-6 || len(q.In) > 1 && n == 0 {
+					return true
+				}
 			}
 		}
 		return false
 	})
 }
 
-// unique reports whether the result for a sample is not determined: halfway between
-// opposite rotations, or from a vector to its negative, any of many will do.
-func unique(c *measure.Case, s operation.Sample) bool {
+// undetermined reports whether any of many results will do: halfway between opposite
+// rotations, from a vector to its negative, a root of -1.
+func undetermined(id *operation.Identity, s operation.Sample) bool {
 	opposite := strings.HasPrefix(s.Note, "opposite") || strings.HasPrefix(s.Note, "the second is the negative")
-	return opposite && (c.Identity.Is(operation.Slerp) || c.Identity.Is(operation.Nlerp))
+	switch id.Op() {
+	case operation.Slerp, operation.Nlerp, operation.TwoVectors:
+		return opposite
+	case operation.Exponential:
+		return s.Note == "identity with the sign changed"
+	}
+	return false
 }
 
 // judge returns how a sample fails, or nil.
 func judge(q *operation.Function, c *measure.Case, s operation.Sample) *failure {
-	if !s.OK {
-		return nil // an error or a panic is an honest answer
-	}
-	if slices.ContainsFunc(s.Out, func(x float64) bool { return math.IsNaN(x) || math.IsInf(x, 0) }) {
+	if !finite(s.Out) {
 		return &failure{sample: s, nan: true}
-	}
-	if c.Identity.Is(operation.TwoVectors) && strings.Contains(s.Note, "opposite") {
-		return nil // every half turn about a perpendicular axis is right
 	}
 	miss, ok := q.Miss(c.Identity, &s)
 	if !ok || miss <= noticeable {
