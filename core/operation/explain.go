@@ -29,40 +29,56 @@ func (t *trial) explain(m *Miss, c candidate) {
 		m.Terms = t.angleTerms(m, c, rows)
 	}
 	if m.Terms == nil {
-		m.Terms = t.sumTerms(m, c, rows)
+		m.Terms, m.Factor = t.scaleTerms(m, c, rows)
 	}
 	if m.Terms == nil {
-		m.Terms = t.scaleTerms(m, c, rows)
+		if terms := t.sumTerms(m, c, rows); terms != nil {
+			m.Terms, m.Factor = terms, ""
+		}
 	}
-	if m.Terms == nil {
-		m.Edit = t.edit(m, c, rows)
+	if m.Terms == nil && m.Factor == "" {
+		m.Terms = t.culpritTerms(m, c, rows)
+	}
+	if m.Terms == nil && m.Factor == "" && (m.Reading.Op == Slerp || m.Reading.Op == Nlerp) {
+		m.Terms = t.weightTerms(m, c, rows)
+	}
+	if len(m.Terms) == 0 || len(m.Terms) > 3 {
+		if m.Edit = t.edit(m, c, rows); m.Edit != "" {
+			m.Terms = nil
+		}
 	}
 }
 
 // rowsOf picks the samples of the path on which most of the wrong ones lie, and
-// draws more of them.
+// draws more of them: of the first family that has wrong ones.
 func (t *trial) rowsOf(m *Miss) []Sample {
 	count := map[string]int{}
-	best := ""
+	best, family := "", families
 	for i, wrong := range m.Wrong {
 		if wrong {
-			p := m.Samples[i].Path
-			if count[p]++; count[p] > count[best] || best == "" {
-				best = p
+			s := &m.Samples[i]
+			if count[s.Path]++; count[s.Path] > count[best] || count[best] == 0 {
+				best = s.Path
 			}
 		}
 	}
-	var rows []Sample
-	for i := range m.Samples {
-		if m.Samples[i].Path == best && m.Samples[i].Family == Unit {
-			rows = append(rows, m.Samples[i])
+	for i, wrong := range m.Wrong {
+		if f := m.Samples[i].Family; wrong && m.Samples[i].Path == best && f < family && f != Wide {
+			family = f
 		}
 	}
+	if anywhere[m.Reading.Op] {
+		family = General
+	}
+	if family == families {
+		return nil
+	}
+	var rows []Sample
 	for seed := uint64(20); seed < 36 && len(rows) < maxRows; seed++ {
-		more := Draw(t.f.In, Unit, 64, seed)
+		more := Draw(t.f.In, family, 64, seed)
 		t.f.Eval(more)
 		for _, s := range more {
-			if s.OK && s.Path == best {
+			if s.OK && s.Path == best && !slices.ContainsFunc(s.Out, math.IsNaN) {
 				rows = append(rows, s)
 			}
 		}
@@ -71,7 +87,7 @@ func (t *trial) rowsOf(m *Miss) []Sample {
 }
 
 // maxRows is enough for the largest basis but one, that of products of 4x4 matrices.
-const maxRows = 160
+const maxRows = 360
 
 // table is a set of functions with their values on samples, factored.
 type table struct {
@@ -200,66 +216,6 @@ func (t *trial) canonicalPlace(place int, c combo) int {
 		at += o.Size
 	}
 	return place
-}
-
-// scaleTerms explains a result that is a multiple of the expected one: by a factor, or
-// by a divisor that is a sum of squares in some way.
-func (t *trial) scaleTerms(m *Miss, c candidate, rows []Sample) []Term {
-	if len(rows) < 12 {
-		return nil
-	}
-	want := make([]float64, size(t.f.Out))
-	ratio := func(r *canonical) float64 {
-		c.h.eval(r.in, want)
-		c.h.alignSign(want, r.out)
-		dot, square := 0.0, 0.0
-		for k, x := range want {
-			dot += x * r.out[k]
-			square += x * x
-		}
-		return dot / square
-	}
-	lowest, highest := math.Inf(1), math.Inf(-1)
-	for i := range rows {
-		r := t.canonical(&rows[i], c.combo)
-		f := ratio(&r)
-		for k, x := range r.out {
-			if !(math.Abs(x-f*want[k]) <= 16*t.f.Tolerance()*math.Max(1, math.Abs(x))) {
-				return nil
-			}
-		}
-		lowest, highest = math.Min(lowest, f), math.Max(highest, f)
-	}
-	if highest-lowest < 64*t.f.Tolerance() {
-		return []Term{{Result: -1, What: "", Of: "the whole result", Expected: 1, Found: tidy((lowest + highest) / 2)}}
-	}
-	var quads []factorFunc
-	at := 0
-	for i, o := range t.f.In {
-		if o.Kind == Quaternion || o.Kind == Three {
-			quads = append(quads, quadratic(operandNames(o, c.combo.in[i]), at)...)
-		}
-		at += o.Size
-	}
-	tab := t.tabulate(quads, rows, c.combo)
-	if tab == nil {
-		return nil
-	}
-	for _, form := range []struct {
-		of string
-		f  func(x float64) float64
-	}{
-		{"the divisor", func(x float64) float64 { return 1 / x }},
-		{"the square of the divisor", func(x float64) float64 { return 1 / (x * x) }},
-		{"the factor", func(x float64) float64 { return x }},
-		{"the square of the result", func(x float64) float64 { return x * x }},
-	} {
-		terms, ok := t.compare(tab, -1, form.of, func(*canonical) float64 { return form.f(1) }, func(r *canonical) float64 { return form.f(ratio(r)) })
-		if ok && len(terms) > 0 && len(terms) <= maxTerms {
-			return terms
-		}
-	}
-	return nil
 }
 
 // edit looks for one input that is read in place of another, or with its sign

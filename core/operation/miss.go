@@ -22,7 +22,35 @@ type Miss struct {
 	Mean       float64     // mean error of the samples that differ
 	Terms      []Term      // the terms that differ, where the results are sums of terms
 	Edit       string      // one change of the inputs that makes them agree, in words; "" if there is none
+	Factor     string      // how the result is a multiple of what is expected, in words; "" if it is none
 }
+
+// cost is how far-fetched the explanation is: few terms that differ are likelier than
+// many, and an operation that is computed for a part of the samples is likelier meant
+// than one that never is.
+func (m *Miss) cost() float64 {
+	k := 30 * (1 - m.Share())
+	switch {
+	case len(m.Terms) > 0 && math.IsNaN(m.Terms[0].Found):
+		return k + 12
+	case len(m.Terms) > 0:
+		return k + float64(len(m.Terms))
+	case m.Edit != "":
+		return k + 2.5
+	case m.Factor != "":
+		return k + 10
+	}
+	return k + 100
+}
+
+// Multiple reports whether the result is a constant multiple of the one expected.
+func (m *Miss) Multiple() bool {
+	return len(m.Terms) == 1 && m.Terms[0].Of == wholeResult
+}
+
+// Anywhere reports whether an operation is the same off the unit manifold: it is
+// one of linear algebra, not of rotations.
+func (op Op) Anywhere() bool { return anywhere[op] }
 
 // Share is the share of samples in which the function is right.
 func (m *Miss) Share() float64 {
@@ -81,43 +109,50 @@ func (f *Function) Explain(ops ...Op) *Miss {
 		return nil
 	}
 	t := &trial{f: f, combos: combosOf(f.In, f.Out)}
-	t.cover()
+	t.cover(rotations(list))
 	if len(t.samples) < unitSamples {
 		return nil
 	}
 	best := t.rank(list)
-	if len(best) == 0 || best[0].score == 0 {
-		return nil
-	}
 	var chosen *Miss
 	cost := math.Inf(1)
 	for _, c := range best {
 		m := t.miss(c)
-		t.explain(m, c)
-		k := 1e3 + 1e3*c.score
-		switch {
-		case len(m.Terms) > 0:
-			k = float64(len(m.Terms))
-		case m.Edit != "":
-			k = 2.5
-		case m.Share() > 0.2:
-			k = 20 + 100*c.score
+		if len(m.Components) == 0 {
+			return nil
 		}
-		if k < cost {
+		t.explain(m, c)
+		if k := m.cost() + c.score; k < cost {
 			chosen, cost = m, k
 		}
 	}
 	return chosen
 }
 
+// rotations reports whether hypotheses are about rotations only: others are held
+// against samples off the manifold too.
+func rotations(list []hypothesis) bool {
+	for _, h := range list {
+		if !anywhere[h.reading.Op] {
+			return true
+		}
+	}
+	return false
+}
+
+// anywhere are the operations that are the same off the unit manifold.
+var anywhere = map[Op]bool{
+	MatrixProduct: true, MatrixInverse: true, Transpose: true, Determinant: true, Trace: true, Cross: true, Skew: true, Dot: true, Sum: true, Difference: true,
+}
+
 // cover draws samples on the manifold until no new path turns up, and evaluates
 // them.
-func (t *trial) cover() {
+func (t *trial) cover(rotation bool) {
 	paths := map[string]bool{}
 	add := func(s []Sample) (news bool) {
 		t.f.Eval(s)
 		for i := range s {
-			if s[i].OK {
+			if s[i].OK && !undefined(s[i].Out) {
 				news = news || !paths[s[i].Path]
 				paths[s[i].Path] = true
 				t.samples = append(t.samples, s[i])
@@ -127,7 +162,10 @@ func (t *trial) cover() {
 	}
 	add(Draw(t.f.In, Unit, 64, 2))
 	add(Draw(t.f.In, Wide, 24, 2))
-	add(Draw(t.f.In, Tiny, 8, 2))
+	add(Draw(t.f.In, Tiny, 16, 2))
+	if !rotation {
+		add(Draw(t.f.In, General, 64, 2))
+	}
 	for round := range uint64(4) {
 		if !add(Draw(t.f.In, Unit, 64, 3+round)) {
 			break
@@ -135,10 +173,20 @@ func (t *trial) cover() {
 	}
 }
 
+// undefined reports whether a result is no number in all places.
+func undefined(out []float64) bool {
+	for _, x := range out {
+		if !math.IsNaN(x) {
+			return false
+		}
+	}
+	return true
+}
+
 // rank scores hypotheses and returns the best few.
 func (t *trial) rank(list []hypothesis) []candidate {
 	var all []candidate
-	few := t.samples[:min(len(t.samples), 24)]
+	few := t.few()
 	for _, c := range t.combos {
 		ready := make([]canonical, len(few))
 		for i := range few {
@@ -154,6 +202,18 @@ func (t *trial) rank(list []hypothesis) []candidate {
 	}
 	sort.SliceStable(all, func(i, j int) bool { return all[i].score < all[j].score })
 	return all[:min(len(all), 12)]
+}
+
+// few picks samples of all families.
+func (t *trial) few() []Sample {
+	var some []Sample
+	count := map[Family]int{}
+	for _, s := range t.samples {
+		if count[s.Family]++; count[s.Family] <= 12 {
+			some = append(some, s)
+		}
+	}
+	return some
 }
 
 func (t *trial) score(h *hypothesis, samples []canonical) float64 {

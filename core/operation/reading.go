@@ -121,10 +121,11 @@ type Reading struct {
 }
 
 // Rotational reports whether only rotations are treated so: a type that has such a
-// function holds rotations, and no colours or planes.
+// function holds rotations, and no colours or planes. A conjugate is no sign of it: points
+// in homogeneous coordinates are negated in the same way.
 func (r Reading) Rotational() bool {
 	switch r.Op {
-	case Product, Quotient, Conjugate, Inverse, RotateVector, ToMatrix, FromMatrix, AnglesOf, FromAngles, AxisTurn,
+	case Product, Quotient, RotateVector, ToMatrix, FromMatrix, AnglesOf, FromAngles, AxisTurn,
 		FromAxisAngle, AxisAngleOf, FromRotvec, TwoVectors, Derivative, Step, TurnAngle, AngleBetween, RotvecOf:
 		return true
 	}

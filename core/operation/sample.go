@@ -50,12 +50,47 @@ func Draw(in []Operand, f Family, n int, seed uint64) []Sample {
 	samples := make([]Sample, n)
 	for i := range samples {
 		var numbers []float64
+		near := f == Tiny && pair(in)
+		var first rotor.Rotor
 		for _, o := range in {
-			numbers = append(numbers, o.stored(g.operand(o, in, f, i))...)
+			n := g.operand(o, in, f, i)
+			switch {
+			case near && o.Kind == Quaternion:
+				first = g.near(first, i)
+				n[0], n[1], n[2], n[3] = first.Quaternion()
+			case near && o.Kind == Scalar:
+				n[0] = g.scalar(Unit, i)
+			}
+			numbers = append(numbers, o.stored(n)...)
 		}
 		samples[i] = Sample{Family: f, In: numbers}
 	}
 	return samples
+}
+
+// pair reports whether there are two quaternions: then Tiny is how far they are
+// apart.
+func pair(in []Operand) bool {
+	n := 0
+	for _, o := range in {
+		if o.Kind == Quaternion {
+			n++
+		}
+	}
+	return n == 2
+}
+
+// near is any rotation, or one that is up to some degrees from the given one; every
+// other time with the opposite sign.
+func (g source) near(first rotor.Rotor, i int) rotor.Rotor {
+	if first == (rotor.Rotor{}) {
+		return g.rotor(Unit)
+	}
+	r := first.Mul(rotor.FromRotationVector(g.vector(g.between(1e-3, 0.06))))
+	if i%2 == 1 {
+		r = r.Neg()
+	}
+	return r
 }
 
 // stored puts canonical numbers of a quaternion into the order of its operand.

@@ -15,6 +15,8 @@ func (f *Function) Difference(m *Miss) string {
 		return f.termWords(m)
 	case m.Edit != "":
 		return "it equals the operation " + m.Edit
+	case m.Factor != "":
+		return m.Factor
 	}
 	return ""
 }
@@ -44,6 +46,12 @@ func (f *Function) termWords(m *Miss) string {
 
 // groupWords words the terms of one result.
 func (f *Function) groupWords(g []Term) string {
+	if math.IsNaN(g[0].Found) {
+		if name := f.ResultName(g[0].Result); name != "" {
+			return name + " is wrong before the result is normalised; the others keep their proportions"
+		}
+		return g[0].Of + " are wrong"
+	}
 	head := ""
 	if name := f.ResultName(g[0].Result); name != "" {
 		head = name

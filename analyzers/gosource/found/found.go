@@ -82,6 +82,9 @@ func (c *Collector) Done() (any, error) {
 	r := &Result{}
 	for _, f := range c.list {
 		r.Findings = append(r.Findings, f.Finding)
+		if f.Level == rules.Note {
+			continue // worth knowing, and no diagnostic
+		}
 		c.pass.Report(analysis.Diagnostic{Pos: f.from, End: f.to, Category: f.Rule, Message: fmt.Sprintf("%s: %s", f.Rule, f.Message)})
 	}
 	return r, nil

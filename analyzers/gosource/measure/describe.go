@@ -57,8 +57,11 @@ func (f *Function) Inputs(c *Case, in []float64) string {
 }
 
 // quaternionWords are words in names of types, packages and functions that say
-// that four numbers are a rotation.
-var quaternionWords = []string{"quat", "rotor", "versor", "attitude", "orientation", "rotation"}
+// that four numbers are a quaternion; typeWords say it in the name of a type.
+var (
+	quaternionWords = []string{"quat", "rotor", "versor"}
+	typeWords       = []string{"attitude", "orientation", "rotation"}
+)
 
 // Orients reports whether the operands of a case are orientations as far as operations
 // of the given kinds need it: some other function treats the type as rotations,
@@ -81,16 +84,16 @@ func (r *Result) rotates(f *Function, o Operand) bool {
 			return true
 		}
 	}
-	if _, ok := orderOfNames(o.Names); ok {
-		// w, x, y, z may still be a homogeneous vector: the name must help.
-		return speaks(f.Name + " " + o.Type + " " + docText(f))
+	if speaks(f.Name+" "+o.Type, quaternionWords) || speaks(o.Type, typeWords) {
+		return true
 	}
-	return speaks(f.Name + " " + o.Type)
+	_, named := orderOfNames(o.Names) // w, x, y, z may still be a homogeneous vector
+	return named && speaks(docText(f), quaternionWords)
 }
 
-func speaks(text string) bool {
+func speaks(text string, words []string) bool {
 	text = strings.ToLower(text)
-	return slices.ContainsFunc(quaternionWords, func(w string) bool { return strings.Contains(text, w) })
+	return slices.ContainsFunc(words, func(w string) bool { return strings.Contains(text, w) })
 }
 
 func docText(f *Function) string {

@@ -53,7 +53,7 @@ func init() {
 	say("quat quaternion q rotor rotation orientation attitude matrix mat mat3 mat4 dcm", word{ops: ops(operation.FromMatrix), in: "mh", out: "q"})
 	say("euler eulers rpy ypr angles roll rollpitchyaw yawpitchroll tait bryan pitch yaw eulerangles", word{ops: ops(operation.AnglesOf), in: "qmh", out: "v"}, word{ops: ops(operation.FromAngles), in: "v", out: "qmh"})
 	say("axis axisangle angleaxis aboutaxis", word{ops: ops(operation.FromAxisAngle), in: "vs", out: "qmh"}, word{ops: ops(operation.AxisAngleOf), in: "qmh", out: "vs"}, word{ops: ops(operation.RotateVector), in: "vs", out: "v"})
-	say("rotvec rotationvector exp expmap vector log logmap vec", word{ops: ops(operation.FromRotvec), in: "v", out: "qmh"}, word{ops: ops(operation.RotvecOf), in: "qmh", out: "v"})
+	say("rotvec rotationvector expmap logmap", word{ops: ops(operation.FromRotvec), in: "v", out: "qmh"}, word{ops: ops(operation.RotvecOf), in: "qmh", out: "v"})
 	say("between fromto twovectors arc vectors", word{ops: ops(operation.TwoVectors), in: "v", out: "qmh"})
 	say("slerp interpolate interpolation", word{ops: ops(operation.Slerp)})
 	say("nlerp", word{ops: ops(operation.Nlerp)})
@@ -85,7 +85,7 @@ func Of(f *measure.Function, c *measure.Case) Claim {
 		if len(sentence) > 0 && sentence[0] == strings.ToLower(f.Object.Name()) {
 			sentence = sentence[1:]
 		}
-		if c := find(sentence, shape); c.Claimed() {
+		if c := find(spoken(sentence), shape); c.Claimed() {
 			c.Source = rules.Comment
 			return c
 		}
@@ -133,4 +133,26 @@ func (w word) fits(s operation.Shape) bool {
 		return strings.Contains(s.In, w.in[:1]) && strings.Contains(s.In, w.in[1:])
 	}
 	return len(s.In) == 1 && strings.Contains(w.in, s.In) || w.in == "v" && s.In == "vv"
+}
+
+// certain are the words that mean an operation on rotations in running text too.
+// Most words of names do not: a product may be one of numbers, an inverse one of a sine.
+var certain = []string{"hamilton", "slerp", "nlerp", "quaternion", "rotation", "dcm", "euler", "conjugate"}
+
+// followers make an operation of a certain word before them.
+var followers = []string{"product", "multiplication", "conjugate", "inverse", "matrix", "angles", "derivative", "interpolation"}
+
+// spoken keeps what a sentence says for certain: certain words, and a word that
+// follows one.
+func spoken(words []string) []string {
+	var kept []string
+	for i, w := range words {
+		if !slices.Contains(certain, w) {
+			continue
+		}
+		if kept = append(kept, w); i+1 < len(words) && slices.Contains(followers, words[i+1]) {
+			kept = append(kept, words[i+1])
+		}
+	}
+	return kept
 }

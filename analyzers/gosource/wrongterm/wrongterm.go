@@ -66,14 +66,11 @@ func examine(measured *measure.Result, f *measure.Function) (suspect, bool) {
 		return suspect{}, false
 	}
 	for _, c := range f.Cases {
-		if c.Identity.Known() {
-			continue
-		}
 		for _, layout := range f.Layouts {
 			try := *c
 			try.Layout = layout
 			claim := named.Of(f, &try)
-			if !claim.Claimed() || !measured.Orients(f, &try, claim.Ops) {
+			if !claim.Claimed() || c.Identity.Known() && (slices.ContainsFunc(claim.Ops, c.Identity.Is) || !general(c.Identity.Op())) || !measured.Orients(f, &try, claim.Ops) {
 				continue
 			}
 			ask := f.Question(&try)
@@ -85,26 +82,49 @@ func examine(measured *measure.Result, f *measure.Function) (suspect, bool) {
 	return suspect{}, false
 }
 
+// general reports whether an operation is one by which nobody calls a function: a linear
+// map of some kind may be any operation with a slip.
+func general(op operation.Op) bool {
+	switch op {
+	case operation.AxisMapped, operation.LinearMap, operation.NegConjugate, operation.Negative, operation.Copy, "":
+		return true
+	}
+	return false
+}
+
 // convincing reports whether a function is so near to an operation that it must
 // have been meant.
 func convincing(ask *operation.Function, m *operation.Miss) bool {
 	const visible = 1e-4 // less may be an approximation
-	if m.Error < visible {
+	if m.Error < visible || !generic(m) {
 		return false
 	}
-	if !generic(m) {
-		return false
-	}
+	n := len(m.Expected[0])
+	few := 2*len(m.Components) <= n || n == 3 && len(m.Components) == 1
 	switch {
 	case len(m.Terms) > 0:
-		return len(m.Terms) <= 8
-	case m.Edit != "":
+		if m.Multiple() && m.Reading.Op.Anywhere() {
+			return false // a multiple of what is no rotation is as good
+		}
+		return few || len(m.Terms) <= 2*len(m.Components) && wrongTerms(m) < 0.8
+	case m.Edit != "", m.Factor != "":
 		return true
 	case m.Share() >= 0.2:
 		return true
 	}
-	n := len(m.Expected[0])
-	return n > 3 && 2*len(m.Components) <= n || n == 3 && len(m.Components) == 1
+	return n > 3 && few || n == 3 && len(m.Components) == 1
+}
+
+// wrongTerms is the share of terms that differ among those listed with a factor:
+// a result without any of the terms expected is another one.
+func wrongTerms(m *operation.Miss) float64 {
+	missing := 0
+	for _, t := range m.Terms {
+		if t.Found == 0 {
+			missing++
+		}
+	}
+	return float64(missing) / float64(len(m.Terms))
 }
 
 // generic reports whether ordinary samples differ: large angles and tiny ones have
@@ -140,7 +160,9 @@ func (s suspect) finding() *rules.Finding {
 		message += fmt.Sprintf("; off by up to %.3g deg", angle*180/3.141592653589793)
 	}
 	level := rules.Warning
-	if len(s.miss.Terms) > 0 || s.miss.Edit != "" || condition != "" {
+	if s.miss.Multiple() && s.miss.Terms[0].Found == -1 {
+		level = rules.Note // the same rotation
+	} else if len(s.miss.Terms) > 0 || s.miss.Edit != "" || condition != "" {
 		level = rules.Error
 	}
 	f := &rules.Finding{
