@@ -51,6 +51,7 @@ const (
 	RoundTripBroken       = "round-trip-broken"
 	WaiverExpired         = "waiver-expired"
 	WaiverUnused          = "waiver-unused"
+	WaiverTooBroad        = "waiver-too-broad"
 )
 
 var catalogue = []Rule{
@@ -89,6 +90,7 @@ var catalogue = []Rule{
 	{RoundTripBroken, "Two conversions that ought to undo each other do not.", Warning},
 	{WaiverExpired, "A waiver has passed its last day.", Warning},
 	{WaiverUnused, "A waiver matches no finding.", Warning},
+	{WaiverTooBroad, "A waiver accepts more than somebody can have looked at.", Warning},
 }
 
 // Catalogue lists all rules in the order in which they are documented.

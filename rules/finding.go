@@ -98,9 +98,13 @@ func (f *Finding) Compare(g *Finding) int {
 // Waiver says that somebody accepted a finding.
 type Waiver struct {
 	Rule    string // rule name
-	Place   string // path, or path#key, where path may be a glob
+	Place   string // path, or path#key, where path may be a glob; "" for a comment beside the value
 	Until   string // last day it holds, YYYY-MM-DD
 	Because string
 	Owner   string
 	At      Place // where the waiver itself stands
+	InFile  bool  // in a file of waivers that dextral.toml names
 }
+
+// Inline reports whether the waiver is a comment beside the value.
+func (w *Waiver) Inline() bool { return w.Place == "" }

@@ -59,6 +59,17 @@ func TestDocumentedExamples(t *testing.T) {
 			_, err := Parse("dextral.toml", []byte(b.text), ruleNames())
 			require.Error(t, err, b.text)
 			assert.Equal(t, all[i+1].text, err.Error()+"\n")
+		case "yaml":
+			beside := 0
+			for line := range strings.Lines(b.text) {
+				if comment := strings.TrimLeft(line, " #"); Addresses(comment) {
+					beside++
+					_, err := ParseBeside(comment, rules.Place{Path: "a.yaml", Line: 1, Column: 1}, ruleNames())
+					assert.NoError(t, err)
+				}
+			}
+			assert.NotZero(t, beside, b.text)
+		case "sh": // a command, run by the scripts of cmd/dextral
 		case "text":
 			require.Equal(t, "toml wrong", all[max(i-1, 0)].info, "errors without an example")
 		default:
@@ -84,7 +95,7 @@ zzz = 1
 	r := &reader{lines: newLines("dextral.toml", ""), known: ruleNames()}
 	asked := map[string][]string{}
 	for name, read := range map[string]func(*table){
-		"":         func(t *table) { r.policy(&Policy{}, t) },
+		"":         func(t *table) { (&Policy{}).read(t) },
 		"defaults": func(t *table) { t.conventions() },
 		"claim":    func(t *table) { t.claim() },
 		"rig":      func(t *table) { t.rig(nil) },

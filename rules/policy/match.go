@@ -6,6 +6,7 @@ import (
 	"path"
 	"path/filepath"
 	"regexp"
+	"slices"
 	"strings"
 
 	"github.com/bmatcuk/doublestar/v4"
@@ -56,6 +57,13 @@ func (g glob) base() string {
 	}
 	dir, _ := doublestar.SplitPattern(string(g))
 	return dir
+}
+
+// wholeTree reports whether the glob takes in directories that nobody named: it
+// holds ** or begins with a wildcard element that stands for a directory.
+func (g glob) wholeTree() bool {
+	first, rest, _ := strings.Cut(string(g), "/")
+	return slices.Contains(strings.Split(string(g), "/"), "**") || rest != "" && first == "*"
 }
 
 // keyPattern matches the dotted path of a value in the structure of its file.

@@ -34,7 +34,8 @@ type Policy struct {
 	defaults rules.Claims
 	claims   []claim
 	rigs     []rig
-	accepted []waiver // beside Waivers
+	accepted []waiver  // beside Waivers
+	files    []located // files of more waivers, as the sheet names them
 }
 
 // Gate is the mildest level at which a finding fails an audit.
@@ -115,20 +116,33 @@ func Find(dir string) (string, error) {
 // Load reads a policy file. The known rule names are those that waivers may
 // name. Errors about the text are of type Errors.
 func Load(file string, known []string) (*Policy, error) {
+	text, err := readBounded(file)
+	if err != nil {
+		return nil, err
+	}
+	p, err := Parse(file, text, known)
+	if err == nil {
+		err = p.ReadWaivers(known, readBounded)
+	}
+	if err != nil {
+		return nil, err
+	}
+	return p, nil
+}
+
+// readBounded reads a file unless it is larger than any sheet.
+func readBounded(file string) ([]byte, error) {
 	f, err := os.Open(filepath.FromSlash(file))
 	if err != nil {
 		return nil, err
 	}
 	defer f.Close()
-	text, err := io.ReadAll(io.LimitReader(f, maxSize+1))
-	if err != nil {
-		return nil, fmt.Errorf("%s: cannot be read: %w", file, err)
-	}
-	return Parse(file, text, known)
+	return io.ReadAll(io.LimitReader(f, maxSize+1))
 }
 
 // Parse reads the text of a policy file of the given name. Its globs are
-// relative to the directory of that name.
+// relative to the directory of that name. Files of waivers that it names are not
+// read: see ReadWaivers.
 func Parse(name string, text []byte, known []string) (*Policy, error) {
 	name = path.Clean(filepath.ToSlash(name))
 	if len(text) > maxSize {
@@ -138,19 +152,28 @@ func Parse(name string, text []byte, known []string) (*Policy, error) {
 	if err != nil {
 		return nil, fmt.Errorf("%s: the directory in which the command was started is not known: %w", name, err)
 	}
+	p := &Policy{Path: name, root: where}
+	if errs := parseText(name, text, known, p.read); errs != nil {
+		return nil, errs
+	}
+	return p, nil
+}
+
+// parseText decodes a text and hands its top table to read. It returns nil or all
+// that is wrong.
+func parseText(name string, text []byte, known []string, read func(*table)) error {
 	source := strings.TrimPrefix(string(text), "\ufeff") // a byte order mark takes no column
 	r := &reader{lines: newLines(name, source), known: known}
 	var vals map[string]any
 	if _, err := toml.Decode(source, &vals); err != nil {
-		return nil, Errors{r.syntax(err)}
+		return Errors{r.syntax(err)}
 	}
-	p := &Policy{Path: name, root: where}
-	r.policy(p, &table{r: r, vals: vals, node: locate(source)})
+	read(&table{r: r, vals: vals, node: locate(source)})
 	if len(r.errs) > 0 {
 		r.errs.sort()
-		return nil, r.errs
+		return r.errs
 	}
-	return p, nil
+	return nil
 }
 
 // rel is the path relative to the policy's directory; false if it is not below

@@ -23,9 +23,9 @@ func parse(t *testing.T, text string) *Policy {
 
 func TestErrorsSayWhereAndWhatIsAllowed(t *testing.T) {
 	cases := []struct{ name, text, want string }{
-		{"unknown key", "gates = 'error'", `dextral.toml:1:1: unknown key "gates"; did you mean "gate"? (allowed: claim, defaults, exclude, gate, rig, waiver)`},
-		{"unknown key far from any", "colour = 1", `dextral.toml:1:1: unknown key "colour" (allowed: claim, defaults, exclude, gate, rig, waiver)`},
-		{"unknown table", "[[waivers]]\nrule = 'x'", `dextral.toml:1:3: unknown key "waivers"; did you mean "waiver"? (allowed: claim, defaults, exclude, gate, rig, waiver)`},
+		{"unknown key", "gates = 'error'", `dextral.toml:1:1: unknown key "gates"; did you mean "gate"? (allowed: claim, defaults, exclude, gate, rig, waiver, waiver_files)`},
+		{"unknown key far from any", "colour = 1", `dextral.toml:1:1: unknown key "colour" (allowed: claim, defaults, exclude, gate, rig, waiver, waiver_files)`},
+		{"unknown table", "[[waivers]]\nrule = 'x'", `dextral.toml:1:3: unknown key "waivers"; did you mean "waiver"? (allowed: claim, defaults, exclude, gate, rig, waiver, waiver_files)`},
 		{"column in code points", "[[claim]]\nfiles = ['é/ü', '/z']\nunit = 'deg'", `dextral.toml:2:17: files in [[claim]]: "/z" is absolute; globs are relative to the directory of this file`},
 		{"carriage returns", "gate = 'error'\r\nexclude = 3\r\n", `dextral.toml:2:11: exclude must be a string or an array of strings, not an integer`},
 		{"byte order mark", "\ufeffgate = 'nite'", `dextral.toml:1:8: gate cannot be "nite"; did you mean "note"? (allowed: error, warning, note, never)`},

@@ -37,12 +37,13 @@ func (r *reader) syntax(err error) *Error {
 	return &Error{r.lines.at(span{start, end}), "is not TOML: " + parse.Message}
 }
 
-// policy reads the whole file.
-func (r *reader) policy(p *Policy, t *table) {
+// read reads the whole sheet.
+func (p *Policy) read(t *table) {
 	if g, ok := t.word("gate", gateNames...); ok {
 		p.Gate, _ = ParseGate(g)
 	}
 	p.exclude = t.globs("exclude")
+	p.files = t.waiverFiles()
 	if d := t.one("defaults"); d != nil {
 		p.defaults = d.conventions()
 		d.close()
@@ -53,11 +54,7 @@ func (r *reader) policy(p *Policy, t *table) {
 	for _, g := range t.many("rig") {
 		p.rigs = append(p.rigs, g.rig(p.rigs))
 	}
-	for _, w := range t.many("waiver") {
-		w := w.waiver()
-		p.accepted = append(p.accepted, w)
-		p.Waivers = append(p.Waivers, w.Waiver)
-	}
+	p.accept(t)
 	t.close()
 }
 
@@ -204,37 +201,4 @@ func (t *table) rig(others []rig) rig {
 	g.files = t.globs("files")
 	t.close("name", "files")
 	return g
-}
-
-// waiver reads a [[waiver]].
-func (t *table) waiver() waiver {
-	w := waiver{Waiver: &rules.Waiver{At: t.at()}}
-	w.Rule, _ = t.text("rule")
-	if w.Rule != "" {
-		t.checkRule(w.Rule)
-	}
-	if s, ok := t.text("place"); ok {
-		w.Place = s
-		if err := w.parsePlace(); err != nil {
-			t.r.fail(t.valueAt("place"), "place%s: %q %v", t.within(), s, err)
-		}
-	}
-	w.Until, _ = t.day("until")
-	w.Because, _ = t.text("because")
-	w.Owner, _ = t.text("owner")
-	t.close("rule", "place", "until", "because", "owner")
-	return w
-}
-
-func (t *table) checkRule(name string) {
-	at := t.valueAt("rule")
-	switch near := nearest(name, t.r.known); {
-	case name == rules.WaiverExpired || name == rules.WaiverUnused:
-		t.r.fail(at, "%s is not waived by another waiver; renew the waiver it speaks of, or delete it", name)
-	case slices.Contains(t.r.known, name):
-	case near != "":
-		t.r.fail(at, "no rule is named %q; did you mean %q?", name, near)
-	default:
-		t.r.fail(at, "no rule is named %q (known: %s)", name, strings.Join(t.r.known, ", "))
-	}
 }

@@ -35,7 +35,7 @@ owner = "M. Okafor"
 
 [[waiver]]
 rule = "sign-jump"
-place = "logs/**"
+place = "logs/{*,*/*}.csv"
 until = 2031-06-30
 because = "recorder of the first season"
 owner = "L. Brandt"
@@ -56,7 +56,7 @@ func TestWaiveMatches(t *testing.T) {
 		finding("axis-not-unit", "config/a.yaml", "cams.left.q"), finding("sign-jump", "log/c.csv", "att"),
 		finding("sign-jump", "../logs/c.csv", "att"),
 	}
-	assert.Empty(t, p.Waive(append(hit, miss...), day("2031-01-01"), everything))
+	assert.Empty(t, p.Waive(append(hit, miss...), Scope{Today: day("2031-01-01"), Covered: everything}))
 	for _, f := range hit {
 		require.NotNil(t, f.Waiver, f.Place.Path)
 		assert.Equal(t, f.Rule, f.Waiver.Rule)
@@ -72,7 +72,7 @@ func TestWaiverEnds(t *testing.T) {
 	p := parse(t, twoWaivers)
 	on := func(today time.Time) (*rules.Finding, []*rules.Finding) {
 		f := finding("rotor-not-unit", "config/a.yaml", "cams.left.q")
-		return f, p.Waive([]*rules.Finding{f, finding("sign-jump", "logs/c.csv", "")}, today, everything)
+		return f, p.Waive([]*rules.Finding{f, finding("sign-jump", "logs/c.csv", "")}, Scope{Today: today, Covered: everything})
 	}
 	f, own := on(day("2031-03-31"))
 	assert.NotNil(t, f.Waiver)
@@ -96,13 +96,13 @@ func TestWaiverEnds(t *testing.T) {
 
 func TestUnusedWaivers(t *testing.T) {
 	p := parse(t, twoWaivers)
-	own := p.Waive(nil, day("2031-01-01"), everything)
+	own := p.Waive(nil, Scope{Today: day("2031-01-01"), Covered: everything})
 	require.Len(t, own, 2)
 	assert.Equal(t, rules.WaiverUnused, own[0].Rule)
 	assert.Equal(t, "the waiver of rotor-not-unit at config/*.yaml#cams.*.q matches no finding", own[0].Message)
 	assert.NotEqual(t, own[0].Fingerprint(), own[1].Fingerprint())
 
-	own = p.Waive(nil, day("2031-05-01"), everything)
+	own = p.Waive(nil, Scope{Today: day("2031-05-01"), Covered: everything})
 	require.Len(t, own, 2)
 	assert.Equal(t, rules.WaiverExpired, own[0].Rule, "expired comes before unused")
 	assert.Equal(t, "delete it", own[0].Remedy)
@@ -115,18 +115,19 @@ func TestPartialRunsCallNothingUnused(t *testing.T) {
 	p := parse(t, twoWaivers+strings.Replace(waiverText("2031-12-31"), "logs/*.csv", "config/one.yaml", 1)+
 		strings.Replace(waiverText("2031-12-31"), "logs/*.csv", "**/x.csv", 1))
 	var asked []string
-	own := p.Waive(nil, day("2031-01-01"), func(path string) bool {
+	own := p.Waive(nil, Scope{Today: day("2031-01-01"), Covered: func(path string) bool {
 		asked = append(asked, path)
 		return path == "logs"
-	})
+	}})
 	assert.Equal(t, []string{"config", "logs", "config/one.yaml", "."}, asked)
-	require.Len(t, own, 1)
+	require.Len(t, own, 2)
 	assert.Equal(t, "dextral.toml:9:1", own[0].Place.String())
+	assert.Equal(t, rules.WaiverTooBroad, own[1].Rule)
 
 	elsewhere, err := Parse("survey/dextral.toml", []byte(twoWaivers), ruleNames())
 	require.NoError(t, err)
 	asked = nil
-	elsewhere.Waive(nil, day("2031-01-01"), func(path string) bool { asked = append(asked, path); return false })
+	elsewhere.Waive(nil, Scope{Today: day("2031-01-01"), Covered: func(path string) bool { asked = append(asked, path); return false }})
 	assert.Equal(t, []string{"survey/config", "survey/logs"}, asked, "relative to where the command was started")
 }
 
@@ -134,7 +135,7 @@ func TestPartialRunsCallNothingUnused(t *testing.T) {
 func TestOverlappingWaivers(t *testing.T) {
 	p := parse(t, waiverText("2030-01-01")+waiverText("2031-12-31")+waiverText("2032-12-31"))
 	f := finding("sign-jump", "logs/a.csv", "")
-	own := p.Waive([]*rules.Finding{f}, day("2031-01-01"), everything)
+	own := p.Waive([]*rules.Finding{f}, Scope{Today: day("2031-01-01"), Covered: everything})
 	require.NotNil(t, f.Waiver)
 	assert.Equal(t, "2031-12-31", f.Waiver.Until, "an expired one does not stand in the way")
 	require.Len(t, own, 1)
@@ -143,6 +144,6 @@ func TestOverlappingWaivers(t *testing.T) {
 
 func TestDefaultPolicyWaivesNothing(t *testing.T) {
 	f := finding("sign-jump", "logs/a.csv", "")
-	assert.Empty(t, Default().Waive([]*rules.Finding{f}, day("2031-01-01"), everything))
+	assert.Empty(t, Default().Waive([]*rules.Finding{f}, Scope{Today: day("2031-01-01"), Covered: everything}))
 	assert.Nil(t, f.Waiver)
 }
