@@ -96,6 +96,15 @@ var catalogue = []Rule{
 // Catalogue lists all rules in the order in which they are documented.
 func Catalogue() []Rule { return slices.Clone(catalogue) }
 
+// Names lists the names of all rules, in the order of Catalogue.
+func Names() []string {
+	names := make([]string, len(catalogue))
+	for i, r := range catalogue {
+		names[i] = r.Name
+	}
+	return names
+}
+
 // Lookup finds a rule by name.
 func Lookup(name string) (Rule, bool) {
 	i := slices.IndexFunc(catalogue, func(r Rule) bool { return r.Name == name })

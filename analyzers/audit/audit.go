@@ -81,6 +81,7 @@ type audit struct {
 	result   *Result
 	tree     *walk.Tree
 	policies map[string]*policy.Policy // by printed path
+	beside   []*policy.Beside
 }
 
 // found is what the readers made of one file.
@@ -90,6 +91,7 @@ type found struct {
 	series   []*rules.Series
 	pairs    []*rules.SeriesPair
 	findings []*rules.Finding // on functions
+	beside   []*policy.Beside // waivers
 	rows     int64
 	skipped  []report.Skipped // unreadable files
 	failures []report.Failure
@@ -153,6 +155,7 @@ func (a *audit) readGo(ctx context.Context, files []gosource.File) (*found, erro
 	a.result.Report.Audited.GoPackages = r.Packages
 	a.result.Report.Audited.GoFiles = r.Files
 	code := &found{kind: goFile, values: r.Values, findings: r.Findings}
+	code.waiversInGo(files)
 	for _, f := range r.Failures {
 		failed := report.Failure{Place: f.Place, Message: f.Err.Error()}
 		if f.Partial {
@@ -173,6 +176,7 @@ func (a *audit) judge(list []*found) {
 		out.Limited = append(out.Limited, f.limited...)
 		out.Unreadable = append(out.Unreadable, f.skipped...)
 		a.count(f)
+		a.beside = append(a.beside, f.beside...)
 		for _, v := range f.values {
 			p := a.policyOf(v.Place.Path)
 			if f.kind != logFile { // a log is declared upon while it is read

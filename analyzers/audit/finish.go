@@ -39,9 +39,7 @@ func (a *audit) finish(o Options) {
 	slices.SortStableFunc(a.result.Values, func(v, w *rules.Value) int { return v.Place.Compare(w.Place) })
 	out.Gate = a.gate(o)
 	out.Sort()
-	for _, p := range a.tree.Policies {
-		out.Findings = append(out.Findings, p.Waive(a.under(p), o.Today, a.covered(o.Paths))...)
-	}
+	a.waive(o)
 	out.Sort()
 }
 
@@ -51,17 +49,6 @@ func (a *audit) value(v *rules.Value) {
 		return
 	}
 	a.result.Report.Audited.Values++
-}
-
-// under lists the findings in files that are judged by p.
-func (a *audit) under(p *policy.Policy) []*rules.Finding {
-	var list []*rules.Finding
-	for _, f := range a.result.Report.Findings {
-		if a.policyOf(f.Place.Path) == p {
-			list = append(list, f)
-		}
-	}
-	return list
 }
 
 // covered returns a test for whether everything at or below a path was

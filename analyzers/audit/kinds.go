@@ -99,6 +99,7 @@ func readConfig(_ context.Context, f walk.File) *found {
 		return failed(configFile, f, err)
 	}
 	result := &found{kind: configFile, values: r.Values}
+	result.waiversIn(r.Waivers)
 	for _, w := range r.Warnings {
 		result.limited = append(result.limited, report.Failure{Place: w.Place, Message: w.Message})
 	}

@@ -30,6 +30,8 @@ func readLog(ctx context.Context, f walk.File, head []byte, r io.Reader) *found 
 	result := &found{kind: logFile, series: read.Channels, pairs: read.Pairs, rows: read.Rows, values: read.Undecided}
 	if len(read.Channels) == 0 && len(read.Undecided) == 0 {
 		result.kind = other
+	} else {
+		result.waiversInHead(f.Path, head)
 	}
 	if read.BadRows > 0 {
 		result.limited = append(result.limited, badRows(f.Path, read))

@@ -27,12 +27,14 @@ import (
 	"dextral/analyzers/config/yamldoc"
 	"dextral/analyzers/source"
 	"dextral/rules"
+	"dextral/rules/policy"
 )
 
 // Result is what a file says about orientations.
 type Result struct {
 	Values   []*rules.Value // in the order in which they stand
 	Warnings []Warning
+	Waivers  []source.Directive // comments that speak to dextral
 }
 
 // Warning is something about a file that is not a finding but that whoever
@@ -149,11 +151,19 @@ func Read(name string, text []byte) (Result, error) {
 	if err != nil {
 		return Result{}, err
 	}
+	waivers := f.Directives(doc.Comments, policy.Addresses)
+	for i, c := range doc.Comments {
+		if policy.Addresses(c.Text) {
+			doc.Comments[i].Text = "" // claims nothing
+		}
+	}
 	var spec specification
 	if format.spec != nil {
 		spec = format.spec(doc)
 	}
 	w := newWalker(doc, spec)
 	w.walk()
-	return w.result(), nil
+	result := w.result()
+	result.Waivers = waivers
+	return result, nil
 }

@@ -120,10 +120,7 @@ func (s *scanned) name(p string) string { return filepath.Join(s.repo.dir, filep
 
 // policies reads every dextral.toml of a version.
 func (s *scanned) policies(ctx context.Context, v *version) error {
-	var names []string
-	for _, r := range rules.Catalogue() {
-		names = append(names, r.Name)
-	}
+	names := rules.Names()
 	for p, e := range v.files {
 		if !slices.Contains(policy.Names, path.Base(p)) || e.mode == symlink {
 			continue
@@ -133,6 +130,9 @@ func (s *scanned) policies(ctx context.Context, v *version) error {
 			return err
 		}
 		read, err := policy.Parse(s.print(p), text, names)
+		if err == nil {
+			err = read.ReadWaivers(names, func(file string) ([]byte, error) { return s.waivers(ctx, v, file) })
+		}
 		if err != nil {
 			v.fail(s.print(p), err)
 			read = policy.Default()
@@ -143,6 +143,16 @@ func (s *scanned) policies(ctx context.Context, v *version) error {
 	slices.SortFunc(v.tree.Policies, func(a, b *policy.Policy) int { return strings.Compare(a.Path, b.Path) })
 	v.known[""] = policy.Default()
 	return nil
+}
+
+// waivers reads a file of waivers, given by its printed path, of a version.
+func (s *scanned) waivers(ctx context.Context, v *version, file string) ([]byte, error) {
+	for p, e := range v.files {
+		if s.print(p) == path.Clean(file) {
+			return s.text(ctx, e)
+		}
+	}
+	return nil, os.ErrNotExist
 }
 
 func (v *version) fail(p string, err error) {

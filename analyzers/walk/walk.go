@@ -57,10 +57,7 @@ func List(ctx context.Context, paths []string) (*Tree, error) {
 	if err != nil {
 		return nil, fmt.Errorf("the working directory is not known: %w", err)
 	}
-	w := walker{dir: dir, seen: map[string]bool{}, scopes: map[string]*policy.Policy{}}
-	for _, r := range rules.Catalogue() {
-		w.known = append(w.known, r.Name)
-	}
+	w := walker{dir: dir, known: rules.Names(), seen: map[string]bool{}, scopes: map[string]*policy.Policy{}}
 	for _, p := range paths {
 		if err := w.root(ctx, p); err != nil {
 			return nil, err

@@ -170,7 +170,11 @@ func result(f *rules.Finding, catalogue []RuleInfo) *sarif.Result {
 }
 
 func suppression(w *rules.Waiver) *sarif.Suppression {
-	return sarif.NewSuppression().WithKind("external").WithStatus("accepted").WithJustification(w.Because).
+	kind := "external"
+	if w.Inline() {
+		kind = "inSource"
+	}
+	return sarif.NewSuppression().WithKind(kind).WithStatus("accepted").WithJustification(w.Because).
 		WithLocation(location(w.At)).
 		WithProperties(bag("until", w.Until, "owner", w.Owner, "place", w.Place))
 }

@@ -87,11 +87,8 @@ type Entry struct {
 	Value *Node
 }
 
-// Comment is a comment, one line of it.
-type Comment struct {
-	Span source.Span // with its marks
-	Text string      // without its marks, trimmed
-}
+// Comment is a comment, or one line of a longer one.
+type Comment = source.Comment
 
 // Document is a file as a tree.
 type Document struct {
