@@ -94,7 +94,7 @@ func TestNestedSheets(t *testing.T) {
 		require.NoError(t, os.MkdirAll(filepath.Dir(filepath.Join(dir, name)), 0o755))
 		require.NoError(t, os.WriteFile(filepath.Join(dir, name), []byte(text), 0o644))
 	}
-	waive := "[[waiver]]\nrule = \"rotor-not-unit\"\nplace = \"**\"\nuntil = 2999-01-01\nbecause = \"bench\"\nowner = \"Oskar\"\n"
+	waive := "[[waiver]]\nrule = \"rotor-not-unit\"\nplace = \"{a,vendored/a}.yaml\"\nuntil = 2999-01-01\nbecause = \"bench\"\nowner = \"Oskar\"\n"
 	bad := "quaternion_wxyz: [0.503, 0.501, 0.499, 0.612]\n"
 	write("dextral.toml", waive)
 	write("a.yaml", bad)
