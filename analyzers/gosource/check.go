@@ -13,6 +13,7 @@ import (
 	"slices"
 	"strings"
 
+	"golang.org/x/tools/go/analysis"
 	"golang.org/x/tools/go/analysis/checker"
 	"golang.org/x/tools/go/packages"
 
@@ -34,11 +35,26 @@ func (l *loader) audit(u *unit) {
 	}()
 	pkg, errs := u.check()
 	l.report(u, pkg, errs)
-	run := passes
-	if pkg.IllTyped {
-		run = passes[:1] // functions are judged by all they call, which is not known here
+	l.analyze(u, pkg, []*analysis.Analyzer{literal.Analyzer})
+	if !pkg.IllTyped { // functions are judged by all they call, which is not known there
+		l.functions(u, pkg)
 	}
-	graph, err := checker.Analyze(run, []*packages.Package{pkg}, &checker.Options{Sequential: true})
+}
+
+// functions judges the functions of a package. A type that is invalid in an imported
+// package only, such as one that does not compile here, makes go/ssa panic; the
+// values of the package are not lost by that.
+func (l *loader) functions(u *unit, pkg *packages.Package) {
+	defer func() {
+		if p := recover(); p != nil {
+			l.fail(l.whole(u.files[0]), errors.New("its functions are not judged: types of what it imports are incomplete"), true)
+		}
+	}()
+	l.analyze(u, pkg, Passes)
+}
+
+func (l *loader) analyze(u *unit, pkg *packages.Package, list []*analysis.Analyzer) {
+	graph, err := checker.Analyze(list, []*packages.Package{pkg}, &checker.Options{Sequential: true})
 	if err != nil {
 		l.fail(l.whole(u.files[0]), err, false)
 		return

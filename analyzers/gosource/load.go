@@ -20,12 +20,8 @@ import (
 	"dextral/rules"
 )
 
-// passes are the analyzers that Load runs over each package: literal for the
-// values that it states, the others for the functions that it defines.
-var passes = append([]*analysis.Analyzer{literal.Analyzer}, Passes...)
-
-// Passes are the analyzers that judge functions. They can be used by any driver of
-// go/analysis.
+// Passes are the analyzers that judge functions, beside literal, which finds the
+// values that a package states. They can be used by any driver of go/analysis.
 var Passes = []*analysis.Analyzer{longway.Analyzer, roundtrip.Analyzer, singular.Analyzer, wrongterm.Analyzer}
 
 // File is one Go source file to audit.
