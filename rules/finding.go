@@ -74,6 +74,7 @@ type Finding struct {
 	Command  string // reproduces the computation; "" if there is none
 	Related  []Related
 	Waiver   *Waiver // not nil: accepted
+	Lapsed   *Waiver // not nil: was accepted until a day that has passed
 }
 
 // Fingerprint identifies the finding across edits elsewhere in the file: it

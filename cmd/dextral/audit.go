@@ -8,6 +8,7 @@ import (
 	"time"
 
 	"dextral/analyzers/audit"
+	"dextral/analyzers/waive"
 	"dextral/rules"
 	"dextral/rules/policy"
 	"dextral/rules/report"
@@ -18,6 +19,7 @@ import (
 
 func auditCommand(s streams) *cobra.Command {
 	var format, gate string
+	var backlog waive.Backlog
 	c := &cobra.Command{
 		Use:   "audit [path ...]",
 		Short: "Audit files and directories (default: the current directory)",
@@ -31,7 +33,8 @@ Exit status: 0 nothing at or above the gate, 1 findings, 2 something that was to
 be audited could not be.`,
 		Example: `  dextral audit
   dextral audit --gate warning calib/ logs/
-  dextral audit --format sarif > dextral.sarif`,
+  dextral audit --format sarif > dextral.sarif
+  dextral audit --waive-all-new backlog.toml --owner "M. Okafor"`,
 		RunE: func(c *cobra.Command, paths []string) error {
 			write, ok := formats[format]
 			if !ok {
@@ -42,6 +45,13 @@ be audited could not be.`,
 				if o.Gate, o.GateSet = policy.ParseGate(gate); !o.GateSet {
 					return fmt.Errorf("--gate %s: the gates are %s", gate, strings.Join(policy.GateNames(), ", "))
 				}
+			}
+			backlog.Paths, backlog.Today = paths, o.Today
+			if done, err := acceptAll(c, backlog); err != nil || done != nil {
+				if done != nil && err == nil {
+					printBacklog(s.out, backlog, done)
+				}
+				return err
 			}
 			r, err := audit.Run(c.Context(), o)
 			if err != nil {
@@ -58,9 +68,31 @@ be audited could not be.`,
 	}
 	c.Flags().StringVar(&format, "format", "text", "output format: "+strings.Join(formatNames, ", "))
 	c.Flags().StringVar(&gate, "gate", "", "mildest level that fails the audit: "+strings.Join(policy.GateNames(), ", ")+" (default: of dextral.toml, or error)")
+	c.Flags().StringVar(&backlog.File, "waive-all-new", "", "print no report; write a waiver for every finding that has none into this file")
+	c.Flags().StringVar(&backlog.Owner, "owner", "", "who answers for these waivers")
+	c.Flags().StringVar(&backlog.Until, "until", "", "their last day, YYYY-MM-DD (default: half a year from today)")
+	c.Flags().StringVar(&backlog.Because, "because", "", "their reason (default: that nobody has looked yet)")
 	_ = c.RegisterFlagCompletionFunc("format", cobra.FixedCompletions(formatNames, cobra.ShellCompDirectiveNoFileComp))
 	_ = c.RegisterFlagCompletionFunc("gate", cobra.FixedCompletions(policy.GateNames(), cobra.ShellCompDirectiveNoFileComp))
 	return c
+}
+
+// acceptAll writes a file of waivers, if one is asked for.
+func acceptAll(c *cobra.Command, b waive.Backlog) (*waive.Written, error) {
+	if b.File != "" {
+		for _, name := range []string{"format", "gate"} {
+			if c.Flags().Changed(name) {
+				return nil, fmt.Errorf("--waive-all-new prints no report, and --%s means nothing beside it", name)
+			}
+		}
+		return waive.All(c.Context(), b)
+	}
+	for _, name := range []string{"owner", "until", "because"} {
+		if c.Flags().Changed(name) {
+			return nil, fmt.Errorf("--%s goes with --waive-all-new", name)
+		}
+	}
+	return nil, nil
 }
 
 // formatNames lists the formats of audit.

@@ -14,11 +14,7 @@ func rulesCommand(s streams) *cobra.Command {
 		Short: "List the rules, or explain one",
 		Args:  cobra.MaximumNArgs(1),
 		ValidArgsFunction: func(*cobra.Command, []string, string) ([]string, cobra.ShellCompDirective) {
-			var names []string
-			for _, r := range rules.Catalogue() {
-				names = append(names, r.Name+"\t"+r.Summary)
-			}
-			return names, cobra.ShellCompDirectiveNoFileComp
+			return ruleCompletions(), cobra.ShellCompDirectiveNoFileComp
 		},
 		RunE: func(_ *cobra.Command, args []string) error {
 			if len(args) == 0 {

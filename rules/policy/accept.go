@@ -46,8 +46,8 @@ func (t *table) accepts(w *rules.Waiver) {
 	w.Owner, _ = t.text("owner")
 }
 
-// onWaivers are the rules about waivers, which no waiver silences.
-var onWaivers = []string{rules.WaiverExpired, rules.WaiverUnused, rules.WaiverTooBroad}
+// OnWaivers are the rules about waivers, which no waiver silences.
+var OnWaivers = []string{rules.WaiverExpired, rules.WaiverUnused, rules.WaiverTooBroad}
 
 func (t *table) checkRule(name string) {
 	if problem := RuleProblem(name, t.r.known); problem != "" {
@@ -58,7 +58,7 @@ func (t *table) checkRule(name string) {
 // RuleProblem says why a waiver cannot name a rule; "" if it can.
 func RuleProblem(name string, known []string) string {
 	switch near := nearest(name, known); {
-	case slices.Contains(onWaivers, name):
+	case slices.Contains(OnWaivers, name):
 		return name + " is not waived by another waiver; renew the waiver it speaks of, or delete it"
 	case slices.Contains(known, name):
 		return ""

@@ -107,7 +107,10 @@ func (u *use) accept(f *rules.Finding, w *rules.Waiver, day string) {
 		u.places = map[string]bool{}
 	}
 	u.places[f.Place.Path+"#"+f.Key] = true
-	if f.Waiver == nil && day <= w.Until {
+	switch {
+	case day > w.Until && f.Lapsed == nil:
+		f.Lapsed = w
+	case day <= w.Until && f.Waiver == nil:
 		f.Waiver = w
 	}
 }
@@ -164,9 +167,9 @@ func unused(w *rules.Waiver) *rules.Finding {
 	return f
 }
 
-// maxPlaces is the most places that one waiver may accept. It is a choice: so
+// MaxPlaces is the most places that one waiver may accept. It is a choice: so
 // many a person can have looked at one by one.
-const maxPlaces = 25
+const MaxPlaces = 25
 
 // tooBroad reports a waiver whose place takes in whole trees, so that it accepts
 // what nobody has seen yet, and one that accepts findings at very many places.
@@ -176,14 +179,32 @@ func (w *waiver) tooBroad(u *use) []*rules.Finding {
 	switch {
 	case w.files.wholeTree():
 		f = onWaiver(rules.WaiverTooBroad, w.Waiver, "takes in whole directories, and with them whatever is written there in future")
-	case n > maxPlaces:
-		f = onWaiver(rules.WaiverTooBroad, w.Waiver, "accepts findings at %d places, more than the %d that somebody can have looked at one by one", n, maxPlaces)
+	case n > MaxPlaces:
+		f = onWaiver(rules.WaiverTooBroad, w.Waiver, "accepts findings at %d places, more than the %d that somebody can have looked at one by one", n, MaxPlaces)
 	default:
 		return nil
 	}
-	f.Evidence = []rules.Evidence{{What: "places that it accepts now", Stated: rules.Words(fmt.Sprintf("%d or fewer", maxPlaces)), Computed: rules.Plain(float64(n))}}
+	f.Evidence = []rules.Evidence{{What: "places that it accepts now", Stated: rules.Words(fmt.Sprintf("%d or fewer", MaxPlaces)), Computed: rules.Plain(float64(n))}}
 	f.Remedy = "write a waiver for each file or key; or, if the tree is not yours, exclude it; or, if a convention is meant, declare it in a [[claim]]"
 	return []*rules.Finding{f}
+}
+
+// TooBroad reports whether a place takes in whole directories, as
+// waiver-too-broad has it.
+func TooBroad(place string) bool {
+	w := waiver{Waiver: &rules.Waiver{Place: place}}
+	return w.parsePlace() == nil && w.files.wholeTree()
+}
+
+// Accepts reports whether a waiver of a rule and place would match a finding, and
+// an error if the place cannot be understood.
+func (p *Policy) Accepts(rule, place string, f *rules.Finding) (bool, error) {
+	w := waiver{Waiver: &rules.Waiver{Rule: rule, Place: place}}
+	if err := w.parsePlace(); err != nil {
+		return false, err
+	}
+	rel, ok := p.rel(f.Place.Path)
+	return ok && w.matches(f, rel), nil
 }
 
 // daysBetween counts days from one YYYY-MM-DD to a later one.
