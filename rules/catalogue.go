@@ -47,6 +47,8 @@ const (
 	ClaimsConflict        = "claims-conflict"
 	SingularPoint         = "singular-point"
 	WrongTerm             = "wrong-term"
+	FunctionMislabelled   = "function-mislabelled"
+	MirroringFunction     = "mirroring-function"
 	LongWayRound          = "long-way-round"
 	RoundTripBroken       = "round-trip-broken"
 	WaiverExpired         = "waiver-expired"
@@ -86,6 +88,8 @@ var catalogue = []Rule{
 	{ClaimsConflict, "Two stated claims about one value contradict each other.", Error},
 	{SingularPoint, "A function on rotations fails where its formula is singular.", Warning},
 	{WrongTerm, "A function nearly computes the operation that it is called, but for a term, a component or a branch.", Error},
+	{FunctionMislabelled, "A function computes another convention than its name, comment or parameters say.", Error},
+	{MirroringFunction, "A function that is to rotate, or to change between right-handed frames, mirrors.", Error},
 	{LongWayRound, "A function of two rotations gives something else for R and -R.", Warning},
 	{RoundTripBroken, "Two conversions that ought to undo each other do not.", Warning},
 	{WaiverExpired, "A waiver has passed its last day.", Warning},

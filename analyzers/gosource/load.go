@@ -14,6 +14,8 @@ import (
 
 	"dextral/analyzers/gosource/literal"
 	"dextral/analyzers/gosource/longway"
+	"dextral/analyzers/gosource/mirror"
+	"dextral/analyzers/gosource/mislabelled"
 	"dextral/analyzers/gosource/roundtrip"
 	"dextral/analyzers/gosource/singular"
 	"dextral/analyzers/gosource/wrongterm"
@@ -22,7 +24,7 @@ import (
 
 // Passes are the analyzers that judge functions, beside literal, which finds the
 // values that a package states. They can be used by any driver of go/analysis.
-var Passes = []*analysis.Analyzer{longway.Analyzer, roundtrip.Analyzer, singular.Analyzer, wrongterm.Analyzer}
+var Passes = []*analysis.Analyzer{longway.Analyzer, roundtrip.Analyzer, singular.Analyzer, wrongterm.Analyzer, mislabelled.Analyzer, mirror.Analyzer}
 
 // File is one Go source file to audit.
 type File struct {

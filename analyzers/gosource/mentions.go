@@ -11,6 +11,7 @@ var cues = map[string]bool{
 	"euler": true, "rpy": true, "ypr": true, "roll": true, "pitch": true, "yaw": true, "heading": true,
 	"attitude": true, "orientation": true, "orient": true, "mount": true, "mounting": true,
 	"extrinsic": true, "extrinsics": true, "pose": true,
+	"ned": true, "enu": true, "frd": true, "flu": true,
 	"axis": true, "triad": true, "rotvec": true, "rodrigues": true, "gibbs": true, "mrp": true,
 }
 

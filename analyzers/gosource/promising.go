@@ -6,12 +6,13 @@ import (
 	"go/parser"
 	"go/token"
 	"os"
+	"slices"
 )
 
 // A package that mentions orientations somewhere may still state none: it is
 // worth type-checking only if a declaration holds numbers and words of
 // orientations together, or numbers and the name of a type whose declaration
-// has such words; or if a function multiplies and has to do with one of either. The
+// has such words; or if a function computes and has to do with one of either. The
 // test errs on the side of admitting.
 
 // text is a parsed file with its source.
@@ -131,7 +132,8 @@ func holdsNumbers(decl ast.Decl) bool {
 	return found
 }
 
-// calculates reports a function that multiplies.
+// calculates reports a function that multiplies, changes a sign or puts numbers
+// that it was given into another order.
 func calculates(decl ast.Decl) bool {
 	f, ok := decl.(*ast.FuncDecl)
 	if !ok || f.Body == nil {
@@ -142,12 +144,29 @@ func calculates(decl ast.Decl) bool {
 		switch n := n.(type) {
 		case *ast.BinaryExpr:
 			found = found || n.Op == token.MUL
+		case *ast.UnaryExpr:
+			found = found || n.Op == token.SUB
 		case *ast.AssignStmt:
 			found = found || n.Tok == token.MUL_ASSIGN
+		case *ast.CompositeLit:
+			found = found || len(n.Elts) > 2 && !slices.ContainsFunc(n.Elts, isNoElement)
 		}
 		return !found
 	})
 	return found
+}
+
+// isNoElement reports an expression that is neither a field nor an element of
+// something.
+func isNoElement(e ast.Expr) bool {
+	if kv, ok := e.(*ast.KeyValueExpr); ok {
+		e = kv.Value
+	}
+	switch e.(type) {
+	case *ast.SelectorExpr, *ast.IndexExpr:
+		return false
+	}
+	return true
 }
 
 func hasNumber(n ast.Node) bool {

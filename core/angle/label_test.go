@@ -310,3 +310,18 @@ func FuzzParseLabel(f *testing.F) {
 		}
 	})
 }
+
+// Listed names the same rotation for all numbers.
+func TestListed(t *testing.T) {
+	n := [3]float64{0.3, -0.7, 1.9}
+	for _, s := range angle.Sequences() {
+		for _, o := range [][3]int{{0, 1, 2}, {2, 1, 0}, {1, 0, 2}} {
+			r := angle.Reading{Seq: s, Order: o}
+			l := r.Listed()
+			assert.Less(t, rotor.Angle(r.Rotor(n), l.Rotor(n)), 1e-14)
+			if o[1] == 1 {
+				assert.Equal(t, [3]int{0, 1, 2}, l.Order)
+			}
+		}
+	}
+}

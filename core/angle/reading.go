@@ -64,6 +64,16 @@ func (r Reading) Canonical() Reading {
 	return r
 }
 
+// Listed is the same reading by the name, of the two that it has, under which the
+// numbers stand in the order of the turns, if there is one: fixed x-y-z instead of
+// moving z-y-x of numbers 3, 2, 1.
+func (r Reading) Listed() Reading {
+	if r.Order == [3]int{2, 1, 0} {
+		r.Seq, r.Order = r.Seq.Twin(), [3]int{0, 1, 2}
+	}
+	return r
+}
+
 // String names the sequence with its kind of axes and, where they are not as
 // expected, the order of the numbers and the direction.
 func (r Reading) String() string {

@@ -138,7 +138,7 @@ func (r Reading) String() string {
 	var parts []string
 	say := func(s string) { parts = append(parts, s) }
 	if r.Angles != nil {
-		say(r.Angles.String())
+		say(r.Angles.Listed().String())
 	}
 	if r.Axis != "" {
 		say("about " + r.Axis)

@@ -63,8 +63,8 @@ func (r *Result) settle() {
 		outlier := slices.ContainsFunc(r.Types, func(t *Type) bool { return slices.Contains(t.Outliers, f) })
 		for _, c := range f.Cases {
 			c.settle(table)
-			if before := c.Identity; !outlier && (!before.Known() || len(before.Readings) > 1) {
-				if f.identifyCase(c); !c.Identity.Known() {
+			if before := c.Identity; !outlier && (!before.Known() || len(before.Readings) > 1 || c.strays()) {
+				if f.identifyCase(c); !c.Identity.Known() && before.Known() && !c.strays() {
 					c.Identity = before
 				}
 			}
@@ -90,4 +90,24 @@ func (l *Layout) settle(table *typeTable) bool {
 		}
 	}
 	return changed
+}
+
+// strays reports whether a case was identified in another storage than is known by
+// now of its operands.
+func (c *Case) strays() bool {
+	if !c.Identity.Known() {
+		return false
+	}
+	at := 0
+	orders := c.Identity.Readings[0].Orders
+	for _, o := range slices.Concat(c.In, c.Out) {
+		if o.Kind != operation.Quaternion {
+			continue
+		}
+		if at < len(orders) && o.Order.Known() && orders[at] != o.Order {
+			return true
+		}
+		at++
+	}
+	return false
 }

@@ -50,6 +50,7 @@ type typeTable struct {
 type vote struct {
 	f      *Function
 	orders []operation.Order
+	weak   bool // a change of signs, which is a conjugate only if it is one for the others
 }
 
 // typesOf finds out what the named types of the package's functions are. Types
@@ -99,7 +100,7 @@ func (t *typeTable) see(f *Function, c *Case, imported func(*types.TypeName) *Ty
 			typ.Rotational = append(typ.Rotational, f)
 		}
 		if o.Kind == operation.Quaternion && !f.Untold(c) {
-			t.votes[typ] = append(t.votes[typ], vote{f, ordersAt(c.Identity.Readings, at-1)})
+			t.votes[typ] = append(t.votes[typ], vote{f, ordersAt(c.Identity.Readings, at-1), !r.Rotational()})
 		}
 		if storage := storageBy(c.Identity); o.Kind != operation.Quaternion && storage != 0 && (typ.Storage == 0 || c.Identity.Is(operation.RotateVector)) {
 			typ.Storage = storage
@@ -164,7 +165,7 @@ func (t *Type) settle(votes []vote) {
 	}
 	t.Orders = slices.DeleteFunc(slices.Clone(t.Orders), func(o operation.Order) bool { return count(o) < most })
 	for _, v := range votes {
-		if !slices.ContainsFunc(v.orders, func(o operation.Order) bool { return slices.Contains(t.Orders, o) }) && !slices.Contains(t.Outliers, v.f) {
+		if !v.weak && !slices.ContainsFunc(v.orders, func(o operation.Order) bool { return slices.Contains(t.Orders, o) }) && !slices.Contains(t.Outliers, v.f) {
 			t.Outliers = append(t.Outliers, v.f)
 		}
 	}

@@ -45,7 +45,7 @@ func FromEuler(roll, pitch, yaw float64) Quat {
 }
 
 // Euler returns roll, pitch and yaw.
-func (q Quat) Euler() (roll, pitch, yaw float64) { // want `round-trip-broken: Quat.Euler does not undo FromEuler: .* deg away; Quat.Euler computes the angles of a rotation, z-y'-x''.*, and FromEuler the rotation of angles, x-y'-z''`
+func (q Quat) Euler() (roll, pitch, yaw float64) { // want `round-trip-broken: Quat.Euler does not undo FromEuler: .* deg away; Quat.Euler computes the angles of a rotation, x-y-z .fixed axes..*, and FromEuler the rotation of angles, x-y'-z''`
 	roll = math.Atan2(2*(q.W*q.X+q.Y*q.Z), 1-2*(q.X*q.X+q.Y*q.Y))
 	pitch = math.Asin(math.Max(-1, math.Min(1, 2*(q.W*q.Y-q.Z*q.X))))
 	yaw = math.Atan2(2*(q.W*q.Z+q.X*q.Y), 1-2*(q.Y*q.Y+q.Z*q.Z))
