@@ -13,6 +13,9 @@ func main() { os.Exit(run()) }
 // run is main with an exit status, so that script tests can call it in their
 // own process.
 func run() int {
+	if vetting(os.Args[1:]) {
+		vet()
+	}
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt)
 	defer stop()
 	return execute(ctx, os.Args[1:], os.Stdin, os.Stdout, os.Stderr)

@@ -107,6 +107,9 @@ func (t *trial) culpritTerms(m *Miss, c candidate, rows []Sample) []Term {
 	if len(t.f.Out) != 1 || t.f.Out[0].Kind != Quaternion || len(m.Components) < 4 || len(rows) < 12 {
 		return nil
 	}
+	if len(t.f.In) == 1 && t.f.In[0].Kind == Quaternion {
+		return nil // all powers of a quaternion have their vector parts in proportion
+	}
 	want := make([]float64, 4)
 	// others is the factor of the components other than k, if they have one.
 	others := func(r *canonical, k int) (float64, bool) {
