@@ -36,7 +36,7 @@ func (l *loader) audit(u *unit) {
 	pkg, errs := u.check()
 	l.report(u, pkg, errs)
 	l.analyze(u, pkg, []*analysis.Analyzer{literal.Analyzer})
-	if !pkg.IllTyped { // functions are judged by all they call, which is not known there
+	if !pkg.IllTyped && !u.judged { // functions are judged by all they call, which is not known there
 		l.functions(u, pkg)
 	}
 }

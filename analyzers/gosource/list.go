@@ -35,6 +35,9 @@ func (l *loader) module(ctx context.Context, folders []*folder) {
 		units = append(units, alone(rest, lib)...)
 	}
 	l.compile(ctx, root, lib, units)
+	if root != "" {
+		l.judgeTogether(ctx, root, units)
+	}
 	l.each(ctx, len(units), func(i int) { l.audit(units[i]) })
 }
 

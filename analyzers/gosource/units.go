@@ -22,6 +22,7 @@ type unit struct {
 	audited map[string]bool   // those of files whose values are wanted
 	imports map[string]string // ids of imported packages by path; nil if the go command did not say
 	library *library
+	judged  bool    // its functions have been judged
 	expects trouble // errors that belong to the way the unit was put together
 }
 
