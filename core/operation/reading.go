@@ -132,6 +132,17 @@ func (r Reading) Rotational() bool {
 	return false
 }
 
+// Directed reports whether an operation with a matrix changes its direction, or the order of
+// its operands, with the storage of the matrix.
+func (op Op) Directed() bool {
+	switch op {
+	case RotateVector, ToMatrix, FromMatrix, FromAngles, AnglesOf, AxisTurn, FromAxisAngle, AxisAngleOf, FromRotvec,
+		RotvecOf, TwoVectors, MatrixProduct, Skew:
+		return true
+	}
+	return false
+}
+
 // String words the reading, without storage orders.
 func (r Reading) String() string {
 	text := string(r.Op)

@@ -29,8 +29,9 @@ var Analyzer = &analysis.Analyzer{
 
 // Result is what the functions of a package compute.
 type Result struct {
-	Funcs    []*Function // in the order of the source
-	Types    []*Type     // named types of four, nine or sixteen numbers that they deal in, by name; also imported ones
+	Funcs    []*Function   // in the order of the source
+	Types    []*Type       // named types of four, nine or sixteen numbers that they deal in, by name; also imported ones
+	Unread   []*lower.Func // declared functions that deal in numbers and could not be evaluated
 	byFunc   map[*types.Func][]*Function
 	imported func(*types.Package) *Meanings
 }
@@ -95,6 +96,7 @@ func run(pass *analysis.Pass) (any, error) {
 	for _, l := range lowered.Funcs {
 		f := newFunction(lowered, l)
 		if f == nil {
+			r.Unread = append(r.Unread, l)
 			continue
 		}
 		r.Funcs = append(r.Funcs, f)
