@@ -71,6 +71,7 @@ type Finding struct {
 	Evidence []Evidence
 	Claim    string // the claim contradicted, in words that do not change with the numbers
 	Remedy   string // what to do; "" where nothing reconciles the numbers
+	Edit     *Edit  // not nil: what to write instead
 	Command  string // reproduces the computation; "" if there is none
 	Related  []Related
 	Waiver   *Waiver // not nil: accepted

@@ -90,6 +90,7 @@ func orthonormal(v *Value, claim Claim, m matrix.Mat3) *Finding {
 	}
 	f.Message += fmt.Sprintf("; against the nearest rotation an axis is off by %s", degrees(worstColumn(m, near)))
 	f.Remedy = "if it was typed or rounded, take it again from its source; if it was computed, normalise it there"
+	f.Edit = v.normalisedMatrix(near, distance)
 	return f
 }
 

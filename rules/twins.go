@@ -132,8 +132,16 @@ func reconciled(first, second, odd *Value, r identify.Result) *Finding {
 	case b && !a:
 		odd = second
 	}
-	return twinFinding(ruleOf[worst], first, second, odd, r, "%s and %s state one orientation; they agree, to %s, only if taken %s; as stated they differ by %s",
+	f := twinFinding(ruleOf[worst], first, second, odd, r, "%s and %s state one orientation; they agree, to %s, only if taken %s; as stated they differ by %s",
 		first.name(), second.name(), degrees(r.Best.Residual), r.Best, degrees(r.Stated.Residual))
+	other := first
+	if odd == first {
+		other = second
+	}
+	if len(r.Best.Changes) == 1 && !r.Best.Tie && !misread(worst, other.Form) {
+		f.Edit = reordered(odd, other, worst)
+	}
+	return f
 }
 
 // misread reports whether a change concerns the reading of values of a form.

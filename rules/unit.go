@@ -49,6 +49,7 @@ func rotorUnit(v *Value) *Finding {
 		f.Message += fmt.Sprintf("; v' = q v q~ scales lengths by %s, and as rotation it can be off by up to %s", digits(n*n), degrees(worstMatrixFormulaExcess(n)))
 	}
 	f.Remedy = "take the numbers again from their source, or divide all four by the norm if they were only rounded"
+	f.Edit = v.normalisedVector(4, n)
 	return f
 }
 
@@ -108,6 +109,7 @@ func axisUnit(v *Value, axis []float64) *Finding {
 		{What: "deviation that the digits written allow", Computed: Plain(allowed)},
 	}
 	f.Remedy = "divide the three numbers by the length"
+	f.Edit = v.normalisedVector(3, n)
 	return f
 }
 

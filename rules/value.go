@@ -35,6 +35,8 @@ type Value struct {
 
 	Uncertainty float64 // declared uncertainty of the orientation in radians; 0 = none declared
 	Double      bool    // declared to carry double precision
+
+	trial bool // made up to judge an edit
 }
 
 // Decided reports whether the value is read as one thing. Rules judge no other.

@@ -21,6 +21,7 @@ import (
 	"time"
 
 	"dextral/analyzers/gosource"
+	"dextral/analyzers/rewrite"
 	"dextral/analyzers/source"
 	"dextral/analyzers/walk"
 	"dextral/rules"
@@ -43,6 +44,8 @@ type Result struct {
 	Values []*rules.Value  // of files and Go packages, in order of place
 	Series []*rules.Series // channels of logs, in order of place
 	Chains []*rules.Chain  // frames and what joins them, file by file, then rig by rig
+
+	Sums map[string]rewrite.Sum // of the texts of files with edits, as they were read
 }
 
 // Run audits. The error is that of the context; everything else that goes wrong
@@ -93,6 +96,7 @@ type found struct {
 	findings []*rules.Finding // on functions
 	beside   []*policy.Beside // waivers
 	rows     int64
+	sum      rewrite.Sum      // of a configuration file
 	skipped  []report.Skipped // unreadable files
 	failures []report.Failure
 	limited  []report.Failure // what was read only in part
@@ -187,7 +191,7 @@ func (a *audit) judge(list []*found) {
 			}
 		}
 		out.Findings = append(out.Findings, f.findings...)
-		out.Findings = append(out.Findings, rules.CheckValues(f.values)...)
+		out.Findings = append(out.Findings, a.edits(f, rules.CheckValues(f.values))...)
 		for _, chain := range chains(f) {
 			a.result.Chains = append(a.result.Chains, chain)
 			out.Findings = append(out.Findings, rules.CheckChain(chain)...)
@@ -211,6 +215,24 @@ func (a *audit) judge(list []*found) {
 			out.Findings = append(out.Findings, rules.CheckChain(rig)...)
 		}
 	}
+}
+
+// edits keeps the edits of findings in configuration files, whose numbers stand in
+// the text as they are, and drops those of others: a number in code may be an
+// expression, and a log is a record.
+func (a *audit) edits(f *found, findings []*rules.Finding) []*rules.Finding {
+	for _, finding := range findings {
+		switch {
+		case f.kind != configFile:
+			finding.Edit = nil
+		case finding.Edit != nil:
+			if a.result.Sums == nil {
+				a.result.Sums = map[string]rewrite.Sum{}
+			}
+			a.result.Sums[finding.Place.Path] = f.sum
+		}
+	}
+	return findings
 }
 
 // policyOf is the policy of a file. Files that were not listed by the walk,

@@ -11,6 +11,7 @@ import (
 	"strings"
 
 	"dextral/analyzers/config"
+	"dextral/analyzers/rewrite"
 	"dextral/analyzers/series"
 	"dextral/analyzers/source"
 	"dextral/analyzers/walk"
@@ -98,7 +99,7 @@ func readConfig(_ context.Context, f walk.File) *found {
 	case err != nil:
 		return failed(configFile, f, err)
 	}
-	result := &found{kind: configFile, values: r.Values}
+	result := &found{kind: configFile, values: r.Values, sum: rewrite.SumOf(text)}
 	result.waiversIn(r.Waivers)
 	for _, w := range r.Warnings {
 		result.limited = append(result.limited, report.Failure{Place: w.Place, Message: w.Message})

@@ -13,7 +13,7 @@ import (
 
 // componentText begins the text of the claim that named components settle the
 // order of a quaternion.
-const componentText = "components "
+const componentText = rules.ComponentText
 
 // part is one entry of a map that is a number, or an axis, of a value.
 type part struct {

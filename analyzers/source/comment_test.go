@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"strings"
 	"testing"
+	"unicode/utf8"
 
 	"github.com/stretchr/testify/assert"
 
@@ -51,4 +52,21 @@ func TestHeadComments(t *testing.T) {
 	}
 	assert.Equal(t, []string{"one", "two"}, texts)
 	assert.Empty(t, source.New("a", nil).HeadComments("#"))
+}
+
+// Offset undoes Position at every code point.
+func TestOffset(t *testing.T) {
+	f := source.New("a", []byte("\ufeffaé\r\n\nq̂ x\xff!\n"))
+	for at := len(source.ByteOrderMark); at <= len(f.Text); at++ {
+		if at < len(f.Text) && !utf8.RuneStart(f.Text[at]) {
+			continue
+		}
+		got, ok := f.Offset(f.Position(at))
+		assert.True(t, ok)
+		assert.Equal(t, at, got)
+	}
+	for _, p := range [][2]int{{0, 1}, {1, 0}, {9, 1}, {1, 9}, {4, 2}} {
+		_, ok := f.Offset(p[0], p[1])
+		assert.False(t, ok, "%v", p)
+	}
 }

@@ -145,6 +145,26 @@ func (f *File) Position(offset int) (line, column int) {
 	return line, f.codePoints(offset) - f.codePoints(f.lines[line-1]) + 1
 }
 
+// Offset is where a line and column, as Position gives them, begin; false if the
+// file has no such place.
+func (f *File) Offset(line, column int) (int, bool) {
+	if line < 1 || line > len(f.lines) || column < 1 {
+		return 0, false
+	}
+	at, end := f.LineSpan(line).From, len(f.Text)
+	if line < len(f.lines) {
+		end = f.lines[line]
+	}
+	for range column - 1 {
+		_, size := utf8.DecodeRune(f.Text[at:end])
+		if size == 0 {
+			return 0, false
+		}
+		at += size
+	}
+	return at, true
+}
+
 // Place is the place of a span.
 func (f *File) Place(s Span) rules.Place {
 	p := rules.Place{Path: f.Path}

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 	"io"
 	"os"
@@ -20,6 +21,7 @@ import (
 func auditCommand(s streams) *cobra.Command {
 	var format, gate string
 	var backlog waive.Backlog
+	var diff, apply bool
 	c := &cobra.Command{
 		Use:   "audit [path ...]",
 		Short: "Audit files and directories (default: the current directory)",
@@ -34,6 +36,7 @@ be audited could not be.`,
 		Example: `  dextral audit
   dextral audit --gate warning calib/ logs/
   dextral audit --format sarif > dextral.sarif
+  dextral audit --diff
   dextral audit --waive-all-new backlog.toml --owner "M. Okafor"`,
 		RunE: func(c *cobra.Command, paths []string) error {
 			write, ok := formats[format]
@@ -57,6 +60,12 @@ be audited could not be.`,
 			if err != nil {
 				return err
 			}
+			switch {
+			case apply:
+				return applyEdits(c.Context(), s, r, o)
+			case diff:
+				return showEdits(s, r)
+			}
 			if err := write(s.out, &r.Report); err != nil {
 				return fmt.Errorf("the report could not be written: %w", err)
 			}
@@ -68,10 +77,13 @@ be audited could not be.`,
 	}
 	c.Flags().StringVar(&format, "format", "text", "output format: "+strings.Join(formatNames, ", "))
 	c.Flags().StringVar(&gate, "gate", "", "mildest level that fails the audit: "+strings.Join(policy.GateNames(), ", ")+" (default: of dextral.toml, or error)")
+	c.Flags().BoolVar(&diff, "diff", false, "print the edits that findings offer as a unified diff instead of the report")
+	c.Flags().BoolVar(&apply, "apply", false, "write the edits that findings offer, audit again and say what changed")
 	c.Flags().StringVar(&backlog.File, "waive-all-new", "", "print no report; write a waiver for every finding that has none into this file")
 	c.Flags().StringVar(&backlog.Owner, "owner", "", "who answers for these waivers")
 	c.Flags().StringVar(&backlog.Until, "until", "", "their last day, YYYY-MM-DD (default: half a year from today)")
 	c.Flags().StringVar(&backlog.Because, "because", "", "their reason (default: that nobody has looked yet)")
+	c.MarkFlagsMutuallyExclusive("format", "diff", "apply", "waive-all-new")
 	_ = c.RegisterFlagCompletionFunc("format", cobra.FixedCompletions(formatNames, cobra.ShellCompDirectiveNoFileComp))
 	_ = c.RegisterFlagCompletionFunc("gate", cobra.FixedCompletions(policy.GateNames(), cobra.ShellCompDirectiveNoFileComp))
 	return c
@@ -80,10 +92,8 @@ be audited could not be.`,
 // acceptAll writes a file of waivers, if one is asked for.
 func acceptAll(c *cobra.Command, b waive.Backlog) (*waive.Written, error) {
 	if b.File != "" {
-		for _, name := range []string{"format", "gate"} {
-			if c.Flags().Changed(name) {
-				return nil, fmt.Errorf("--waive-all-new prints no report, and --%s means nothing beside it", name)
-			}
+		if c.Flags().Changed("gate") {
+			return nil, errors.New("--waive-all-new prints no report, and --gate means nothing beside it")
 		}
 		return waive.All(c.Context(), b)
 	}

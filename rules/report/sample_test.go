@@ -53,6 +53,9 @@ func sample() *Report {
 					{What: "turn by M = 1 + 2 w [u] + 2 [u][u]", Stated: rules.Degrees(31.5 * deg), Computed: rules.Degrees(32.8604 * deg), Residual: rules.Degrees(1.3604 * deg)},
 				},
 				Remedy: "take the numbers again from their source, or divide all four by the norm if they were only rounded",
+				Edit: &rules.Edit{Why: "the numbers are normalised, which stays within the declared uncertainty of 1.5 deg",
+					Was: []string{"0.9831", "0.2773"}, Now: []string{"0.9626", "0.2715"},
+					Replacements: []rules.Replacement{{Place: at("calib/imu.yaml", 7, 16, 6), Old: "0.9831", New: "0.9626"}, {Place: at("calib/imu.yaml", 7, 24, 6), Old: "0.2773", New: "0.2715"}}},
 			},
 			{
 				Rule: rules.MovingFixedSwapped, Level: rules.Error, Place: at("calib/cameras.yaml", 14, 10, 22), Key: "cameras.left.rpy",

@@ -163,10 +163,23 @@ func result(f *rules.Finding, catalogue []RuleInfo) *sarif.Result {
 	for i, r := range f.Related {
 		res.AddRelatedLocation(location(r.Place).WithID(i).WithMessage(sarif.NewTextMessage(r.Message)))
 	}
+	if f.Edit != nil {
+		res.AddFixe(fix(f))
+	}
 	if f.Waiver != nil {
 		res.AddSuppression(suppression(f.Waiver))
 	}
 	return res.WithProperties(bag("claim", f.Claim, "evidence", evidenceRows(f.Evidence), "remedy", f.Remedy, "command", f.Command))
+}
+
+// fix is an edit as replacements in the file of the finding.
+func fix(f *rules.Finding) *sarif.Fix {
+	change := sarif.NewArtifactChange().WithArtifactLocation(sarif.NewSimpleArtifactLocation(uri(f.Place.Path)))
+	for _, r := range f.Edit.Replacements {
+		change.AddReplacement(sarif.NewReplacement().WithDeletedRegion(region(r.Place)).
+			WithInsertedContent(sarif.NewArtifactContent().WithText(r.New)))
+	}
+	return sarif.NewFix().WithDescription(sarif.NewTextMessage(f.Edit.Why)).AddArtifactChange(change)
 }
 
 func suppression(w *rules.Waiver) *sarif.Suppression {
@@ -184,23 +197,27 @@ func suppression(w *rules.Waiver) *sarif.Suppression {
 func location(p rules.Place) *sarif.Location {
 	physical := sarif.NewPhysicalLocation().WithArtifactLocation(sarif.NewSimpleArtifactLocation(uri(p.Path)))
 	if p.Line > 0 {
-		region := sarif.NewRegion().WithStartLine(p.Line)
-		if p.Column > 0 {
-			region.WithStartColumn(p.Column)
-		}
-		if p.EndLine > 0 {
-			region.WithEndLine(p.EndLine)
-		}
-		if p.EndColumn > 0 {
-			region.WithEndColumn(p.EndColumn)
-		}
-		physical.WithRegion(region)
+		physical.WithRegion(region(p))
 	}
 	l := sarif.NewLocationWithPhysicalLocation(physical)
 	if p.Row > 0 {
 		l.WithProperties(bag("row", p.Row, "time", p.Time))
 	}
 	return l
+}
+
+func region(p rules.Place) *sarif.Region {
+	r := sarif.NewRegion().WithStartLine(p.Line)
+	if p.Column > 0 {
+		r.WithStartColumn(p.Column)
+	}
+	if p.EndLine > 0 {
+		r.WithEndLine(p.EndLine)
+	}
+	if p.EndColumn > 0 {
+		r.WithEndColumn(p.EndColumn)
+	}
+	return r
 }
 
 // uri is a path as a URI reference: relative paths stay relative.

@@ -104,7 +104,10 @@ func leftOutText(l LeftOut) string {
 		{l.Ignored, "ignored by version control"}, {l.Excluded, "excluded by dextral.toml"}, {l.Links, "symbolic links"},
 		{l.NotText, "not text"}, {l.Other, "of no format that holds orientations"},
 	} {
-		if c.n > 0 {
+		switch {
+		case c.n == 1:
+			parts = append(parts, "1 "+strings.Replace(c.why, "links", "link", 1))
+		case c.n > 1:
 			parts = append(parts, grouped(c.n)+" "+c.why)
 		}
 	}

@@ -47,6 +47,9 @@ func (p *printer) finding(f *rules.Finding) {
 	if f.Remedy != "" {
 		label(faint, "remedy", clean(f.Remedy))
 	}
+	if f.Edit != nil {
+		label(faint, "edit", clean(f.Edit.Words())+": "+clean(f.Edit.Why)+"; dextral audit --diff shows it, --apply writes it")
+	}
 	if f.Command != "" { // never wrapped: it is to be copied
 		p.line("  " + p.styled(faint, "repeat") + strings.Repeat(" ", labelWidth-len("repeat")) + clean(f.Command))
 	}
