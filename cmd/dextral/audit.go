@@ -1,7 +1,6 @@
 package main
 
 import (
-	"errors"
 	"fmt"
 	"io"
 	"os"
@@ -39,6 +38,9 @@ be audited could not be.`,
   dextral audit --diff
   dextral audit --waive-all-new backlog.toml --owner "M. Okafor"`,
 		RunE: func(c *cobra.Command, paths []string) error {
+			if err := oneOutput(c); err != nil {
+				return err
+			}
 			write, ok := formats[format]
 			if !ok {
 				return fmt.Errorf("--format %s: the formats are %s", format, strings.Join(formatNames, ", "))
@@ -83,18 +85,28 @@ be audited could not be.`,
 	c.Flags().StringVar(&backlog.Owner, "owner", "", "who answers for these waivers")
 	c.Flags().StringVar(&backlog.Until, "until", "", "their last day, YYYY-MM-DD (default: half a year from today)")
 	c.Flags().StringVar(&backlog.Because, "because", "", "their reason (default: that nobody has looked yet)")
-	c.MarkFlagsMutuallyExclusive("format", "diff", "apply", "waive-all-new")
 	_ = c.RegisterFlagCompletionFunc("format", cobra.FixedCompletions(formatNames, cobra.ShellCompDirectiveNoFileComp))
 	_ = c.RegisterFlagCompletionFunc("gate", cobra.FixedCompletions(policy.GateNames(), cobra.ShellCompDirectiveNoFileComp))
 	return c
 }
 
+// oneOutput refuses flags that ask for two outputs.
+func oneOutput(c *cobra.Command) error {
+	var set []string
+	for _, name := range []string{"format", "diff", "apply", "waive-all-new"} {
+		if c.Flags().Changed(name) {
+			set = append(set, "--"+name)
+		}
+	}
+	if len(set) > 1 {
+		return fmt.Errorf("%s ask for different outputs; choose one", strings.Join(set, " and "))
+	}
+	return nil
+}
+
 // acceptAll writes a file of waivers, if one is asked for.
 func acceptAll(c *cobra.Command, b waive.Backlog) (*waive.Written, error) {
 	if b.File != "" {
-		if c.Flags().Changed("gate") {
-			return nil, errors.New("--waive-all-new prints no report, and --gate means nothing beside it")
-		}
 		return waive.All(c.Context(), b)
 	}
 	for _, name := range []string{"owner", "until", "because"} {
