@@ -24,6 +24,10 @@ const (
 	FirstOrderAngles      = "first-order-angles"
 	AxisNotUnit           = "axis-not-unit"
 	MatrixNotOrthonormal  = "matrix-not-orthonormal"
+	FrameOfTwoHands       = "frame-of-two-hands"
+	BottomRowWrong        = "bottom-row-wrong"
+	AngleBeyondTurn       = "angle-beyond-turn"
+	GimbalLocked          = "gimbal-locked"
 	NotFinite             = "not-finite"
 	SignJump              = "sign-jump"
 	NormLoss              = "norm-loss"
@@ -65,6 +69,10 @@ var catalogue = []Rule{
 	{AxisNotUnit, "A vector that claims to be a unit axis is not of unit length.", Error},
 	{MatrixNotOrthonormal, "A matrix that claims to be a rotation is not orthonormal.", Error},
 	{FirstOrderAngles, "A matrix that claims to be a rotation is the identity plus small angles to first order.", Note},
+	{FrameOfTwoHands, "The axes of one frame are stated twice, once right-handed and once left-handed.", Error},
+	{BottomRowWrong, "The last row of a 4x4 that claims to be a rigid transform is not 0 0 0 1.", Error},
+	{AngleBeyondTurn, "An angle stated in radians is several turns, and a round number of degrees.", Warning},
+	{GimbalLocked, "Three angles are at gimbal lock, where only a sum or difference of two is determined.", Note},
 	{NotFinite, "An orientation contains a number that is not finite.", Error},
 	{SignJump, "A logged rotor jumps from R to -R while the rotation barely moves.", Warning},
 	{NormLoss, "A logged quaternion loses its unit norm.", Warning},

@@ -16,7 +16,7 @@ func CheckValues(values []*Value) []*Finding {
 	for _, v := range values {
 		found = append(found, checkOne(v)...)
 	}
-	return append(found, checkTwins(values)...)
+	return append(append(found, twoHands(values)...), checkTwins(values)...)
 }
 
 // checkOne judges a value by itself.
@@ -38,7 +38,9 @@ func checkOne(v *Value) []*Finding {
 	case convention.Rotation:
 		found = add(found, properRotation(v))
 	case convention.Transform:
-		found = add(add(found, properRotation(v)), storedByRows(v))
+		found = add(add(add(found, properRotation(v)), storedByRows(v)), bottomRow(v))
+	case convention.Angles:
+		found = add(add(found, largeAngle(v)), locked(v))
 	case convention.Triad:
 		found = add(found, triadHand(v))
 	case convention.AxisMap:

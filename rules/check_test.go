@@ -271,3 +271,77 @@ func TestFingerprint(t *testing.T) {
 		assert.NotEqual(t, f.Fingerprint(), h.Fingerprint(), fmt.Sprint("change ", i))
 	}
 }
+
+// Whole numbers that stand for parts of one are a unit quaternion, known to half a
+// step: a twin may differ by that and no more.
+func TestQuantised(t *testing.T) {
+	for text, silent := range map[string]bool{
+		"32767 0 0 0": true, "28377 0 16384 0": true, "707 0 707 0": true, "-90 90 0 0": true, "11585 11585 0 0": true,
+		"3 4 0 0": false, "30000 0 0 0": false, "32767.0 0 0 0": false,
+	} {
+		v := value(convention.Quaternion, text, convention.ScalarFirst)
+		assert.Equal(t, silent, len(CheckValues([]*Value{v})) == 0, text)
+	}
+	q := value(convention.Quaternion, "28377 0 16384 0", convention.ScalarFirst) // 60.0 deg about y, rounded
+	near := value(convention.Quaternion, "0.866025 0 0.5 0", convention.ScalarFirst)
+	far := value(convention.Quaternion, "0.866 0 0.4976 0.05", convention.ScalarFirst)
+	assert.Empty(t, CheckValues([]*Value{q, near}))
+	assert.NotEmpty(t, CheckValues([]*Value{q, far}))
+}
+
+func TestZeroAxis(t *testing.T) {
+	zero := value(convention.AxisAngle, "0 0 0 0.5", convention.Radian)
+	assert.Equal(t, "error axis-not-unit", rules(CheckValues([]*Value{zero})))
+	open := value(convention.AxisAngle, "0 0 0 0", convention.Radian)
+	assert.Equal(t, "note orientation-unset", rules(CheckValues([]*Value{open})))
+}
+
+func TestBottomRow(t *testing.T) {
+	const upper = "1.0 0.0 0.0 0.2 0.0 1.0 0.0 0.3 0.0 0.0 1.0 0.4 "
+	for text, want := range map[string]string{
+		upper + "0 0 0 1": "", upper + "0.0 0.0 0.0 1.0": "", upper + "1e-9 0 0 0.9999999": "",
+		"1 0 0 0 0 1 0 0 0 0 1 0 0.2 0.3 0.4 1": "", // for row vectors
+		upper + "0 0 0 2":                       "error bottom-row-wrong",
+		upper + "0 0 0 0":                       "error bottom-row-wrong",
+		upper + "0 0 1 0":                       "error bottom-row-wrong",
+	} {
+		assert.Equal(t, want, rules(CheckValues([]*Value{value(convention.Transform, text)})), text)
+	}
+	assert.Equal(t, "warning bottom-row-wrong", rules(CheckValues([]*Value{inferred(value(convention.Transform, upper+"0 0 0 2"))})))
+}
+
+// Gimbal lock is noted where both outer angles say something, whatever the unit.
+func TestGimbalLock(t *testing.T) {
+	zyx := label(t, "z-y'-x''")
+	for text, want := range map[string]string{"30.0 90.0 20.0": "note gimbal-locked", "30.0 -90.0 20.0": "note gimbal-locked", "30.0 89.9 20.0": "", "30.0 90.0 0.0": "", "90.0 30.0 90.0": ""} {
+		assert.Equal(t, want, rules(CheckValues([]*Value{value(convention.Angles, text, zyx, convention.Degree)})), text)
+	}
+	assert.Equal(t, "note gimbal-locked", rules(CheckValues([]*Value{value(convention.Angles, "0.3 1.570796 0.2", zyx, convention.Radian)})))
+	assert.Empty(t, CheckValues([]*Value{value(convention.Angles, "30.0 90.0 20.0", label(t, "z-x'-z''"), convention.Degree)}))
+}
+
+// Degrees where radians are stated show by their size and by being round; angles that
+// ran on do not.
+func TestLargeAngle(t *testing.T) {
+	xyz := label(t, "x-y-z about fixed axes")
+	for text, want := range map[string]string{"0 90 0": "warning angle-beyond-turn", "0 -45 180": "warning angle-beyond-turn", "0 1.5708 0": "", "0 7.1 0": "", "0 0 5": "", "0 3600 0": "", "10 1.5 0": ""} {
+		assert.Equal(t, want, rules(CheckValues([]*Value{value(convention.Angles, text, xyz, convention.Radian)})), text)
+	}
+	assert.Empty(t, CheckValues([]*Value{value(convention.Angles, "0 720 0", xyz, convention.Degree)}))
+}
+
+// A map between a right-handed and a left-handed frame, as declared, must mirror.
+func TestDeclaredHands(t *testing.T) {
+	declared := func(form convention.Form, text string, hand convention.Hand) *Value {
+		v := value(form, text)
+		v.Claims = append(v.Claims, Claim{Says: hand, Source: Declaration})
+		return v
+	}
+	const plain = "1 0 0 0 1 0 0 0 1"
+	for _, form := range []convention.Form{convention.Rotation, convention.AxisMap} {
+		assert.Empty(t, CheckValues([]*Value{declared(form, mirror, convention.LeftHanded)}))
+		assert.Empty(t, CheckValues([]*Value{declared(form, plain, convention.RightHanded)}))
+		assert.Equal(t, "error mirroring-axis-map", rules(CheckValues([]*Value{declared(form, plain, convention.LeftHanded)})))
+		assert.NotEmpty(t, CheckValues([]*Value{declared(form, mirror, convention.RightHanded)}))
+	}
+}

@@ -27,10 +27,25 @@ func properRotation(v *Value) *Finding {
 	if m == (matrix.Mat3{}) {
 		return unset(v)
 	}
+	if hand, ok := v.Claims.On(convention.OfHand); ok && hand.Source == Declaration && hand.Says == convention.LeftHanded {
+		if m.Det() < 0 {
+			return nil // between frames of different hand, as declared
+		}
+		return notMirrored(v, hand, m)
+	}
 	if m.Det() < 0 {
 		return mirrored(v, claim, m)
 	}
 	return orthonormal(v, claim, m)
+}
+
+// notMirrored judges a map between a right-handed and a left-handed frame, which has
+// to mirror.
+func notMirrored(v *Value, hand Claim, m matrix.Mat3) *Finding {
+	f := finding(MirroringAxisMap, v, hand, "%s maps between two frames of which one is declared left-handed, but its determinant is %.4g: it does not mirror; some direction is off by 180 deg", v.name(), m.Det())
+	f.Evidence = []Evidence{{What: "determinant", Stated: Plain(-1), Computed: Plain(m.Det()), Residual: Plain(m.Det() + 1)}}
+	f.Remedy = "correct the declared axes, or reverse one axis of the map"
+	return f
 }
 
 func mirrored(v *Value, claim Claim, m matrix.Mat3) *Finding {
@@ -179,7 +194,13 @@ func triadHand(v *Value) *Finding {
 // axisMapHand judges a map between the axes of two frames.
 func axisMapHand(v *Value) *Finding {
 	m, ok := v.rotationPart()
-	if !ok || m.Det() >= 0 {
+	if !ok {
+		return nil
+	}
+	if hand, stated := v.Claims.On(convention.OfHand); m.Det() > 0 && stated && hand.Source == Declaration && hand.Says == convention.LeftHanded {
+		return notMirrored(v, hand, m)
+	}
+	if m.Det() >= 0 {
 		return nil
 	}
 	claim, _ := v.FormClaim()

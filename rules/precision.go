@@ -11,6 +11,9 @@ import (
 // rounding.
 func (v *Value) precision() tolerance.Precision {
 	p := precisionOf(v.rotationNumbers())
+	if scale := v.quantum(); scale > 0 {
+		p = tolerance.Quantised(scale)
+	}
 	p.Double, p.Declared = v.Double, v.Uncertainty
 	return p
 }

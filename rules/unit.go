@@ -27,6 +27,9 @@ func rotorUnit(v *Value) *Finding {
 	if n == 0 {
 		return unset(v)
 	}
+	if v.quantum() > 0 {
+		return nil // whole numbers that stand for parts of one
+	}
 	allowed := v.precision().Norm(4, 1)
 	if math.Abs(n-1) <= allowed {
 		return nil
@@ -94,7 +97,7 @@ func axisUnit(v *Value, axis []float64) *Finding {
 	}
 	n := norm(axis)
 	if n == 0 {
-		return unset(v)
+		return zeroAxis(v, claim)
 	}
 	allowed := v.precision().Norm(3, 1)
 	if math.Abs(n-1) <= allowed {
@@ -110,6 +113,20 @@ func axisUnit(v *Value, axis []float64) *Finding {
 	}
 	f.Remedy = "divide the three numbers by the length"
 	f.Edit = v.normalisedVector(3, n)
+	return f
+}
+
+// zeroAxis reports an axis and angle that turns about nothing; a zero axis without
+// a turn, and one alone, is how an axis is left open.
+func zeroAxis(v *Value, claim Claim) *Finding {
+	if v.Form != convention.AxisAngle || v.Numbers[3].Value == 0 {
+		return unset(v)
+	}
+	turn := v.Numbers[3].Value * v.Claims.Unit().InRadians()
+	f := finding(AxisNotUnit, v, claim, "%s claims a turn by %s about an axis, but the axis is zero: a quaternion built on it is (cos a/2, 0, 0, 0), of norm %s",
+		v.name(), v.Numbers[3].Text, digits(math.Abs(math.Cos(turn/2))))
+	f.Evidence = []Evidence{{What: "length", Stated: Plain(1), Computed: Plain(0), Residual: Plain(-1)}}
+	f.Remedy = "write the axis, or an angle of zero"
 	return f
 }
 

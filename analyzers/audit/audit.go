@@ -43,6 +43,7 @@ type Result struct {
 	Report report.Report
 	Values []*rules.Value  // of files and Go packages, in order of place
 	Series []*rules.Series // channels of logs, in order of place
+	Frames []report.Axes   // frames whose axes are declared or stated, in order of place
 	Chains []*rules.Chain  // frames and what joins them, file by file, then rig by rig
 
 	Sums map[string]rewrite.Sum // of the texts of files with edits, as they were read

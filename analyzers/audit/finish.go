@@ -5,6 +5,7 @@ import (
 	"slices"
 	"strings"
 
+	"dextral/core/convention"
 	"dextral/rules"
 	"dextral/rules/policy"
 	"dextral/rules/report"
@@ -37,10 +38,28 @@ func (a *audit) finish(o Options) {
 		a.value(&s.Value)
 	}
 	slices.SortStableFunc(a.result.Values, func(v, w *rules.Value) int { return v.Place.Compare(w.Place) })
+	a.result.Frames = a.frames()
 	out.Gate = a.gate(o)
 	out.Sort()
 	a.waive(o)
 	out.Sort()
+}
+
+// frames lists the frames whose axes are declared or stated, in order of place.
+func (a *audit) frames() []report.Axes {
+	var list []report.Axes
+	for _, p := range a.tree.Policies {
+		for name, f := range p.Frames() {
+			list = append(list, report.Axes{Name: name, Axes: f.Triad.String(), Hand: f.Triad.Handedness(), Place: f.Place})
+		}
+	}
+	for _, v := range a.result.Values {
+		if hand := v.Hand(); hand != convention.HandUnstated && v.Decided() {
+			list = append(list, report.Axes{Name: v.FrameName(), Axes: v.Key, Hand: hand, Place: v.Place})
+		}
+	}
+	slices.SortFunc(list, func(a, b report.Axes) int { return a.Place.Compare(b.Place) })
+	return list
 }
 
 func (a *audit) value(v *rules.Value) {

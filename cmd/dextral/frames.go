@@ -22,7 +22,8 @@ func framesCommand(s streams) *cobra.Command {
 		Long: `Frames prints, file by file and rig by rig, the frames that orientations are stated
 between, each edge with its place and equation, and every loop with its closure
 error. Frames that only a key such as T_cam_imu names are joined within the mapping
-that holds the key.`,
+that holds the key. Frames whose axes are declared in dextral.toml, or stated by a
+triad in a file, come first, with their handedness.`,
 		Example: `  dextral frames calib/
   dextral frames --format dot calib/ | dot -Tsvg > frames.svg`,
 		RunE: func(c *cobra.Command, paths []string) error {
@@ -33,6 +34,11 @@ that holds the key.`,
 			r, err := audit.Run(c.Context(), audit.Options{Paths: paths, Today: time.Now()})
 			if err != nil {
 				return err
+			}
+			if format == "text" {
+				if err := report.FrameAxes(s.out, r.Frames); err != nil {
+					return err
+				}
 			}
 			if err := write(s.out, report.FrameGraphs(r.Chains)); err != nil {
 				return err

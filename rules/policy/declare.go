@@ -3,6 +3,7 @@ package policy
 import (
 	"fmt"
 	"slices"
+	"strconv"
 
 	"dextral/core/angle"
 	"dextral/core/convention"
@@ -14,15 +15,25 @@ type claim struct {
 	files       []glob
 	keys        []keyPattern // none: every value of the files
 	said        rules.Claims
+	direction   *rules.Claim    // with names that the key patterns capture; nil if there are none
 	form        convention.Form // NoForm: not declared
 	uncertainty float64         // radians; 0: not declared
 	double      bool
 	saysDouble  bool
 }
 
-func (c claim) matches(rel, key string) bool {
-	return anyMatches(c.files, rel) && (len(c.keys) == 0 ||
-		slices.ContainsFunc(c.keys, func(k keyPattern) bool { return k.matches(key) }))
+// matches reports whether the claim is about a value, with the names that the key
+// pattern captures.
+func (c claim) matches(rel, key string) (names map[string]string, ok bool) {
+	if !anyMatches(c.files, rel) {
+		return nil, false
+	}
+	for _, k := range c.keys {
+		if names, ok := k.match(key); ok {
+			return names, true
+		}
+	}
+	return nil, len(c.keys) == 0
 }
 
 // Declare adds to a value what the policy says about it. It belongs after all
@@ -44,11 +55,19 @@ func (p *Policy) Declare(v *rules.Value) {
 	}
 	declared := map[convention.Subject]rules.Claim{}
 	for _, c := range p.claims {
-		if !c.matches(rel, v.Key) {
+		names, ok := c.matches(rel, v.Key)
+		if !ok {
 			continue
 		}
 		for _, s := range c.said {
 			declared[s.Says.Subject()] = s
+		}
+		if c.direction != nil {
+			s := *c.direction
+			if d, ok := convention.ParseDirection(fill(s.Text, names)); ok {
+				s.Says, s.Text = d, "direction = "+strconv.Quote(fill(s.Text, names))
+				declared[convention.OfDirection] = s
+			}
 		}
 		if c.uncertainty > 0 {
 			v.Uncertainty = c.uncertainty
@@ -72,6 +91,32 @@ func (p *Policy) Declare(v *rules.Value) {
 			v.Claims = append(v.Claims, c)
 		}
 	}
+	p.declareHand(v)
+}
+
+// declareHand says of a value between two frames whose axes are declared whether it
+// keeps handedness: a map from a right-handed frame to a left-handed one must mirror,
+// any other must not.
+//
+// A triad of a declared frame has the handedness of the declared axes.
+func (p *Policy) declareHand(v *rules.Value) {
+	if f, ok := p.frames[v.FrameName()]; ok && v.Form == convention.Triad {
+		v.Claims = append(v.Claims, rules.Claim{Says: f.Triad.Handedness(), Source: rules.Declaration, Place: f.Place,
+			Text: fmt.Sprintf("%s: %s", v.FrameName(), f.Triad)})
+		return
+	}
+	d := v.Claims.Direction()
+	to, okTo := p.frames[d.To]
+	from, okFrom := p.frames[d.From]
+	if !okTo || !okFrom || !isMatrix(v.Form) || v.Form == convention.Matrix {
+		return
+	}
+	hand := convention.RightHanded
+	if to.Triad.Handedness() != from.Triad.Handedness() {
+		hand = convention.LeftHanded
+	}
+	v.Claims = append(v.Claims, rules.Claim{Says: hand, Source: rules.Declaration, Place: to.Place,
+		Text: fmt.Sprintf("%s: %s, %s: %s", d.To, to.Triad, d.From, from.Triad)})
 }
 
 // named reads a declared sequence again with the names of a value's numbers,

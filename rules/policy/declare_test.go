@@ -214,3 +214,39 @@ func TestDefaultPolicyDeclaresNothing(t *testing.T) {
 	Default().Declare(v)
 	assert.Empty(t, v.Claims)
 }
+
+// Names that a key pattern captures become frames of the direction; declared axes say
+// whether a map between two frames mirrors.
+func TestCapturedNamesAndFrames(t *testing.T) {
+	p, err := Parse("dextral.toml", []byte(`
+[[claim]]
+files = "**"
+keys = "**.T_{to}_{from}"
+direction = "v_{to} = R v_{from}"
+
+[[frame]]
+name = "body"
+axes = "FRD"
+
+[[frame]]
+name = "cam"
+axes = "right down forward"
+
+[[frame]]
+name = "screen"
+axes = "right up forward"
+`), ruleNames())
+	require.NoError(t, err)
+	for key, want := range map[string]string{"rig.T_body_cam": "v_body = R v_cam, right-handed", "T_screen_body": "v_screen = R v_body, left-handed", "rig.T_a_b": "v_a = R v_b", "rig.R_a_b": ""} {
+		v := &rules.Value{Form: convention.Rotation, Key: key, Place: rules.Place{Path: "a.yaml"}, Rows: 3, Cols: 3}
+		p.Declare(v)
+		got := ""
+		if d := v.Claims.Direction(); d.Stated() {
+			got = d.String()
+		}
+		if c, ok := v.Claims.On(convention.OfHand); ok {
+			got += ", " + c.Says.String()
+		}
+		assert.Equal(t, want, got, key)
+	}
+}

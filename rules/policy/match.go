@@ -67,14 +67,28 @@ func (g glob) wholeTree() bool {
 }
 
 // keyPattern matches the dotted path of a value in the structure of its file.
-type keyPattern struct{ exp *regexp.Regexp }
+type keyPattern struct {
+	exp   *regexp.Regexp
+	names []string // that it captures
+}
+
+// captured is a name in braces: a part of an element, as short as may be, that other
+// keys of the table use by that name.
+var captured = regexp.MustCompile(`\{([a-z][a-z0-9]*)\}`)
 
 // parseKeyPattern compiles a pattern: * stands for any part of one element, an
-// element ** for any number of elements, none included. Indices of lists are
-// elements too, written .3 or [3].
+// element ** for any number of elements, none included, and {name} for a part of one
+// element that is given a name. Indices of lists are elements too, written .3 or [3].
 func parseKeyPattern(written string) (keyPattern, error) {
-	if i := strings.IndexAny(written, "{}?"); i >= 0 {
-		return keyPattern{}, fmt.Errorf("contains %q; a key pattern knows only * and **, alternatives are listed one by one", written[i])
+	var k keyPattern
+	for _, m := range captured.FindAllStringSubmatch(written, -1) {
+		if slices.Contains(k.names, m[1]) {
+			return keyPattern{}, fmt.Errorf("names {%s} twice", m[1])
+		}
+		k.names = append(k.names, m[1])
+	}
+	if i := strings.IndexAny(captured.ReplaceAllString(written, ""), "{}?"); i >= 0 {
+		return keyPattern{}, errors.New("contains ? or a brace; a key pattern knows *, ** and {name}, alternatives are listed one by one")
 	}
 	elements := keyElements(written)
 	var exp strings.Builder
@@ -88,7 +102,8 @@ func parseKeyPattern(written string) (keyPattern, error) {
 		case strings.Contains(e, "**"):
 			return keyPattern{}, errors.New("has ** beside other characters; ** is an element of its own")
 		default:
-			exp.WriteString(strings.ReplaceAll(regexp.QuoteMeta(e), `\*`, `[^.]*`) + `\.`)
+			e = strings.ReplaceAll(regexp.QuoteMeta(e), `\*`, `[^.]*`)
+			exp.WriteString(escapedName.ReplaceAllString(e, `(?P<$1>[^.]+?)`) + `\.`)
 		}
 	}
 	exp.WriteString(`\z`)
@@ -96,12 +111,37 @@ func parseKeyPattern(written string) (keyPattern, error) {
 	if err != nil {
 		return keyPattern{}, fmt.Errorf("cannot be compiled: %w", err)
 	}
-	return keyPattern{compiled}, nil
+	k.exp = compiled
+	return k, nil
 }
+
+// escapedName is a captured name after its pattern was quoted for a regular expression.
+var escapedName = regexp.MustCompile(`\\\{([a-z][a-z0-9]*)\\\}`)
 
 // matches reports whether the pattern matches a key.
 func (k keyPattern) matches(key string) bool {
-	return k.exp.MatchString(strings.Join(keyElements(key), ".") + ".")
+	_, ok := k.match(key)
+	return ok
+}
+
+// match reports whether the pattern matches a key, and what its names stand for.
+func (k keyPattern) match(key string) (names map[string]string, ok bool) {
+	found := k.exp.FindStringSubmatch(strings.Join(keyElements(key), ".") + ".")
+	if found == nil {
+		return nil, false
+	}
+	names = map[string]string{}
+	for i, name := range k.exp.SubexpNames() {
+		if name != "" {
+			names[name] = found[i]
+		}
+	}
+	return names, true
+}
+
+// fill puts what was captured in the place of names in braces.
+func fill(text string, names map[string]string) string {
+	return captured.ReplaceAllStringFunc(text, func(m string) string { return names[m[1:len(m)-1]] })
 }
 
 // keyElements splits a key into its elements: a[3].b is a, 3, b.

@@ -33,6 +33,7 @@ type Policy struct {
 	exclude  []glob
 	defaults rules.Claims
 	claims   []claim
+	frames   map[string]Frame // by name
 	rigs     []rig
 	accepted []waiver  // beside Waivers
 	files    []located // files of more waivers, as the sheet names them
@@ -191,6 +192,9 @@ func (p *Policy) Excluded(file string) bool {
 	rel, ok := p.rel(file)
 	return ok && rel != "." && slices.ContainsFunc(p.exclude, func(g glob) bool { return g.covers(rel) })
 }
+
+// Frames are the frames whose axes are declared, by name. They hold in every file.
+func (p *Policy) Frames() map[string]Frame { return p.frames }
 
 // RigOf is the name of the rig to which a file belongs, or "". If several rigs
 // claim it, it belongs to the first one.

@@ -23,9 +23,9 @@ func parse(t *testing.T, text string) *Policy {
 
 func TestErrorsSayWhereAndWhatIsAllowed(t *testing.T) {
 	cases := []struct{ name, text, want string }{
-		{"unknown key", "gates = 'error'", `dextral.toml:1:1: unknown key "gates"; did you mean "gate"? (allowed: claim, defaults, exclude, gate, rig, waiver, waiver_files)`},
-		{"unknown key far from any", "colour = 1", `dextral.toml:1:1: unknown key "colour" (allowed: claim, defaults, exclude, gate, rig, waiver, waiver_files)`},
-		{"unknown table", "[[waivers]]\nrule = 'x'", `dextral.toml:1:3: unknown key "waivers"; did you mean "waiver"? (allowed: claim, defaults, exclude, gate, rig, waiver, waiver_files)`},
+		{"unknown key", "gates = 'error'", `dextral.toml:1:1: unknown key "gates"; did you mean "gate"? (allowed: claim, defaults, exclude, frame, gate, rig, waiver, waiver_files)`},
+		{"unknown key far from any", "colour = 1", `dextral.toml:1:1: unknown key "colour" (allowed: claim, defaults, exclude, frame, gate, rig, waiver, waiver_files)`},
+		{"unknown table", "[[waivers]]\nrule = 'x'", `dextral.toml:1:3: unknown key "waivers"; did you mean "waiver"? (allowed: claim, defaults, exclude, frame, gate, rig, waiver, waiver_files)`},
 		{"column in code points", "[[claim]]\nfiles = ['é/ü', '/z']\nunit = 'deg'", `dextral.toml:2:17: files in [[claim]]: "/z" is absolute; globs are relative to the directory of this file`},
 		{"carriage returns", "gate = 'error'\r\nexclude = 3\r\n", `dextral.toml:2:11: exclude must be a string or an array of strings, not an integer`},
 		{"byte order mark", "\ufeffgate = 'nite'", `dextral.toml:1:8: gate cannot be "nite"; did you mean "note"? (allowed: error, warning, note, never)`},
@@ -46,7 +46,7 @@ func TestErrorsSayWhereAndWhatIsAllowed(t *testing.T) {
 		{"empty glob", "exclude = './'", `dextral.toml:1:11: exclude: "./" is empty; write a path or a glob such as config/**/*.yaml`},
 		{"key pattern", "[[claim]]\nfiles = 'a'\nkeys = 'a..b'\nunit = 'deg'", `dextral.toml:3:8: keys in [[claim]]: "a..b" has an empty element; write elements with one dot between them, such as cameras.*.q`},
 		{"doubled star in an element", "[[claim]]\nfiles = 'a'\nkeys = ['a.b**']\nunit = 'deg'", `dextral.toml:3:9: keys in [[claim]]: "a.b**" has ** beside other characters; ** is an element of its own`},
-		{"alternatives in keys", "[[claim]]\nfiles = 'a'\nkeys = '{a}'\nunit = 'deg'", `dextral.toml:3:8: keys in [[claim]]: "{a}" contains '{'; a key pattern knows only * and **, alternatives are listed one by one`},
+		{"alternatives in keys", "[[claim]]\nfiles = 'a'\nkeys = '{a,b}'\nunit = 'deg'", `dextral.toml:3:8: keys in [[claim]]: "{a,b}" contains ? or a brace; a key pattern knows *, ** and {name}, alternatives are listed one by one`},
 		{"form", "[[claim]]\nfiles = 'a'\nform = 'quat'", `dextral.toml:3:8: form in [[claim]] cannot be "quat"; did you mean "quaternion"? (allowed: quaternion, rotation, transform, angles, rotation-vector, axis-angle, axis, triad, axis-map, matrix)`},
 		{"rotation = true", "[[claim]]\nfiles = 'a'\nrotation = true", `dextral.toml:3:12: rotation in [[claim]] can only be false; to claim a rotation write form = "rotation"`},
 		{"uncertainty", "[[claim]]\nfiles = 'a'\nuncertainty_deg = -0.1", `dextral.toml:3:19: uncertainty_deg in [[claim]] must be above 0 and at most 180 degrees`},

@@ -11,6 +11,7 @@ import (
 
 	"dextral/core/angle"
 	"dextral/core/convention"
+	"dextral/core/frame"
 	"dextral/rules"
 )
 
@@ -50,6 +51,10 @@ func (p *Policy) read(t *table) {
 	}
 	for _, c := range t.many("claim") {
 		p.claims = append(p.claims, c.claim())
+	}
+	p.frames = map[string]Frame{}
+	for _, f := range t.many("frame") {
+		f.frame(p.frames)
 	}
 	for _, g := range t.many("rig") {
 		p.rigs = append(p.rigs, g.rig(p.rigs))
@@ -144,7 +149,9 @@ func (t *table) claim() claim {
 	}
 	c.said = t.conventions()
 	if s, ok := t.text("direction"); ok {
-		if d, ok := convention.ParseDirection(s); ok {
+		if captured.MatchString(s) {
+			t.template(&c, s)
+		} else if d, ok := convention.ParseDirection(s); ok {
 			c.said = append(c.said, t.declares("direction", d))
 		} else {
 			t.r.fail(t.valueAt("direction"), `direction%s must be an equation of coordinates such as "v_body = R v_cam", not %q`, t.within(), s)
@@ -166,6 +173,53 @@ func (t *table) claim() claim {
 	}
 	t.close("files")
 	return c
+}
+
+// template reads a direction with names that every key pattern of the claim
+// captures.
+func (t *table) template(c *claim, s string) {
+	for _, m := range captured.FindAllStringSubmatch(s, -1) {
+		if len(c.keys) == 0 || slices.ContainsFunc(c.keys, func(k keyPattern) bool { return !slices.Contains(k.names, m[1]) }) {
+			t.r.fail(t.valueAt("direction"), `direction%s uses {%s}, which keys must capture, such as keys = "T_{to}_{from}"`, t.within(), m[1])
+			return
+		}
+	}
+	if _, ok := convention.ParseDirection(captured.ReplaceAllString(s, "x$1")); !ok {
+		t.r.fail(t.valueAt("direction"), `direction%s must be an equation of coordinates such as "v_{to} = R v_{from}", not %q`, t.within(), s)
+		return
+	}
+	d := t.declares("direction", nil)
+	d.Text = s
+	c.direction = &d
+}
+
+// Frame is a frame whose axes are declared.
+type Frame struct {
+	Triad frame.Triad
+	Place rules.Place
+}
+
+// frame reads a [[frame]].
+func (t *table) frame(all map[string]Frame) {
+	name, named := t.text("name")
+	axes, stated := t.text("axes")
+	t.close("name", "axes")
+	if !named || !stated {
+		return
+	}
+	if _, twice := all[name]; twice {
+		t.r.fail(t.valueAt("name"), "a frame named %q stands above already", name)
+		return
+	}
+	triad, err := frame.ParseTriad(axes)
+	if err == nil && triad.Hand != convention.HandUnstated && triad.Hand != triad.Handedness() {
+		err = fmt.Errorf("%q are %s axes", axes, triad.Handedness())
+	}
+	if err != nil {
+		t.r.fail(t.valueAt("axes"), `axes%s: %v; write a code such as "FLU", or words such as "forward left up"`, t.within(), err)
+		return
+	}
+	all[name] = Frame{triad, t.at()}
 }
 
 // form reads what the numbers are: form, or rotation = false.

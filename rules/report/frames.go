@@ -7,6 +7,7 @@ import (
 	"strconv"
 	"strings"
 
+	"dextral/core/convention"
 	"dextral/core/identify"
 	"dextral/rules"
 )
@@ -83,6 +84,26 @@ func verdict(l rules.Loop) string {
 		return "cannot be decided: " + l.Result.Reason
 	}
 	return "does not close"
+}
+
+// Axes is a frame whose axes are declared or stated.
+type Axes struct {
+	Name  string
+	Axes  string // in words, or the key that states them
+	Hand  convention.Hand
+	Place rules.Place
+}
+
+// FrameAxes prints the axes of frames for people.
+func FrameAxes(w io.Writer, list []Axes) error {
+	p := newPrinter(w, Options{})
+	for _, a := range list {
+		p.line(fmt.Sprintf("axes      %s: %s, %s  %s", clean(a.Name), clean(a.Axes), a.Hand, clean(a.Place.String())))
+	}
+	if len(list) > 0 {
+		p.line("")
+	}
+	return p.Flush()
 }
 
 // FramesText prints frame graphs for people.
