@@ -21,6 +21,7 @@ import (
 
 	"dextral/analyzers/config/jsondoc"
 	"dextral/analyzers/config/linedoc"
+	"dextral/analyzers/config/sourcedoc"
 	"dextral/analyzers/config/tomldoc"
 	"dextral/analyzers/config/tree"
 	"dextral/analyzers/config/xmldoc"
@@ -49,6 +50,7 @@ type format struct {
 	name string
 	read func(*source.File) (*tree.Document, error)
 	spec func(*tree.Document) specification // for what the format itself fixes; nil for nothing
+	code bool                               // a program, see code.go
 }
 
 // always is for formats with one specification.
@@ -57,34 +59,44 @@ func always(spec specification) func(*tree.Document) specification {
 }
 
 var formats = map[string]format{
-	".yaml":       {"YAML", yamldoc.Read, nil},
-	".yml":        {"YAML", yamldoc.Read, nil},
-	".json":       {"JSON", jsondoc.Read, nil},
-	".jsonc":      {"JSON", jsondoc.Read, nil},
-	".gltf":       {"glTF", jsondoc.Read, always(gltf)},
-	".toml":       {"TOML", tomldoc.Read, nil},
-	".xml":        {"XML", xmldoc.Read, byRoot},
-	".urdf":       {"URDF", xmldoc.Read, byRoot},
-	".xacro":      {"URDF", xmldoc.Read, byRoot},
-	".sdf":        {"SDF", xmldoc.Read, byRoot},
-	".world":      {"SDF", xmldoc.Read, byRoot},
-	".launch":     {"launch file", xmldoc.Read, byRoot},
-	".mjcf":       {"MJCF", xmldoc.Read, byRoot},
-	".ini":        {"INI", linedoc.Sections, nil},
-	".cfg":        {"INI", linedoc.Sections, nil},
-	".conf":       {"INI", linedoc.Sections, nil},
-	".properties": {"properties", linedoc.Sections, nil},
-	".param":      {"parameter file", linedoc.Parameters, always(parameters)},
-	".params":     {"parameter file", linedoc.Parameters, always(parameters)},
-	".parm":       {"parameter file", linedoc.Parameters, always(parameters)},
+	".yaml":       {"YAML", yamldoc.Read, nil, false},
+	".yml":        {"YAML", yamldoc.Read, nil, false},
+	".json":       {"JSON", jsondoc.Read, nil, false},
+	".jsonc":      {"JSON", jsondoc.Read, nil, false},
+	".gltf":       {"glTF", jsondoc.Read, always(gltf), false},
+	".toml":       {"TOML", tomldoc.Read, nil, false},
+	".xml":        {"XML", xmldoc.Read, byRoot, false},
+	".urdf":       {"URDF", xmldoc.Read, byRoot, false},
+	".xacro":      {"URDF", xmldoc.Read, byRoot, false},
+	".sdf":        {"SDF", xmldoc.Read, byRoot, false},
+	".world":      {"SDF", xmldoc.Read, byRoot, false},
+	".launch":     {"launch file", xmldoc.Read, byRoot, false},
+	".mjcf":       {"MJCF", xmldoc.Read, byRoot, false},
+	".ini":        {"INI", linedoc.Sections, nil, false},
+	".cfg":        {"INI", linedoc.Sections, nil, false},
+	".conf":       {"INI", linedoc.Sections, nil, false},
+	".properties": {"properties", linedoc.Sections, nil, false},
+	".param":      {"parameter file", linedoc.Parameters, always(parameters), false},
+	".params":     {"parameter file", linedoc.Parameters, always(parameters), false},
+	".parm":       {"parameter file", linedoc.Parameters, always(parameters), false},
 	".g2o":        graphFormat,
+	".c":          {"C", sourcedoc.Read, nil, true},
+	".h":          {"C", sourcedoc.Read, nil, true},
+	".cc":         {"C++", sourcedoc.Read, nil, true},
+	".cpp":        {"C++", sourcedoc.Read, nil, true},
+	".cxx":        {"C++", sourcedoc.Read, nil, true},
+	".hh":         {"C++", sourcedoc.Read, nil, true},
+	".hpp":        {"C++", sourcedoc.Read, nil, true},
+	".hxx":        {"C++", sourcedoc.Read, nil, true},
+	".py":         {"Python", sourcedoc.Read, nil, true},
+	".m":          {"MATLAB", sourcedoc.Read, nil, true},
 }
 
 // Formats that are told by their first lines.
 var (
-	graphFormat   = format{"pose graph", linedoc.Graph, always(poseGraph)}
-	messageFormat = format{"CCSDS attitude parameter message", linedoc.KeyValue, always(ccsds)}
-	colonFormat   = format{"calibration text", linedoc.Colon, nil}
+	graphFormat   = format{"pose graph", linedoc.Graph, always(poseGraph), false}
+	messageFormat = format{"CCSDS attitude parameter message", linedoc.KeyValue, always(ccsds), false}
+	colonFormat   = format{"calibration text", linedoc.Colon, nil, false}
 )
 
 // Format names the format of a file by its name; "" if the name does not tell,
@@ -140,10 +152,10 @@ func byRoot(d *tree.Document) specification {
 // not returned.
 func Read(name string, text []byte) (Result, error) {
 	f := source.New(name, text)
-	if err := f.CheckText(); err != nil {
+	format := recognise(name, text)
+	if err := f.CheckText(); err != nil && !format.code { // comments of old sources are in many encodings
 		return Result{}, err
 	}
-	format := recognise(name, text)
 	if format.read == nil {
 		return Result{}, f.ErrorAt(source.Span{}, "this format is not read", "give the file the usual ending of its format")
 	}
@@ -162,6 +174,7 @@ func Read(name string, text []byte) (Result, error) {
 		spec = format.spec(doc)
 	}
 	w := newWalker(doc, spec)
+	w.code = format.code
 	w.walk()
 	result := w.result()
 	result.Waivers = waivers

@@ -35,6 +35,10 @@ func (w *walker) meaning(s *spot, shape claims.Shape) reading {
 	if w.nameOf(s).Not != "" {
 		return m
 	}
+	if by, ok := w.madeOf(s, shape); ok {
+		return by
+	}
+	m = w.typed(s, shape, m)
 	r := w.remarks(s)
 	for _, c := range r {
 		if c.Not && shape >= claims.Nine {

@@ -129,6 +129,9 @@ func (w *walker) quaternion(s *spot, parts []part) {
 // typeBeside is the form that a neighbouring key gives: type: quaternion.
 func (w *walker) typeBeside(s *spot) convention.Form {
 	form := convention.NoForm
+	if w.code && w.typeName(s.node.Tag).Orients() {
+		form = convention.Quaternion
+	}
 	w.eachNeighbour(s, func(n claims.Neighbour, _ rules.Claim) {
 		if n.Form != convention.NoForm {
 			form = n.Form

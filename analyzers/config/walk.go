@@ -6,6 +6,7 @@ import (
 	"strconv"
 
 	"dextral/analyzers/claims"
+	"dextral/analyzers/config/sourcedoc"
 	"dextral/analyzers/config/tree"
 	"dextral/analyzers/source"
 	"dextral/core/convention"
@@ -22,6 +23,7 @@ type walker struct {
 	twice    map[*tree.Node]map[source.Span]source.Span
 	members  []member
 	warnings []Warning
+	code     bool // of a program, see code.go
 }
 
 // member is a value found, with what twins are told by.
@@ -65,6 +67,8 @@ func (w *walker) nameOf(s *spot) *claims.Name {
 	case s.name != nil:
 	case s.in == nil:
 		s.name = w.name("", "")
+	case s.node.Tag == sourcedoc.Scope && w.code:
+		s.name = w.nameOfScope(s.key)
 	case s.index >= 0 || s.owner() != s:
 		s.name = w.nameOf(s.in)
 	default:
@@ -240,10 +244,19 @@ func (w *walker) add(s *spot, m reading, v *rules.Value) {
 	if v.Why == "" {
 		v.Why = doubt(v, w.nameOf(s))
 	}
+	if w.code && v.Why == "" {
+		v.Why = w.doubtCode(s, v)
+	}
+	if w.code && initial(v) {
+		return
+	}
 	in := ""
 	if h := s.holder(); h != nil {
 		in = h.path()
 		w.warnTwice(h, s)
+	}
+	if w.apart(s) {
+		in += "/" + v.Place.String()
 	}
 	w.members = append(w.members, member{v, in, w.nameOf(s).Stem})
 }
