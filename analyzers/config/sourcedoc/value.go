@@ -1,6 +1,7 @@
 package sourcedoc
 
 import (
+	"regexp"
 	"strings"
 
 	"dextral/analyzers/config/tree"
@@ -55,6 +56,29 @@ func (s *scanner) number() *tree.Node {
 	return &tree.Node{Span: span, Raw: span, Text: string(s.text[span.From:span.To])}
 }
 
+// expression reads an item that computes a number from others and pi, such as
+// -M_PI/2 or np.deg2rad(30); nil for anything else. Other arithmetic is left out: it
+// mostly is with names whose values are elsewhere.
+func (s *scanner) expression(first int, close string) *tree.Node {
+	s.i = first
+	s.skipItem(close)
+	if s.i == first {
+		return nil
+	}
+	span := s.tokens[first].at.Cover(s.peek(-1).at)
+	text := string(s.text[span.From:span.To])
+	if !angular.MatchString(text) {
+		return nil
+	}
+	if _, ok := tree.Expression(text, nil); !ok {
+		return nil
+	}
+	return &tree.Node{Span: span, Raw: span, Text: text, Expression: true}
+}
+
+// angular is what makes an expression worth reading.
+var angular = regexp.MustCompile(`(?i)\bpi\b|\bm_pi|deg2rad|deg_to_rad|radians|sqrt`)
+
 // ended reports whether a value ends here, and is no operand of something.
 func (s *scanner) ended() bool {
 	t := s.peek(0)
@@ -84,11 +108,14 @@ func (s *scanner) bracketed(depth int) (a arguments, ok bool) {
 			return a, false // of #if and #else both would be taken
 		}
 		key, keyAt := s.key()
+		first := s.i
 		n := s.value(depth + 1)
 		if n == nil || !s.atComma(close) {
+			n = s.expression(first, close)
+		}
+		if n == nil {
 			n = &tree.Node{Span: s.peek(0).at}
 			a.opaque = a.opaque || key == ""
-			s.skipItem(close)
 		}
 		switch {
 		case len(a.items)+len(a.entries) >= maxItems:

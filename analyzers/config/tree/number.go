@@ -1,6 +1,7 @@
 package tree
 
 import (
+	"bytes"
 	"errors"
 	"math"
 	"strconv"
@@ -39,8 +40,9 @@ func Float(text string) (float64, bool) {
 
 // Word is a word of a scalar with its place.
 type Word struct {
-	Text string
-	Span source.Span
+	Text       string
+	Span       source.Span
+	Expression bool // see Node
 }
 
 // isSeparator reports whether a character parts the words of a scalar that
@@ -54,6 +56,9 @@ func (d *Document) Words(n *Node) []Word {
 	if n == nil || n.Kind != Scalar || n.Raw.Empty() {
 		return nil
 	}
+	if n.Expression {
+		return []Word{{d.File.Slice(n.Raw), n.Raw, true}}
+	}
 	var words []Word
 	text := d.File.Text
 	for at := n.Raw.From; at < n.Raw.To; {
@@ -62,18 +67,26 @@ func (d *Document) Words(n *Node) []Word {
 			continue
 		}
 		from := at
+		if d.Names != nil && bytes.HasPrefix(text[at:n.Raw.To], []byte("${")) {
+			if end := bytes.IndexByte(text[at:n.Raw.To], '}'); end > 0 {
+				at += end
+			}
+		}
 		for at < n.Raw.To && !isSeparator(text[at]) {
 			at++
 		}
 		span := source.Span{From: from, To: at}
-		words = append(words, Word{d.File.Slice(span), span})
+		words = append(words, Word{Text: d.File.Slice(span), Span: span})
 	}
 	return words
 }
 
-// NumberIn reads a word that is a number.
+// NumberIn reads a word that is a number, or an expression that has one as value.
 func (d *Document) NumberIn(w Word) (rules.Number, bool) {
 	x, ok := Float(w.Text)
+	if !ok && (w.Expression || strings.HasPrefix(w.Text, "${") && d.Names != nil) {
+		x, ok = Expression(strings.TrimSuffix(strings.TrimPrefix(w.Text, "${"), "}"), d.Names)
+	}
 	if !ok {
 		return rules.Number{}, false
 	}

@@ -69,6 +69,8 @@ type Node struct {
 	Items   []*Node     // List
 	Entries []Entry     // Map, in file order
 
+	Expression bool // Scalar: the words at Raw are a constant expression, see there
+
 	ItemKeys []ItemKey // List: of each item, where the format writes one; nil mostly
 }
 
@@ -96,6 +98,10 @@ type Document struct {
 	Roots      []*Node   // most formats have one
 	Comments   []Comment // in file order
 	UniqueKeys bool      // the format wants every key of a map once
+
+	// Names are what expressions of the form ${...} may use. It is nil if the
+	// format has none.
+	Names map[string]float64
 }
 
 // Get returns the value of the first entry with the key, or nil. It may be

@@ -52,6 +52,7 @@ func Read(f *source.File) (*tree.Document, error) {
 	}
 	r.close(root)
 	r.doc.Roots = []*tree.Node{root.node}
+	r.doc.Names = properties(root.node)
 	return r.doc, nil
 }
 
