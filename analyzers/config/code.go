@@ -57,6 +57,7 @@ var constructors = map[string]made{
 	"Mat_": storedBy(convention.RowMajor, "OpenCV: Mat_ is row by row"), "Matx33d": storedBy(convention.RowMajor, "OpenCV: Matx is row by row"),
 	"Matx33f": storedBy(convention.RowMajor, "OpenCV: Matx is row by row"), "Matx44d": storedBy(convention.RowMajor, "OpenCV: Matx is row by row"),
 	"tf2::Matrix3x3": storedBy(convention.RowMajor, "tf2: Matrix3x3(xx, xy, xz, ...)"), "btMatrix3x3": storedBy(convention.RowMajor, "Bullet: btMatrix3x3(xx, xy, xz, ...)"),
+	"deg2rad": {title: "deg2rad takes degrees", terms: []convention.Term{convention.Degree}}, "radians": {title: "radians takes degrees", terms: []convention.Term{convention.Degree}},
 	"glm::mat3": storedBy(convention.ColumnMajor, "GLM: mat3 is column by column"), "glm::mat4": storedBy(convention.ColumnMajor, "GLM: mat4 is column by column"),
 }
 
@@ -155,6 +156,8 @@ func (w *walker) typed(s *spot, shape claims.Shape, m reading) reading {
 	flat := s.node.Kind == tree.List && s.node.Items[0].Kind == tree.Scalar
 	if known, ok := w.maker(s); ok && known.form == convention.NoForm && flat && (m.Form == convention.Rotation || m.Form == convention.Transform) {
 		m.terms, m.title = known.terms, known.title
+	} else if ok && known.form == convention.NoForm && m.Form == convention.Angles && wants(m.Form, known.terms[0].Subject()) {
+		m.terms, m.title = known.terms, known.title
 	}
 	if m.Form == convention.NoForm {
 		if by := w.typeName(s.node.Tag).Form(shape); by.Why == "" && by.Source == rules.Label {
@@ -195,6 +198,8 @@ func (w *walker) doubtCode(s *spot, v *rules.Value) string {
 	case whole(v):
 		return "they are whole numbers that do not fit: an example, or a pattern"
 	case claim.Source.Stated():
+	case v.Form == convention.Transform && v.Rows == 4 && !lastIsUnit(v.Floats()):
+		return "neither its last row nor its last column is 0 0 0 1, and the name alone does not say that it is a rigid transform"
 	case v.Form == convention.Axis:
 		return "an axis in a program may be scaled further down"
 	case !fits(v, 0.5):

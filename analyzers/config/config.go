@@ -16,6 +16,7 @@ package config
 
 import (
 	"bytes"
+	"fmt"
 	"path"
 	"strings"
 
@@ -158,6 +159,9 @@ func Read(name string, text []byte) (Result, error) {
 	}
 	if format.read == nil {
 		return Result{}, f.ErrorAt(source.Span{}, "this format is not read", "give the file the usual ending of its format")
+	}
+	if format.code && len(text) > sourcedoc.MaxBytes {
+		return Result{Warnings: []Warning{{rules.Place{Path: name}, fmt.Sprintf("sources of more than %d MB are not read; they are tables that a program wrote", sourcedoc.MaxBytes>>20)}}}, nil
 	}
 	doc, err := format.read(f)
 	if err != nil {

@@ -9,7 +9,7 @@ import (
 
 // scanC goes through statements of C and its family.
 func (s *scanner) scanC() {
-	for s.peek(0).kind != end {
+	for s.peek(0).kind != end && !s.tooDeep() {
 		t := s.peek(0)
 		switch {
 		case t.kind == directive:
@@ -162,6 +162,9 @@ type target struct {
 // target reads the tokens up to i as the left side of an assignment.
 func (s *scanner) target(i int) (t target, ok bool) {
 	left := s.tokens[s.start:i]
+	if first := slices.IndexFunc(left, func(t token) bool { return t.is("=") }); first > 0 && left[len(left)-1].kind == name || first > 0 && left[len(left)-1].is("]") {
+		left = slices.Concat(declarator(left[:first]), left[lastComma(left)+1:])
+	}
 	for len(left) > 0 && left[len(left)-1].is("]") {
 		open := len(left) - 1
 		for open > 0 && !left[open].is("[") {
@@ -181,7 +184,7 @@ func (s *scanner) target(i int) (t target, ok bool) {
 		}
 		left = left[:len(left)-2]
 	}
-	floating, whole, isConst := false, false, false
+	isFloat, whole, isConst := false, false, false
 	for i, l := range left {
 		switch {
 		case l.kind != name:
@@ -191,7 +194,7 @@ func (s *scanner) target(i int) (t target, ok bool) {
 			whole, t.declared, t.typed = true, true, l.text
 		case !qualifiers[l.text] && !notTypes[l.text]:
 			t.declared = true
-			floating = floating || l.text == "float" || l.text == "double" || strings.Contains(strings.ToLower(l.text), "real") || strings.HasPrefix(l.text, "float")
+			isFloat = isFloat || floating(l.text)
 			if i > 1 && left[i-1].is("::") {
 				t.typed += "::" + l.text
 			} else if !inTemplate(left, i) {
@@ -199,8 +202,34 @@ func (s *scanner) target(i int) (t target, ok bool) {
 			}
 		}
 	}
-	t.constant = isConst && floating && !whole
+	t.constant = isConst && isFloat && !whole
 	return t, true
+}
+
+// floating reports whether a word is a type of floating numbers.
+func floating(word string) bool {
+	return word == "double" || strings.HasPrefix(word, "float") || strings.Contains(strings.ToLower(word), "real")
+}
+
+// declarator drops the name and the brackets at the end of a declaration.
+func declarator(left []token) []token {
+	for len(left) > 0 && left[len(left)-1].is("]") {
+		for len(left) > 0 && !left[len(left)-1].is("[") {
+			left = left[:len(left)-1]
+		}
+		left = left[:max(0, len(left)-1)]
+	}
+	return left[:max(0, len(left)-1)]
+}
+
+// lastComma is the index of the last comma, or that of the last token.
+func lastComma(left []token) int {
+	for i, t := range slices.Backward(left) {
+		if t.is(",") {
+			return i
+		}
+	}
+	return len(left) - 1
 }
 
 // inTemplate reports whether token i stands behind an open <.

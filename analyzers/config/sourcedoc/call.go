@@ -1,6 +1,8 @@
 package sourcedoc
 
 import (
+	"regexp"
+	"slices"
 	"strings"
 
 	"dextral/analyzers/config/tree"
@@ -62,7 +64,7 @@ func (s *scanner) call(depth int) *tree.Node {
 		return &tree.Node{Span: at, Text: callee}
 	}
 	open := s.peek(0)
-	if !open.is("(") && !(open.is("{") && s.lang == cFamily) {
+	if !open.is("(") && !(open.is("{") && s.lang == cFamily) || !makes(callee) {
 		return nil
 	}
 	a, ok := s.bracketed(depth)
@@ -93,10 +95,28 @@ func (s *scanner) call(depth int) *tree.Node {
 	return s.attached(n)
 }
 
+// makers are functions that keep the numbers they are given; of deg2rad and radians
+// the numbers are the degrees.
+var makers = words("array asarray matrix mat list tuple tensor quaternion quat vec3 vec4 dvec3 dvec4 mat3 mat4 dmat3 dmat4 float3 float4 double3 double4 " +
+	"make_float3 make_float4 make_double3 make_double4 deg2rad radians single double from_quat from_matrix from_dcm from_rotvec from_euler")
+
+// changes is in the names of functions that make something else of their numbers.
+var changes = regexp.MustCompile(`From|To[A-Z]|Inv|Conj|Norm|Transp|Exp|Log|Mult|Compose`)
+
+// makes reports whether a callee keeps its numbers as they are: a type, by its
+// capital letter or its ending, or a function known for it.
+func makes(callee string) bool {
+	last := callee[strings.LastIndexAny(callee, ".:")+1:]
+	if makers[last] || strings.HasSuffix(last, "_t") || strings.HasPrefix(last, "bt") || strings.HasPrefix(last, "ai") {
+		return true
+	}
+	return last != "" && last[0] >= 'A' && last[0] <= 'Z' && !changes.MatchString(last)
+}
+
 // plain reports whether a callee only stores its numbers.
 func plain(callee string) bool {
 	switch callee[strings.LastIndexAny(callee, ".:")+1:] {
-	case "array", "asarray":
+	case "array", "asarray", "list", "tuple":
 		return true
 	}
 	return false
@@ -116,10 +136,14 @@ func (s *scanner) attached(n *tree.Node) *tree.Node {
 			return nil
 		}
 		s.i++
+		from := s.i
 		s.skipItem(")")
 		for s.peek(0).is(",") {
 			s.i++
 			s.skipItem(")")
+		}
+		if slices.ContainsFunc(s.tokens[from:s.i], func(t token) bool { return t.text == "order" }) {
+			return nil
 		}
 		s.i++
 	}

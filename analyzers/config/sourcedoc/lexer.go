@@ -37,7 +37,8 @@ type lexer struct {
 	text     []byte
 	lang     language
 	at       int
-	depth    int // of brackets, inside of which a line of Python ends no statement
+	inside   bool // a directive
+	depth    int  // of brackets, inside of which a line of Python ends no statement
 	tokens   []token
 	comments []tree.Comment
 }
@@ -78,7 +79,7 @@ func (x *lexer) next() {
 		x.at = skipLineEnd(x.text, x.at+1)
 	case x.lang == matlab && x.has("..."):
 		x.at = skipLineEnd(x.text, lineEnd(x.text, x.at))
-	case c == '#' && x.lang == cFamily:
+	case c == '#' && x.lang == cFamily && !x.inside:
 		x.directive()
 	case x.quotes():
 	case isDigit(c) || c == '.' && x.at+1 < len(x.text) && isDigit(x.text[x.at+1]):
@@ -162,7 +163,7 @@ func (x *lexer) block(close string) {
 		to = x.at + 2 + i + len(close)
 	}
 	for at := x.at; at < to; {
-		stop := min(lineEnd(x.text, at), to)
+		stop := lineEnd(x.text[:to], at)
 		first := at
 		for first < stop && (x.text[first] == ' ' || x.text[first] == '\t') {
 			first++
@@ -313,10 +314,10 @@ func (x *lexer) directive() {
 	x.at += bytes.Index(x.text[x.at:to], []byte(words[1])) + len(words[1])
 	x.add(token{kind: directive, at: source.Span{From: x.at - len(words[1]), To: x.at}, text: valueOf + words[1]})
 	depth := x.depth
-	for x.at < to {
+	for x.inside = true; x.at < to; {
 		x.next()
 	}
-	x.depth = depth
+	x.depth, x.inside = depth, false
 	x.add(token{kind: newline, at: source.Span{From: x.at, To: x.at}})
 }
 

@@ -11,7 +11,7 @@ var pythonBlocks = words("def class if elif else for while with try except final
 
 // scanPython goes through the statements of Python.
 func (s *scanner) scanPython() {
-	for s.peek(0).kind != end {
+	for s.peek(0).kind != end && !s.tooDeep() {
 		indent := 0
 		for s.peek(0).kind == newline {
 			indent = s.peek(0).indent
@@ -108,7 +108,7 @@ var (
 
 // scanMatlab goes through the statements of MATLAB and Octave.
 func (s *scanner) scanMatlab() {
-	for s.peek(0).kind != end {
+	for s.peek(0).kind != end && !s.tooDeep() {
 		s.start = s.i
 		t := s.peek(0)
 		switch {
@@ -198,7 +198,23 @@ func (s *scanner) matrix() *tree.Node {
 			if len(row.Items) > 0 && t.glued && !s.peek(-1).is(",") || len(row.Items) == maxNumbers {
 				return nil
 			}
-			row.Items = append(row.Items, s.number())
+			from := s.i
+			item := s.number()
+			if !s.parted() {
+				s.i = from
+				item = s.element()
+			}
+			if item == nil {
+				return nil
+			}
+			row.Items = append(row.Items, item)
+			continue
+		case t.kind == name, t.is("("), t.is("-") && s.peek(1).glued:
+			item := s.element()
+			if item == nil || len(row.Items) == maxNumbers {
+				return nil
+			}
+			row.Items = append(row.Items, item)
 			continue
 		case t.is(","):
 		case t.is(";"), t.kind == newline, t.is("]"):
@@ -230,4 +246,26 @@ func (s *scanner) matrix() *tree.Node {
 		return rows[0]
 	}
 	return &tree.Node{Kind: tree.List, Span: span, Items: rows}
+}
+
+// parted reports whether an item of a matrix ends here.
+func (s *scanner) parted() bool {
+	t := s.peek(0)
+	return !t.glued || t.kind == newline || t.is(",") || t.is(";") || t.is("]")
+}
+
+// element reads an item of a matrix that is computed, such as -pi/2 or deg2rad(30):
+// white space ends it, as it does in MATLAB, unless inside brackets.
+func (s *scanner) element() *tree.Node {
+	first, depth := s.i, 0
+	for ; s.peek(0).kind != newline && s.peek(0).kind != end; s.i++ {
+		if t := s.peek(0); depth == 0 && s.i > first && s.parted() {
+			break
+		} else if t.is("(") {
+			depth++
+		} else if t.is(")") {
+			depth--
+		}
+	}
+	return s.computed(s.tokens[first].at.Cover(s.peek(-1).at))
 }

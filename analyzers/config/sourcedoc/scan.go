@@ -18,9 +18,14 @@ type scanner struct {
 	doc    *tree.Document
 	scopes []scope
 	types  map[string]string // of names declared without a value
-	nodes  int               // added so far
-	spent  int               // see spend
+	keys   map[*tree.Node]map[string]int
+	nodes  int // added so far
+	spent  int // see spend
 }
+
+// tooDeep reports whether more scopes are open than programs have. The rest of the
+// file is left out then.
+func (s *scanner) tooDeep() bool { return len(s.scopes) > tree.MaxDepth/2 }
 
 // scope is a scope that is open.
 type scope struct {
@@ -48,7 +53,7 @@ func (s *scanner) innermost() *tree.Node { return s.scopes[len(s.scopes)-1].node
 func (s *scanner) child(key string) *tree.Node {
 	in := s.innermost()
 	n := &tree.Node{Kind: tree.Map, Tag: Scope, Span: s.peek(0).at}
-	in.Entries = append(in.Entries, tree.Entry{Key: unique(in, key), Value: n})
+	in.Entries = append(in.Entries, tree.Entry{Key: s.unique(in, key), Value: n})
 	return n
 }
 
@@ -62,18 +67,20 @@ func (s *scanner) add(key token, n *tree.Node, typed string) {
 		n.Tag = typed
 	}
 	in := s.innermost()
-	in.Entries = append(in.Entries, tree.Entry{Key: unique(in, key.text), KeyAt: key.at, Value: n})
+	in.Entries = append(in.Entries, tree.Entry{Key: s.unique(in, key.text), KeyAt: key.at, Value: n})
 }
 
 // unique tells entries of one name apart by a number: a name that is assigned to
 // twice stands for two things.
-func unique(in *tree.Node, key string) string {
-	const most = 100 // looked at, so that many of one name cost no more than few
-	found := key
-	for i := 2; in.Get(found) != nil && i < most; i++ {
-		found = key + "#" + strconv.Itoa(i)
+func (s *scanner) unique(in *tree.Node, key string) string {
+	if s.keys[in] == nil {
+		s.keys[in] = map[string]int{}
 	}
-	return found
+	s.keys[in][key]++
+	if n := s.keys[in][key]; n > 1 {
+		return key + "#" + strconv.Itoa(n)
+	}
+	return key
 }
 
 func size(n *tree.Node) int {

@@ -41,6 +41,10 @@ import (
 // Scope is the tag of a map that is a scope and no value.
 const Scope = "scope"
 
+// MaxBytes is the size beyond which a source is not worth reading: a table that a
+// program wrote.
+const MaxBytes = 16 << 20
+
 // language is a family of notations.
 type language uint8
 
@@ -61,7 +65,7 @@ func Read(f *source.File) (*tree.Document, error) {
 	x := lexer{text: f.Text, lang: languageOf(f)}
 	x.run()
 	doc.Comments = x.comments
-	s := &scanner{text: f.Text, lang: x.lang, tokens: x.tokens, doc: doc, types: map[string]string{}}
+	s := &scanner{text: f.Text, lang: x.lang, tokens: x.tokens, doc: doc, types: map[string]string{}, keys: map[*tree.Node]map[string]int{}}
 	s.scopes = []scope{{node: root}}
 	s.scan()
 	prune(root)

@@ -2,6 +2,7 @@ package sourcedoc
 
 import (
 	"regexp"
+	"strconv"
 	"strings"
 
 	"dextral/analyzers/config/tree"
@@ -65,7 +66,15 @@ func (s *scanner) expression(first int, close string) *tree.Node {
 	if s.i == first {
 		return nil
 	}
-	span := s.tokens[first].at.Cover(s.peek(-1).at)
+	return s.computed(s.tokens[first].at.Cover(s.peek(-1).at))
+}
+
+// computed is the expression at a span.
+func (s *scanner) computed(span source.Span) *tree.Node {
+	const longest = 100
+	if span.To-span.From > longest {
+		return nil
+	}
 	text := string(s.text[span.From:span.To])
 	if !angular.MatchString(text) {
 		return nil
@@ -108,6 +117,7 @@ func (s *scanner) bracketed(depth int) (a arguments, ok bool) {
 			return a, false // of #if and #else both would be taken
 		}
 		key, keyAt := s.key()
+		s.position(len(a.items))
 		first := s.i
 		n := s.value(depth + 1)
 		if n == nil || !s.atComma(close) {
@@ -187,9 +197,25 @@ func (s *scanner) key() (string, source.Span) {
 		return t.text, t.at
 	case s.lang == python && t.kind == quoted && s.peek(1).is(":"):
 		s.i += 2
+		if !nameLike.MatchString(t.text) {
+			return "item", t.at // words that explain, or code
+		}
 		return t.text, source.Span{From: min(t.at.From+1, t.at.To), To: max(t.at.From, t.at.To-1)}
 	}
 	return "", source.Span{}
+}
+
+// nameLike is how a key of a dict looks that names its value.
+var nameLike = regexp.MustCompile(`^[\pL\pN_. -]{1,60}$`)
+
+// position passes over the designator of an array's item, [2] =, if the item stands
+// where the designator says.
+func (s *scanner) position(index int) {
+	at := s.peek(1)
+	if s.lang == cFamily && s.peek(0).is("[") && at.kind == number && s.peek(2).is("]") && s.peek(3).is("=") &&
+		string(s.text[at.at.From:at.at.To]) == strconv.Itoa(index) {
+		s.i += 4
+	}
 }
 
 // node makes a list or a map of arguments; nil if they are neither, or hold
@@ -233,6 +259,12 @@ func (s *scanner) parenthesis(depth int) *tree.Node {
 		return n
 	}
 	if s.lang == cFamily {
+		if s.peek(1).kind == name && floating(s.peek(1).text) && s.peek(2).is(")") { // a cast
+			if s.i += 3; s.peek(0).kind == number || s.peek(0).is("-") && s.peek(1).kind == number {
+				return s.number()
+			}
+			return nil
+		}
 		if n, ok := s.compound(depth); ok {
 			return n
 		}
