@@ -249,6 +249,14 @@ func (t *trial) edit(m *Miss, c candidate, rows []Sample) string {
 		if agrees(func(in []float64) { in[i] = -in[i] }) {
 			return "with the sign of " + names[i] + " changed"
 		}
+		if k := t.f.In[operand[i]].Kind; k == Three || k == Scalar {
+			if agrees(func(in []float64) { in[i] /= 2 }) {
+				return "with half of " + names[i]
+			}
+			if agrees(func(in []float64) { in[i] *= 2 }) {
+				return "with twice " + names[i]
+			}
+		}
 		for j := range names {
 			if i != j && agrees(func(in []float64) { in[i] = in[j] }) {
 				return "with " + names[j] + " read where " + names[i] + " stands"

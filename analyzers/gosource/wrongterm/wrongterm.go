@@ -46,6 +46,11 @@ func run(pass *analysis.Pass) (any, error) {
 		}
 	}
 	c := found.In(pass)
+	for _, f := range measured.Funcs {
+		if x := slip(measured, f); x != nil {
+			c.Add(x, f.Decl.Name)
+		}
+	}
 	for _, s := range suspects {
 		if !blamed(s.f, suspects) {
 			c.Add(s.finding(), s.f.Decl.Name)
@@ -106,7 +111,7 @@ func convincing(ask *operation.Function, m *operation.Miss) bool {
 		if m.Multiple() && m.Reading.Op.Anywhere() {
 			return false // a multiple of what is no rotation is as good
 		}
-		return few || len(m.Terms) <= 2*len(m.Components) && wrongTerms(m) < 0.8
+		return few || len(m.Terms) <= 2*len(m.Components) && (wrongTerms(m) < 0.8 || len(m.Terms) < 3)
 	case m.Edit != "", m.Factor != "":
 		return true
 	case m.Share() >= 0.2:
@@ -148,11 +153,7 @@ func (s suspect) finding() *rules.Finding {
 	if condition != "" {
 		what = "for " + condition + " " + what
 	}
-	says := "name"
-	if s.claim.Source == rules.Comment {
-		says = "comment"
-	}
-	message := fmt.Sprintf("%s is not quite the %s that its %s says: %s", key, s.miss.Reading.Op, says, what)
+	message := fmt.Sprintf("%s is not quite the %s that its %s says: %s", key, s.miss.Reading.Op, speaker(s.claim.Source), what)
 	if s.c.Label != "" {
 		message += " (with " + s.c.Label + ")"
 	}

@@ -73,3 +73,22 @@ func (c RGBA) Mul(d RGBA) RGBA { return RGBA{c.R * d.R, c.G * d.G, c.B * d.B, c.
 func Shear(q Quat) Mat {
 	return Mat{{1, q.X, 0}, {0, 1, q.Y}, {0, 0, 1}}
 }
+
+// FromAxisAngle forgets that the angle is halved.
+func FromAxisAngle(axis Vec, angle float64) Quat { // silent: the comment knows
+	s, c := math.Sincos(angle)
+	return Quat{c, axis.X * s, axis.Y * s, axis.Z * s}
+}
+
+// AxisAngleQuat makes a rotation about a unit axis.
+func AxisAngleQuat(axis Vec, angle float64) Quat { // want `AxisAngleQuat is not quite the rotation of axis and angle that its name says: it turns by twice what it is given, in radians`
+	s, c := math.Sincos(angle)
+	return Quat{c, axis.X * s, axis.Y * s, axis.Z * s}
+}
+
+// Derivative is that of q for rates in body axes.
+func Derivative(q Quat, rate Vec) Quat { // want `Derivative is not quite the quaternion derivative that its name says: it turns by twice`
+	return q.product(Quat{0, rate.X, rate.Y, rate.Z})
+}
+
+func (a Quat) product(b Quat) Quat { return Mul(a, b) }
