@@ -38,9 +38,9 @@ func slip(measured *measure.Result, f *measure.Function) *rules.Finding {
 		}
 		return &rules.Finding{
 			Rule: rules.WrongTerm, Level: rules.Error, Key: f.Key(),
-			Message: fmt.Sprintf("%s is not quite the %s that its %s says: it turns by %s what it is given, in %s", f.Label(c), r.Op, speaker(claim.Source), times(r.Scale), unit(r)),
-			Claim:   fmt.Sprintf("%s, by %s %q", r.Op, claim.Source, claim.Word),
-			Remedy:  "a quaternion holds cosine and sine of half the angle, and a rate changes it by half the product: look for the factor that is missing or there twice",
+			Message:  fmt.Sprintf("%s is not quite the %s that its %s says: it turns by %s what it is given, in %s", f.Label(c), r.Op, speaker(claim.Source), times(r.Scale), unit(r)),
+			Claim:    fmt.Sprintf("%s, by %s %q", r.Op, claim.Source, claim.Word),
+			Remedy:   "a quaternion holds cosine and sine of half the angle, and a rate changes it by half the product: look for the factor that is missing or there twice",
 			Evidence: []rules.Evidence{{What: "angle turned, for each given", Stated: rules.Plain(1), Computed: rules.Plain(r.Scale), Residual: rules.Plain(c.Identity.Residual)}},
 		}
 	}
