@@ -35,6 +35,7 @@ be audited could not be.`,
 		Example: `  dextral audit
   dextral audit --gate warning calib/ logs/
   dextral audit --format sarif > dextral.sarif
+  dextral audit --format markdown > audit.md
   dextral audit --diff
   dextral audit --waive-all-new backlog.toml --owner "M. Okafor"`,
 		RunE: func(c *cobra.Command, paths []string) error {
@@ -118,10 +119,15 @@ func acceptAll(c *cobra.Command, b waive.Backlog) (*waive.Written, error) {
 }
 
 // formatNames lists the formats of audit.
-var formatNames = []string{"text", "sarif"}
+var formatNames = []string{"text", "json", "junit", "markdown", "sarif"}
 
 var formats = map[string]func(io.Writer, *report.Report) error{
 	"text": func(w io.Writer, r *report.Report) error { return report.Text(w, r, layout(w)) },
+	"json": func(w io.Writer, r *report.Report) error { return report.JSON(w, r, version()) },
+	"junit": func(w io.Writer, r *report.Report) error {
+		return report.JUnit(w, r, report.RuleInfos(rules.Catalogue()))
+	},
+	"markdown": report.Markdown,
 	"sarif": func(w io.Writer, r *report.Report) error {
 		return report.SARIF(w, r, version(), report.RuleInfos(rules.Catalogue()))
 	},

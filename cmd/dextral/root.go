@@ -68,7 +68,7 @@ contradiction with the numbers that prove it.`,
 		RunE:          func(c *cobra.Command, _ []string) error { return c.Help() },
 	}
 	root.SuggestionsMinimumDistance = 2
-	root.AddCommand(auditCommand(s), readingsCommand(s), framesCommand(s), identifyCommand(s), sheetCommand(s), reviewCommand(s), rulesCommand(s), waiveCommand(s))
+	root.AddCommand(auditCommand(s), readingsCommand(s), framesCommand(s), identifyCommand(s), sheetCommand(s), reviewCommand(s), rulesCommand(s), waiveCommand(s), schemaCommand(s))
 	return root
 }
 

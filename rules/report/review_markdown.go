@@ -78,6 +78,11 @@ func (p *printer) findingLines(list []*rules.Finding) {
 				p.line("  " + strings.ReplaceAll(l, "```", "'''"))
 			}
 			p.line("  ```")
+			if f.Remedy != "" {
+				p.line("")
+				p.line("  Remedy: " + markdown(f.Remedy))
+			}
+			p.line("")
 			p.line("  </details>")
 		}
 	}
