@@ -51,7 +51,7 @@ func kindOf(name string) kind {
 // yet, by extension.
 var unreadConfigs = map[string]string{
 	".aem": "CCSDS attitude ephemeris", ".acm": "CCSDS attitude comprehensive message",
-	".tf": "SPICE frame kernel", ".tk": "SPICE text kernel", ".bvh": "motion capture (BVH)", ".glb": "binary glTF",
+	".bvh": "motion capture (BVH)", ".glb": "binary glTF",
 	".usd": "USD", ".usda": "USD", ".fbx": "FBX", ".dae": "COLLADA",
 }
 

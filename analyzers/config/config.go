@@ -97,6 +97,7 @@ var formats = map[string]format{
 var (
 	graphFormat   = format{"pose graph", linedoc.Graph, always(poseGraph), false}
 	messageFormat = format{"CCSDS attitude parameter message", linedoc.KeyValue, always(ccsds), false}
+	kernelFormat  = format{"SPICE text kernel", linedoc.Kernel, always(spice), false}
 	colonFormat   = format{"calibration text", linedoc.Colon, nil, false}
 )
 
@@ -117,6 +118,8 @@ func recognise(name string, head []byte) format {
 	switch {
 	case bytes.HasPrefix(bytes.TrimLeft(start, " \r\n"), []byte("CCSDS_APM_VERS")):
 		return messageFormat
+	case linedoc.IsKernel(head[:min(len(head), headSize)]):
+		return kernelFormat
 	case linedoc.IsGraph(head):
 		return graphFormat
 	case extension == ".txt" && linedoc.IsColon(head[:min(len(head), headSize)]):

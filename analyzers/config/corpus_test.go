@@ -40,6 +40,7 @@ func TestCorpus(t *testing.T) {
 		"ros_vehicle_launch_static_tf.launch":     {8, 0},
 		"ros_vod_static_tf.launch":                {2, 0},
 		"sdf_rotations_in_quaternions.sdf":        {1, 0},
+		"spice_ctim_v01.frames.fk.tf":             {1, 0},
 		"viam_ur5e.urdf":                          {19, 0},
 	} {
 		t.Run(name, func(t *testing.T) {

@@ -81,9 +81,15 @@ func (d *Document) Words(n *Node) []Word {
 	return words
 }
 
+// fortran is how exponents of double precision are written elsewhere.
+var fortran = strings.NewReplacer("D", "e", "d", "e")
+
 // NumberIn reads a word that is a number, or an expression that has one as value.
 func (d *Document) NumberIn(w Word) (rules.Number, bool) {
 	x, ok := Float(w.Text)
+	if !ok && d.Fortran {
+		x, ok = Float(fortran.Replace(w.Text))
+	}
 	if !ok && (w.Expression || strings.HasPrefix(w.Text, "${") && d.Names != nil) {
 		x, ok = Expression(strings.TrimSuffix(strings.TrimPrefix(w.Text, "${"), "}"), d.Names)
 	}

@@ -99,6 +99,8 @@ type Document struct {
 	Comments   []Comment // in file order
 	UniqueKeys bool      // the format wants every key of a map once
 
+	Fortran bool // exponents may be written with a D
+
 	// Names are what expressions of the form ${...} may use. It is nil if the
 	// format has none.
 	Names map[string]float64
