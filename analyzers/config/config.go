@@ -98,6 +98,7 @@ var (
 	graphFormat   = format{"pose graph", linedoc.Graph, always(poseGraph), false}
 	messageFormat = format{"CCSDS attitude parameter message", linedoc.KeyValue, always(ccsds), false}
 	kernelFormat  = format{"SPICE text kernel", linedoc.Kernel, always(spice), false}
+	sheetFormat   = format{"table by name", linedoc.Sheet, nil, false}
 	colonFormat   = format{"calibration text", linedoc.Colon, nil, false}
 )
 
@@ -122,6 +123,8 @@ func recognise(name string, head []byte) format {
 		return kernelFormat
 	case linedoc.IsGraph(head):
 		return graphFormat
+	case (extension == ".csv" || extension == ".tsv") && isSheet(name, head):
+		return sheetFormat
 	case extension == ".txt" && linedoc.IsColon(head[:min(len(head), headSize)]):
 		return colonFormat
 	}

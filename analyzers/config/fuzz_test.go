@@ -10,7 +10,7 @@ import (
 	"dextral/rules"
 )
 
-var fuzzNames = []string{"m.yaml", "m.json", "m.gltf", "m.toml", "m.xml", "m.ini", "m.param", "m.kvn", "m.g2o", "m.txt", "m.c", "m.py", "m.m", "m.tf"}
+var fuzzNames = []string{"m.yaml", "m.json", "m.gltf", "m.toml", "m.xml", "m.ini", "m.param", "m.kvn", "m.g2o", "m.txt", "m.c", "m.py", "m.m", "m.tf", "m.csv"}
 
 // Laws of Read, for any text in any format: no panic; an error says where and
 // what to do; every number stands where its place says; what is decided has as
@@ -30,6 +30,7 @@ func FuzzRead(f *testing.F) {
 		"[cam]\nR = 1 0 0\n    0 1 0\n    0 0 1\nrpy_deg = [1, 2, 3] ; zyx\n", "AHRS_ORIENTATION,6\n", "R: 1 0 0 0 1 0 0 0 1\nTr_velo_to_cam: 1 0 0 0 0 1 0 0 0 0 1 0\n",
 		"CCSDS_APM_VERS = 2.0\nQUAT_START\nREF_FRAME_A = A\nREF_FRAME_B = B\nQ1 = 0\nQ2 = 0\nQ3 = 0\nQC = 1\nQUAT_STOP\nEULER_START\nREF_FRAME_A = A\nREF_FRAME_B = B\nEULER_ROT_SEQ = ZYX\nANGLE_1 = 1\nANGLE_2 = 2\nANGLE_3 = 3\nEULER_STOP\n",
 		"KPL/FK\n\\begindata\nTKFRAME_1_ANGLES = ( 1.0D0, 2\n 3 )\nTKFRAME_1_ANGLES += 4\nTKFRAME_1_AXES = ( 3, 2, 3 )\nTKFRAME_1_UNITS = 'DEGREES'\nTKFRAME_1_RELATIVE = 'A'\nTKFRAME_1_Q = (1 0 0 0)\n\\begintext\n",
+		"name,roll [deg],pitch [deg],yaw [deg],qw,qx,qy,qz\nnose,1,2,3,1,0,0,0\n\"tail\",4,5,6,0,1,0,0\n",
 		"const double q_nose[4] = {1, 0, 0, 0}; // x y z w\nstruct a m = {.rpy = {M_PI/2, 0, 1}, .R = {{1, 0, 0}, {0, 1, 0}, {0, 0, 1}}};\n",
 		"q = Rotation.from_quat([0, 0, 0, 1]) # scipy\nrpy = np.deg2rad([10, 20, 30])\n", "R = [1 0 0; 0 1 0; 0 0 1];\nq = quaternion(1, 0, 0, 0); % wxyz\n",
 		"{{0\u0cd7},0\u0cd7rpY: [NAN 0 0]}", "VERTEX_SE3:QUAT 0 1 2 3 0 0 0 1\nEDGE3 0 1 1 2 3 4 5 6\n",

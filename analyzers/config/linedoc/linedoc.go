@@ -4,6 +4,7 @@
 //	parameter files       NAME,VALUE and NAME VALUE
 //	calibration text      KEY: numbers
 //	key-value notation    KEY = value [unit], of CCSDS messages
+//	tables by name        a header, and a row for each thing
 //	text kernels          NAME = ( numbers ), of SPICE
 //	pose graphs           EDGE_SE3:QUAT 0 1 numbers
 //

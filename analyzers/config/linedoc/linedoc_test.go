@@ -97,7 +97,7 @@ func TestGraph(t *testing.T) {
 }
 
 func TestBounds(t *testing.T) {
-	for _, read := range []readFunc{Sections, Parameters, Colon, KeyValue, Graph} {
+	for _, read := range []readFunc{Sections, Parameters, Colon, KeyValue, Graph, Kernel, Sheet} {
 		_, err := read(source.New("m", []byte(strings.Repeat("\n", tree.MaxNodes+1))))
 		assert.ErrorContains(t, err, "more than the 1000000 that are read")
 	}
@@ -110,8 +110,40 @@ func TestBounds(t *testing.T) {
 }
 
 // Laws: no panic; places as treetest.Check wants them.
+func TestKernel(t *testing.T) {
+	for name, c := range map[string]struct{ text, want string }{
+		"lines":     {"KPL/FK\nA = 1\n\\begindata\nA = ( 1,\n  2 )\nB = 'x y'\n\\begintext\nC = 1\n\\begindata\nD=( 'x' )\n", "{A:<1,\n  2> B:<x y> D:<x>} #KPL/FK #A = 1 #C = 1"},
+		"appended":  {"\\begindata\nA = 1\nA += ( 2 3 )\nB += 4\n", "{A:[<1> <2 3>] B:<4>}"},
+		"again":     {"\\begindata\nA = 1\nB = 2\nA = 3\n", "{A:<3> B:<2>}"},
+		"not ended": {"\\begindata\nA = ( 1\n2\n", "{A:<( 1\n2>}"},
+	} {
+		t.Run(name, func(t *testing.T) { assert.Equal(t, c.want, outline(t, Kernel, c.text)) })
+	}
+	assert.True(t, IsKernel([]byte("KPL/FK\n")))
+	assert.False(t, IsKernel([]byte("resource \"a\" {\n}\n")))
+}
+
+func TestSheet(t *testing.T) {
+	for name, c := range map[string]struct{ text, want string }{
+		"commas":        {"name,roll [deg],note\nnose, 1.5 ,\"a, b\"\n# off\ntail,2,\n", "{nose:{roll [deg]:<1.5> note:<a, b>} tail:{roll [deg]:<2>}} #off"},
+		"tabs":          {"id\tyaw\tpart\n1\t2\tnose\n1\t3\ttail\n", "{nose:{id:<1> yaw:<2>} tail:{id:<1> yaw:<3>}}"},
+		"semicolons":    {"name;a\nx;1\n", "{x:{a:<1>}}"},
+		"matrix":        {"name,b,R_11,R_12,R_13,R_21,R_22,R_23,R_31,R_32,R_33\na,0,1,2,3,4,5,6,7,8,9\n", "{a:{b:<0> R_11:[<1> <2> <3> <4> <5> <6> <7> <8> <9>]}}"},
+		"times":         {"name,time [s],roll\na,1,2\nb,2,3\n", "{}"},
+		"dates":         {"day,roll\n2031-01-01,2\n2031-01-02,3\n", "{}"},
+		"equal names":   {"state,roll\nok,2\nok,3\n", "{}"},
+		"no header":     {"nose,1\ntail,2\n", "{}"},
+		"no names":      {"roll,yaw\n1,2\n", "{}"},
+		"uneven":        {"name,roll\na,1\nb,1,2\n", "{}"},
+		"only a header": {"name,roll\n", "{}"},
+		"long":          {"name,roll\n" + strings.Repeat("a,1\n", 300), "{}"},
+	} {
+		t.Run(name, func(t *testing.T) { assert.Equal(t, c.want, outline(t, Sheet, c.text)) })
+	}
+}
+
 func FuzzRead(f *testing.F) {
-	for _, text := range []string{"[a]\nb = 1 # c\n  2\n", "A,1\n1\t1\tB\t2\t9\n", "R: 1 2 3\n", "A_START\nB = 1 [deg]\nA_STOP\nCOMMENT x\n", "EDGE_SE3:QUAT 0 1 1 2 3 0 0 0 1\n", "_STOP\n", "\ufeffa:'b'\r\n"} {
+	for _, text := range []string{"[a]\nb = 1 # c\n  2\n", "A,1\n1\t1\tB\t2\t9\n", "R: 1 2 3\n", "A_START\nB = 1 [deg]\nA_STOP\nCOMMENT x\n", "EDGE_SE3:QUAT 0 1 1 2 3 0 0 0 1\n", "_STOP\n", "name,roll [deg],b\na,1,2\nb,\"3\",4\n", "KPL/FK\n\\begindata\nA = ( 1,\n 2 )\nA += 3\nB = 'x'\n\\begintext\n", "\ufeffa:'b'\r\n"} {
 		f.Add([]byte(text))
 	}
 	f.Fuzz(func(t *testing.T, text []byte) {
