@@ -3,7 +3,6 @@ package main
 import (
 	"fmt"
 	"io"
-	"os"
 	"strings"
 	"time"
 
@@ -14,7 +13,6 @@ import (
 	"dextral/rules/report"
 
 	"github.com/spf13/cobra"
-	"golang.org/x/term"
 )
 
 func auditCommand(s streams) *cobra.Command {
@@ -143,18 +141,4 @@ func outcome(r *report.Report) error {
 		return status(exitFindings)
 	}
 	return nil
-}
-
-// layout suits the report to where it goes: a terminal gets its width and, unless
-// NO_COLOR or TERM=dumb say otherwise, colours.
-func layout(w io.Writer) report.Options {
-	f, ok := w.(*os.File)
-	if !ok || !term.IsTerminal(int(f.Fd())) {
-		return report.Options{}
-	}
-	width, _, err := term.GetSize(int(f.Fd()))
-	if err != nil {
-		width = 0
-	}
-	return report.Options{Width: width, Color: os.Getenv("NO_COLOR") == "" && os.Getenv("TERM") != "dumb"}
 }

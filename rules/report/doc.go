@@ -14,6 +14,11 @@
 // from one, and the points of one column stand below each other. Full precision
 // is for the machine formats.
 //
+// On a terminal lines are wrapped below their places; in files and pipes the first
+// line is whole. Of three or more findings with one cause (see cause.go) the first is
+// shown in full. What a file of waivers accepts is counted in the summary, so that a
+// backlog does not hide what is new.
+//
 // All text that comes from audited files is made harmless first: control
 // characters and those that reverse the direction of writing are printed as
 // escapes, so that no file can paint over its own findings.

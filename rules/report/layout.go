@@ -6,14 +6,16 @@ import (
 	"io"
 	"strings"
 	"unicode"
+	"unicode/utf8"
 
 	"github.com/mattn/go-runewidth"
 )
 
 // Options say how text is laid out. The zero value suits files and pipes.
 type Options struct {
-	Width int  // wrap explanations at this width; 0: never. First lines and tables are never wrapped
+	Width int  // wrap at this width; 0: never. Tables are folded as far as they can be, commands never
 	Color bool // use ANSI colours
+	ASCII bool // print other characters as escapes
 }
 
 // ANSI styles.
@@ -33,6 +35,30 @@ type printer struct {
 }
 
 func newPrinter(w io.Writer, o Options) *printer { return &printer{bufio.NewWriter(w), o} }
+
+// WriteString writes text, for terminals that show nothing but ASCII with other
+// characters as Go would escape them. Columns behind such a one are shifted.
+func (p *printer) WriteString(s string) (int, error) {
+	if p.o.ASCII {
+		s = ascii(s)
+	}
+	return p.Writer.WriteString(s)
+}
+
+func ascii(s string) string {
+	var b strings.Builder
+	for _, r := range s {
+		switch {
+		case r < utf8.RuneSelf:
+			b.WriteRune(r)
+		case r < 0x10000:
+			fmt.Fprintf(&b, `\u%04x`, r)
+		default:
+			fmt.Fprintf(&b, `\U%08x`, r)
+		}
+	}
+	return b.String()
+}
 
 func (p *printer) line(s string) {
 	p.WriteString(s)

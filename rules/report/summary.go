@@ -4,6 +4,7 @@ import (
 	"cmp"
 	"fmt"
 	"io"
+	"maps"
 	"slices"
 	"strings"
 
@@ -27,6 +28,9 @@ func (p *printer) summary(r *Report) {
 		found += "; waived: " + grouped(t.Waived)
 	}
 	p.section("found", found)
+	for _, text := range backlogText(r) {
+		p.section("waived", text)
+	}
 	p.section("gate", gateText(r))
 	if n := len(r.Undecided); n > 0 {
 		p.section("undecided", plural(n, "value")+"; dextral readings lists them all")
@@ -82,6 +86,43 @@ func auditedText(c Counts) string {
 		holding += ", " + plural(c.LogRows, "log row")
 	}
 	return strings.Join(parts, " and ") + " with " + holding
+}
+
+// backlogText counts what each file of waivers accepts, by rule.
+func backlogText(r *Report) []string {
+	var texts []string
+	type backlog struct {
+		n     int
+		first string // the day on which the first waiver ends
+	}
+	files := map[string]*backlog{}
+	byRule := map[string]map[string]int{}
+	for _, f := range r.Findings {
+		w := f.Waiver
+		if w == nil || !w.InFile {
+			continue
+		}
+		b := files[w.At.Path]
+		if b == nil {
+			b = &backlog{first: w.Until}
+			files[w.At.Path], byRule[w.At.Path] = b, map[string]int{}
+		}
+		b.n++
+		b.first = min(b.first, w.Until)
+		byRule[w.At.Path][f.Rule]++
+	}
+	for _, file := range slices.Sorted(maps.Keys(files)) {
+		counts := byRule[file]
+		names := slices.SortedFunc(maps.Keys(counts), func(a, b string) int {
+			return cmp.Or(cmp.Compare(counts[b], counts[a]), strings.Compare(a, b))
+		})
+		var parts []string
+		for _, name := range names {
+			parts = append(parts, fmt.Sprintf("%s %s", grouped(counts[name]), name))
+		}
+		texts = append(texts, fmt.Sprintf("%s by %s, the first until %s: %s", grouped(files[file].n), clean(file), files[file].first, strings.Join(parts, ", ")))
+	}
+	return texts
 }
 
 func gateText(r *Report) string {

@@ -15,18 +15,20 @@ type cell struct {
 	number      bool
 }
 
-// maxWords and maxWhat bound the columns of words; longer ones are folded.
+// maxWords and maxWhat bound the columns of words; longer ones are folded. Where
+// the table is too wide, columns are folded down to minWords.
 const (
 	maxWords = 40
+	minWords = 24
 	maxWhat  = 52
 )
 
-func cellOf(q rules.Quantity, text func(rules.Quantity) string) cell {
+func cellOf(q rules.Quantity, words int, text func(rules.Quantity) string) cell {
 	switch {
 	case !q.Known:
 		return cell{}
 	case q.Text != "":
-		return cell{words: wrap(clean(q.Text), maxWords, true)}
+		return cell{words: wrap(clean(q.Text), words, true)}
 	}
 	s := text(q)
 	c := cell{whole: s, number: true}
@@ -89,22 +91,13 @@ func (c column) entry(row, line int) string {
 // have content. The first column of the heading is named evidence; its words
 // are folded so that the table keeps to a width, if one is given and it can.
 func evidence(rows []rules.Evidence, limit int) []string {
-	var stated, computed, residual []cell
-	for _, r := range rows {
-		stated = append(stated, cellOf(r.Stated, statedText))
-		computed = append(computed, cellOf(r.Computed, func(q rules.Quantity) string { return computedText(q, r.Stated) }))
-		residual = append(residual, cellOf(r.Residual, residualText))
+	columns, taken := columnsOf(rows, maxWords)
+	for words := maxWords - 4; limit > 0 && limit-taken < minimum+4 && words >= minWords; words -= 4 {
+		columns, taken = columnsOf(rows, words)
 	}
-	var columns []column
 	room := maxWhat + 2
-	for _, c := range []column{newColumn("stated", stated), newColumn("computed", computed), newColumn("residual", residual)} {
-		if !c.empty() {
-			columns = append(columns, c)
-			limit -= c.wide + 2
-		}
-	}
 	if limit > 0 {
-		room = min(room, limit)
+		room = min(room, limit-taken)
 	}
 	whats, what := labels(rows, room)
 	heading := pad("evidence", what)
@@ -129,6 +122,24 @@ func evidence(rows []rules.Evidence, limit int) []string {
 		table[i] = strings.TrimRight(table[i], " ")
 	}
 	return table
+}
+
+// columnsOf are the columns that have content, with words folded at a width, and
+// how wide they are together.
+func columnsOf(rows []rules.Evidence, words int) (columns []column, taken int) {
+	var stated, computed, residual []cell
+	for _, r := range rows {
+		stated = append(stated, cellOf(r.Stated, words, statedText))
+		computed = append(computed, cellOf(r.Computed, words, func(q rules.Quantity) string { return computedText(q, r.Stated) }))
+		residual = append(residual, cellOf(r.Residual, words, residualText))
+	}
+	for _, c := range []column{newColumn("stated", stated), newColumn("computed", computed), newColumn("residual", residual)} {
+		if !c.empty() {
+			columns = append(columns, c)
+			taken += c.wide + 2
+		}
+	}
+	return columns, taken
 }
 
 // labels folds the first column, indented below the heading, and returns its

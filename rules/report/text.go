@@ -9,11 +9,23 @@ import (
 	"dextral/rules"
 )
 
-// Text writes the report for people: every finding, then a summary.
+// Text writes the report for people: every finding, then a summary. Of findings
+// with one cause the first is shown with its evidence, the others with their first
+// lines below it. What a file of waivers accepts is counted in the summary; other
+// formats list it.
 func Text(w io.Writer, r *Report, o Options) error {
 	p := newPrinter(w, o)
-	for _, f := range r.Findings {
-		p.finding(f)
+	for _, g := range groups(r.Findings) {
+		if g.first.Waiver != nil && g.first.Waiver.InFile {
+			continue
+		}
+		p.finding(g.first)
+		for _, f := range g.alike {
+			p.firstLine(f)
+		}
+		if len(g.alike) > 0 {
+			p.labelled("  ", faint, "alike", fmt.Sprintf("these %s seem to have one cause; the other formats give the evidence of each", grouped(len(g.alike)+1)), labelWidth)
+		}
 		p.line("")
 	}
 	p.summary(r)
@@ -23,8 +35,24 @@ func Text(w io.Writer, r *Report, o Options) error {
 // labelWidth holds the words in the margin of a finding and two spaces.
 const labelWidth = len("warning") + 2
 
+// firstLine is the line that editors follow. On a terminal it is wrapped.
+func (p *printer) firstLine(f *rules.Finding) {
+	at, rule := clean(f.Place.String())+":", f.Rule+":"
+	for i, l := range wrap(at+" "+rule+" "+clean(f.Message), p.o.Width-4, p.o.Width > 0) {
+		switch rest, whole := strings.CutPrefix(l, at+" "+rule); {
+		case i > 0:
+			l = "    " + l
+		case whole:
+			l = p.styled(bold, at) + " " + p.styled(bold, f.Rule) + ":" + rest
+		default: // the path alone fills the line
+			l = p.styled(bold, l)
+		}
+		p.line(l)
+	}
+}
+
 func (p *printer) finding(f *rules.Finding) {
-	p.line(p.styled(bold, clean(f.Place.String())+":") + " " + p.styled(bold, f.Rule) + ": " + clean(f.Message))
+	p.firstLine(f)
 	label := func(style, word, text string) { p.labelled("  ", style, word, text, labelWidth) }
 	if f.Waiver != nil { // nothing is to be done: the rest would only hide what is not waived
 		label(faint, "waived", waiverText(f))
