@@ -1,6 +1,10 @@
 package rules
 
 import (
+	"math"
+	"regexp"
+	"strings"
+
 	"dextral/core/convention"
 	"dextral/core/matrix"
 	"dextral/core/rotor"
@@ -24,9 +28,33 @@ func precisionOf(group []Number) tolerance.Precision {
 	for _, n := range group {
 		if read, ok := tolerance.Read(n.Text); ok {
 			numbers = append(numbers, read)
+		} else if half := halfOfExpression(n); half > 0 {
+			numbers = append(numbers, tolerance.Number{Value: n.Value, Half: half, Padded: true})
 		}
 	}
 	return tolerance.Of(numbers...)
+}
+
+// decimals are the numbers with digits behind the point in an expression.
+var decimals = regexp.MustCompile(`\d*\.\d+(?:[eE][+-]?\d+)?`)
+
+// halfOfExpression is how far the digits of the decimals in an expression, such as
+// 30.5*M_PI/180, leave its value open: each in proportion, as in a product, and by
+// itself, where it may be a term of a sum.
+func halfOfExpression(n Number) float64 {
+	half := 0.0
+	sum := strings.ContainsAny(strings.TrimLeft(n.Text, "+-${ ("), "+-")
+	for _, text := range decimals.FindAllString(n.Text, -1) {
+		read, ok := tolerance.Read(text)
+		if !ok || read.Integer() || read.Value == 0.5 || read.Value == 0.25 { // a half is one
+			continue
+		}
+		half = max(half, math.Abs(n.Value*read.Half/read.Value))
+		if sum {
+			half = max(half, read.Half)
+		}
+	}
+	return half
 }
 
 // tolerance is how far, in radians, the orientation may be from the one that

@@ -111,6 +111,20 @@ func TestNestedSheets(t *testing.T) {
 
 // BenchmarkManyFiles compares the audit of many small files with reading and
 // parsing them and doing nothing else. Report the ratio of the two.
+// Formats that hold orientations and have no reader are named; what only shares an
+// ending with one is not.
+func TestUnread(t *testing.T) {
+	for name, c := range map[string]struct{ head, want string }{
+		"tern.bvh":    {"HIERARCHY\n", "motion capture (BVH)"},
+		"SC_Tern.txt": {"<<<<<<<<<<<<<<<<<  42: Spacecraft Description File   >>>>>>>>>>>>>>>>>\n", "text file of the simulator 42"},
+		"notes.txt":   {"see page 42: the mount\n", ""},
+		"main.tf":     {"resource \"tern\" \"nose\" {\n}\n", ""},
+		"tern.yaml":   {"q: 1\n", ""},
+	} {
+		assert.Equal(t, c.want, unreadConfig(name, []byte(c.head)), name)
+	}
+}
+
 func BenchmarkManyFiles(b *testing.B) {
 	dir := b.TempDir()
 	var files []string

@@ -55,9 +55,18 @@ var unreadConfigs = map[string]string{
 	".usd": "USD", ".usda": "USD", ".fbx": "FBX", ".dae": "COLLADA",
 }
 
-func unreadConfig(name string) string {
+// unreadHeads names such formats by what stands in their first line.
+var unreadHeads = map[string]string{"42: ": "text file of the simulator 42"}
+
+func unreadConfig(name string, head []byte) string {
 	if config.Format(filepath.Base(name)) != "" {
 		return ""
+	}
+	first, _, _ := bytes.Cut(head, []byte("\n"))
+	for mark, kind := range unreadHeads {
+		if bytes.HasPrefix(first, []byte("<<<<")) && bytes.Contains(first, []byte(mark)) {
+			return kind
+		}
 	}
 	return unreadConfigs[strings.ToLower(filepath.Ext(name))]
 }

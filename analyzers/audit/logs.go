@@ -21,7 +21,7 @@ func readLog(ctx context.Context, f walk.File, head []byte, r io.Reader) *found 
 	case kind.None() && bytes.IndexByte(head, 0) >= 0:
 		return &found{kind: binary}
 	case kind.None():
-		if name := unreadConfig(f.Name); name != "" {
+		if name := unreadConfig(f.Name, head); name != "" {
 			return &found{kind: unreadable, skipped: []report.Skipped{{Path: f.Path, Why: name}}}
 		}
 		return &found{kind: other}
