@@ -42,6 +42,9 @@ func (t *trial) explain(m *Miss, c candidate) {
 	if m.Terms == nil && m.Factor == "" && (m.Reading.Op == Slerp || m.Reading.Op == Nlerp) {
 		m.Terms = t.weightTerms(m, c, rows)
 	}
+	if terms := t.factorTerms(m, c, rows); terms != nil && (len(m.Terms) == 0 || len(m.Terms) > len(terms)) {
+		m.Terms = terms
+	}
 	if len(m.Terms) == 0 || len(m.Terms) > 3 {
 		if m.Edit = t.edit(m, c, rows); m.Edit != "" {
 			m.Terms = nil

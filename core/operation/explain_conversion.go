@@ -2,6 +2,7 @@ package operation
 
 import (
 	"math"
+	"sort"
 
 	"dextral/core/angle"
 )
@@ -41,7 +42,7 @@ func (t *trial) matrixTerms(m *Miss, c candidate, rows []Sample) []Term {
 		return want
 	}
 	var best []Term
-	for first := range 4 {
+	for _, first := range largest(tab.rows, expected) {
 		var all []Term
 		ok := true
 		for _, place := range m.Components {
@@ -70,6 +71,20 @@ func (t *trial) matrixTerms(m *Miss, c candidate, rows []Sample) []Term {
 		return best
 	}
 	return t.firstComponent(m, c, tab, expected)
+}
+
+// largest lists the components by their size in the samples of a branch: the one that
+// is computed first is meant to be the greatest there.
+func largest(rows []canonical, expected func(*canonical) []float64) []int {
+	var squares [4]float64
+	for i := range rows {
+		for k, x := range expected(&rows[i]) {
+			squares[k] += x * x
+		}
+	}
+	order := []int{0, 1, 2, 3}
+	sort.SliceStable(order, func(i, j int) bool { return squares[order[i]] > squares[order[j]] })
+	return order
 }
 
 // firstComponent explains the case that the component computed first is wrong, and

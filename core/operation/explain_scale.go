@@ -27,6 +27,38 @@ func (t *trial) ratio(h *hypothesis, r *canonical, want []float64) (float64, boo
 	return f, true
 }
 
+// factorTerms explains single results that are a constant multiple of the ones
+// expected.
+func (t *trial) factorTerms(m *Miss, c candidate, rows []Sample) []Term {
+	if 2*len(m.Components) > size(t.f.Out) || len(rows) < 12 || m.Reading.Op == AnglesOf {
+		return nil
+	}
+	want := make([]float64, size(t.f.Out))
+	var all []Term
+	for _, place := range m.Components {
+		k := t.canonicalPlace(place, c.combo)
+		dot, square := 0.0, 0.0
+		ready := make([]canonical, len(rows))
+		expected := make([]float64, len(rows))
+		for i := range rows {
+			ready[i] = t.canonical(&rows[i], c.combo)
+			c.h.eval(ready[i].in, want)
+			c.h.alignSign(want, ready[i].out)
+			expected[i] = want[k]
+			dot += want[k] * ready[i].out[k]
+			square += want[k] * want[k]
+		}
+		factor := dot / square
+		for i := range rows {
+			if !(math.Abs(ready[i].out[k]-factor*expected[i]) <= 16*t.f.Tolerance()) {
+				return nil
+			}
+		}
+		all = append(all, Term{Result: place, Expected: 1, Found: tidy(factor)})
+	}
+	return all
+}
+
 // scaleTerms explains a result that is a multiple of the expected one: by a factor, or
 // by a divisor that is a sum of squares in some way. If nothing explains the factor its
 // range is put in words.
