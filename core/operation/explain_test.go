@@ -146,7 +146,9 @@ func TestEditsAndDivisors(t *testing.T) {
 func TestNoExplanation(t *testing.T) {
 	f := &Function{In: operands("qq"), Out: operands("q"), Eval: evaluator(4, func(in, out []float64) { putQuat(out, quat(in[4:]).Mul(quat(in))) })}
 	assert.Nil(t, f.Explain(Product))
-	f.Eval = evaluator(4, func(in, out []float64) { putQuat(out, rotor.Exp(quat(in).Bivector()).Mul(rotor.Exp(quat(in[4:]).Bivector()))) })
+	f.Eval = evaluator(4, func(in, out []float64) {
+		putQuat(out, rotor.Exp(quat(in).Bivector()).Mul(rotor.Exp(quat(in[4:]).Bivector())))
+	})
 	m := f.Explain(Product)
 	require.NotNil(t, m)
 	assert.Empty(t, f.Difference(m))
