@@ -98,7 +98,7 @@ func (f *Function) Explain(ops ...Op) *Miss {
 		return nil
 	}
 	t := &trial{f: f, combos: combosOf(f.In, f.Out)}
-	t.cover(rotations(list))
+	t.draw(rotations(list))
 	if len(t.samples) < unitSamples {
 		return nil
 	}
@@ -134,33 +134,24 @@ var anywhere = map[Op]bool{
 	MatrixProduct: true, MatrixInverse: true, Transpose: true, Determinant: true, Trace: true, Cross: true, Skew: true, Dot: true, Sum: true, Difference: true,
 }
 
-// cover draws samples on the manifold until no new path turns up, and evaluates
-// them.
-func (t *trial) cover(rotation bool) {
-	paths := map[string]bool{}
-	add := func(s []Sample) (news bool) {
-		t.f.Eval(s)
-		for i := range s {
-			if s[i].OK && !undefined(s[i].Out) {
-				news = news || !paths[s[i].Path]
-				paths[s[i].Path] = true
-				t.samples = append(t.samples, s[i])
-			}
-		}
-		return news
-	}
-	add(Draw(t.f.In, Unit, 64, 2))
-	add(Draw(t.f.In, Wide, 24, 2))
-	add(Draw(t.f.In, Tiny, 16, 2))
-	if !rotation {
-		add(Draw(t.f.In, General, 64, 2))
-	}
-	for round := range uint64(4) {
-		if !add(Draw(t.f.In, Unit, 64, 3+round)) {
-			break
+// draw evaluates samples of all families for an explanation, and as many more as take
+// new paths.
+func (t *trial) draw(rotation bool) {
+	for _, d := range []struct {
+		family Family
+		n      int
+	}{{Unit, 64}, {Wide, 24}, {Tiny, 16}, {General, 64}} {
+		if d.family != General || !rotation {
+			t.samples = append(t.samples, Draw(t.f.In, d.family, d.n, 2)...)
 		}
 	}
+	t.f.Eval(t.samples)
+	t.cover(maxExplained)
+	t.samples = slices.DeleteFunc(t.samples, func(s Sample) bool { return !s.OK || undefined(s.Out) })
 }
+
+// maxExplained bounds the samples by which a difference is explained.
+const maxExplained = 480
 
 // undefined reports whether a result is no number in all places.
 func undefined(out []float64) bool {

@@ -21,8 +21,38 @@ func newTrial(f *Function) *trial {
 		t.samples = append(t.samples, Draw(f.In, d.family, d.n, 1)...)
 	}
 	f.Eval(t.samples)
+	t.cover(maxIdentified)
 	t.combos = combosOf(f.In, f.Out)
 	return t
+}
+
+// maxIdentified bounds the samples by which a function is identified.
+const maxIdentified = 320
+
+// cover draws samples on the manifold as long as they take new paths, and evaluates
+// them: a branch that is taken by one rotation in a hundred may be the wrong one.
+func (t *trial) cover(most int) {
+	paths := map[string]bool{}
+	for i := range t.samples {
+		paths[t.samples[i].Path] = true
+	}
+	if len(paths) < 2 {
+		return
+	}
+	for seed := uint64(3); len(t.samples) < most; seed++ {
+		more := Draw(t.f.In, Unit, 64, seed)
+		t.f.Eval(more)
+		news := false
+		for i := range more {
+			if !paths[more[i].Path] {
+				news, paths[more[i].Path] = true, true
+			}
+		}
+		t.samples = append(t.samples, more...)
+		if !news {
+			return
+		}
+	}
 }
 
 // useless says why the samples show nothing.
