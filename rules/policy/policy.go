@@ -20,7 +20,7 @@ var Names = []string{"dextral.toml", ".dextral.toml"}
 
 // maxSize bounds the text of a policy. A sheet with a thousand waivers has
 // about 200 kB.
-const maxSize = 1 << 20
+const maxSize = 4 << 20
 
 // Policy is what a repository's conventions sheet says. It is not changed after
 // it was read and may be used concurrently.

@@ -165,7 +165,7 @@ func TestFindAndLoad(t *testing.T) {
 
 	write("big.toml", strings.Repeat("# as long as a book\n", maxSize/20+1))
 	_, err = Load(filepath.Join(dir, "big.toml"), nil)
-	assert.ErrorContains(t, err, "is larger than 1048576 bytes")
+	assert.ErrorContains(t, err, "is larger than 4194304 bytes")
 }
 
 func TestExcluded(t *testing.T) {

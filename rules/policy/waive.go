@@ -16,6 +16,8 @@ type waiver struct {
 	files glob
 	keys  keyPattern // used only with byKey
 	byKey bool
+
+	literal bool // the path holds no wildcard; with thousands of waivers this counts
 }
 
 // parsePlace reads Place: a path glob, or a path glob, # and a key pattern.
@@ -28,6 +30,7 @@ func (w *waiver) parsePlace() error {
 	if w.files, err = parseGlob(files); err != nil {
 		return err
 	}
+	w.literal = !strings.ContainsAny(string(w.files), `*?[{`)
 	if w.byKey = byKey; byKey {
 		w.keys, err = parseKeyPattern(key)
 	}
@@ -35,7 +38,10 @@ func (w *waiver) parsePlace() error {
 }
 
 func (w *waiver) matches(f *rules.Finding, rel string) bool {
-	return f.Rule == w.Rule && w.files.matches(rel) && (!w.byKey || w.keys.matches(f.Key))
+	if f.Rule != w.Rule || w.literal && string(w.files) != rel {
+		return false
+	}
+	return (w.literal || w.files.matches(rel)) && (!w.byKey || w.keys.matches(f.Key))
 }
 
 // Scope is what waivers are held against.
