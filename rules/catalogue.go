@@ -28,6 +28,8 @@ const (
 	BottomRowWrong        = "bottom-row-wrong"
 	AngleBeyondTurn       = "angle-beyond-turn"
 	GimbalLocked          = "gimbal-locked"
+	MessageMalformed      = "message-malformed"
+	RatesDiffer           = "rates-differ"
 	NotFinite             = "not-finite"
 	SignJump              = "sign-jump"
 	NormLoss              = "norm-loss"
@@ -73,6 +75,8 @@ var catalogue = []Rule{
 	{BottomRowWrong, "The last row of a 4x4 that claims to be a rigid transform is not 0 0 0 1.", Error},
 	{AngleBeyondTurn, "An angle stated in radians is several turns, and a round number of degrees.", Warning},
 	{GimbalLocked, "Three angles are at gimbal lock, where only a sum or difference of two is determined.", Note},
+	{MessageMalformed, "An attitude message breaks a rule of the standard that its version names.", Error},
+	{RatesDiffer, "Two statements of one angular rate differ.", Error},
 	{NotFinite, "An orientation contains a number that is not finite.", Error},
 	{SignJump, "A logged rotor jumps from R to -R while the rotation barely moves.", Warning},
 	{NormLoss, "A logged quaternion loses its unit norm.", Warning},

@@ -77,7 +77,7 @@ func newChain(values []*Value, rig bool) *Chain {
 }
 
 func newLink(v *Value, rig bool) *Link {
-	if !v.Decided() || !v.orients() || !finite(v) || v.zero() {
+	if !v.Decided() || !v.orients() || !finite(v) || v.zero() || v.Moment != "" {
 		return nil
 	}
 	if m, ok := v.rotationPart(); ok && m.Det() <= 0 {

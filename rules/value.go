@@ -22,6 +22,7 @@ type Number struct {
 type Value struct {
 	Form      convention.Form
 	Key       string        // where it stands in the structure of the file: cameras.front.q_body_cam
+	Moment    string        // when it holds, of one state of a motion; "": always
 	Of        string        // the orientation it states: values of one file with equal non-empty Of state the same one
 	Subscript [2]string     // the two frames of a key such as T_a_b, in written order; which of them the coordinates come from is open
 	Place     Place         // from the first to the last number, or the whole bracket

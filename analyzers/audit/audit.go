@@ -201,8 +201,10 @@ func (a *audit) judge(list []*found) {
 		for _, s := range f.series {
 			out.Findings = append(out.Findings, rules.CheckSeries(s)...)
 		}
-		if len(f.series) > 0 {
-			out.Findings = append(out.Findings, rules.CheckClock(f.series[0])...)
+		for i, s := range f.series {
+			if i == 0 || s.Clock != f.series[i-1].Clock { // the channels of a log share one
+				out.Findings = append(out.Findings, rules.CheckClock(s)...)
+			}
 		}
 		for _, p := range f.pairs {
 			out.Findings = append(out.Findings, rules.CheckPair(p)...)

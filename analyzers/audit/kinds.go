@@ -11,6 +11,7 @@ import (
 	"strings"
 
 	"dextral/analyzers/config"
+	"dextral/analyzers/message"
 	"dextral/analyzers/rewrite"
 	"dextral/analyzers/series"
 	"dextral/analyzers/source"
@@ -50,8 +51,7 @@ func kindOf(name string) kind {
 // unreadConfigs names formats that often hold orientations and have no reader
 // yet, by extension.
 var unreadConfigs = map[string]string{
-	".aem": "CCSDS attitude ephemeris", ".acm": "CCSDS attitude comprehensive message",
-	".bvh": "motion capture (BVH)", ".glb": "binary glTF",
+	".acm": "CCSDS attitude comprehensive message", ".bvh": "motion capture (BVH)", ".glb": "binary glTF",
 	".usd": "USD", ".usda": "USD", ".fbx": "FBX", ".dae": "COLLADA",
 }
 
@@ -93,13 +93,16 @@ func failed(k kind, f walk.File, err error) *found {
 // input, is worth a failed audit only if it says so.
 var speaksOfOrientation = regexp.MustCompile(`(?i)quat|rot(at|or|mat)|euler|roll|pitch|yaw|orient|attitude|rpy|ypr|dcm|extrinsic|transform|ax[ei]s|pose|frame|[RTq]_[a-z]`)
 
-func readConfig(_ context.Context, f walk.File) *found {
+func readConfig(ctx context.Context, f walk.File) *found {
 	if err := source.CheckSize(f.Path, f.Size); err != nil {
 		return failed(configFile, f, err)
 	}
 	text, err := os.ReadFile(f.Name)
 	if err != nil {
 		return failed(configFile, f, err)
+	}
+	if message.IsEphemeris(text) {
+		return readEphemeris(ctx, f, bytes.NewReader(text))
 	}
 	r, err := config.Read(f.Path, text)
 	switch {
@@ -109,6 +112,9 @@ func readConfig(_ context.Context, f walk.File) *found {
 		return failed(configFile, f, err)
 	}
 	result := &found{kind: configFile, values: r.Values, sum: rewrite.SumOf(text)}
+	if message.IsParameters(text) {
+		result.findings = message.CheckParameters(f.Path, text)
+	}
 	result.waiversIn(r.Waivers)
 	for _, w := range r.Warnings {
 		result.limited = append(result.limited, report.Failure{Place: w.Place, Message: w.Message})
@@ -133,6 +139,9 @@ func readByHead(ctx context.Context, f walk.File) *found {
 		return failed(other, f, err)
 	}
 	head = head[:n]
+	if message.IsEphemeris(head) {
+		return readEphemeris(ctx, f, io.MultiReader(bytes.NewReader(head), file))
+	}
 	if config.Recognise(f.Name, head) != "" {
 		return readConfig(ctx, f)
 	}

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"io"
 
+	"dextral/analyzers/message"
 	"dextral/analyzers/series"
 	"dextral/analyzers/walk"
 	"dextral/rules"
@@ -35,6 +36,19 @@ func readLog(ctx context.Context, f walk.File, head []byte, r io.Reader) *found 
 	}
 	if read.BadRows > 0 {
 		result.limited = append(result.limited, badRows(f.Path, read))
+	}
+	if err != nil && ctx.Err() == nil {
+		result.failures = append(result.failures, failure(rules.Place{Path: f.Path}, err))
+	}
+	return result
+}
+
+// readEphemeris streams an attitude ephemeris message.
+func readEphemeris(ctx context.Context, f walk.File, r io.Reader) *found {
+	e, err := message.ReadEphemeris(ctx, f.Path, r, series.Options{Declare: f.Policy.Declare})
+	result := &found{kind: logFile, series: e.Series, rows: e.Rows, values: append(e.Values, e.Undecided...), findings: e.Findings}
+	if e.BadRows > 0 {
+		result.limited = append(result.limited, badRows(f.Path, series.Result{BadRows: e.BadRows, FirstBad: e.FirstBad}))
 	}
 	if err != nil && ctx.Err() == nil {
 		result.failures = append(result.failures, failure(rules.Place{Path: f.Path}, err))
