@@ -102,7 +102,11 @@ func readPrefixed(t, body string) (Number, bool) {
 		return Number{}, false
 	}
 	_, fraction, _ := strings.Cut(mantissa, ".")
-	return decimalView(Number{Value: value, Half: math.Ldexp(0.5, exponent-4*len(fraction))}), true
+	half := math.Ldexp(0.5, exponent-4*len(fraction))
+	if math.IsInf(half, 0) { // a zero with an exponent beyond all numbers
+		return Number{}, false
+	}
+	return decimalView(Number{Value: value, Half: half}), true
 }
 
 func sign(t string) float64 {

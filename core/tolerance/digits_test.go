@@ -82,7 +82,7 @@ func TestReadWhatIsPrinted(t *testing.T) {
 }
 
 func FuzzRead(f *testing.F) {
-	for _, text := range []string{"0.5", "1e5", "0x1p-3", "-0b1", "1_0", "1d2", "\xff", "0x.p1", "1e-400", "00", "0_x1"} {
+	for _, text := range []string{"0.5", "1e5", "0x1p-3", "-0b1", "1_0", "1d2", "\xff", "0x.p1", "1e-400", "00", "0_x1", "0X0p2000"} {
 		f.Add(text)
 	}
 	f.Fuzz(func(t *testing.T, text string) {
