@@ -105,11 +105,11 @@ func NameFile(sheet, file string) string {
 	}
 	top := locate(sheet)
 	if n := top.child("waiver_files"); n.value.end > 0 {
-		named := sheet[n.value.start:n.value.end]
-		if inner, isList := strings.CutPrefix(named, "["); isList {
-			named = strings.TrimRight(strings.TrimSuffix(inner, "]"), " \t\r\n,")
+		if len(n.list) > 0 {
+			last := n.list[len(n.list)-1].value.end
+			return mark + sheet[:last] + ", " + quoted(file) + sheet[last:]
 		}
-		return mark + sheet[:n.value.start] + "[" + strings.TrimLeft(named, " \t") + ", " + quoted(file) + "]" + sheet[n.value.end:]
+		return mark + sheet[:n.value.start] + "[" + sheet[n.value.start:n.value.end] + ", " + quoted(file) + "]" + sheet[n.value.end:]
 	}
 	end := lineEnd(sheet)
 	line := "waiver_files = " + quoted(file) + end

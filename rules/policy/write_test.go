@@ -58,7 +58,7 @@ func TestNameFileKeepsTheSheet(t *testing.T) {
 		"# of defaults\n[defaults]\n":                             "waiver_files = \"b.toml\"\n\n# of defaults\n[defaults]\n",
 		"[[claim]]\r\nfiles = 'x'\r\nunit='deg'":                  "waiver_files = \"b.toml\"\r\n\r\n[[claim]]\r\nfiles = 'x'\r\nunit='deg'",
 		"waiver_files = 'a.toml' # old\n":                         "waiver_files = ['a.toml', \"b.toml\"] # old\n",
-		"waiver_files = [ 'a.toml', 'c.toml', ]":                  "waiver_files = ['a.toml', 'c.toml', \"b.toml\"]",
+		"waiver_files = [ 'a.toml', 'c.toml', ]":                  "waiver_files = [ 'a.toml', 'c.toml', \"b.toml\", ]",
 		"\ufeff[[rig]]\nname='a'\nfiles='a'\n":                    "\ufeffwaiver_files = \"b.toml\"\n\n[[rig]]\nname='a'\nfiles='a'\n",
 		"defaults.unit = 'deg'\n[[claim]]\nfiles='a'\nunit='deg'": "defaults.unit = 'deg'\nwaiver_files = \"b.toml\"\n[[claim]]\nfiles='a'\nunit='deg'",
 	} {

@@ -20,6 +20,9 @@ func cause(f *rules.Finding) string {
 
 // lastName is the last element of a key that is no index.
 func lastName(key string) string {
+	if strings.HasPrefix(key, "waiver.") { // all that are left over are left over alike
+		return ""
+	}
 	key = strings.TrimRight(key, "]0123456789")
 	key = strings.TrimSuffix(key, "[")
 	return key[strings.LastIndexByte(key, '.')+1:]

@@ -24,7 +24,7 @@ func Text(w io.Writer, r *Report, o Options) error {
 			p.firstLine(f)
 		}
 		if len(g.alike) > 0 {
-			p.labelled("  ", faint, "alike", fmt.Sprintf("these %s seem to have one cause; the other formats give the evidence of each", grouped(len(g.alike)+1)), labelWidth)
+			p.labelled("  ", faint, "alike", fmt.Sprintf("these %s are alike and may have one cause; the other formats give the evidence of each", grouped(len(g.alike)+1)), labelWidth)
 		}
 		p.line("")
 	}

@@ -93,7 +93,7 @@ func TestOneCauseIsShownOnce(t *testing.T) {
 		assert.Contains(t, out, fmt.Sprintf("\ncalib/cams.yaml:%d:5: rotor-not-unit: cams[%d].q claims", 10*(i+1), i))
 	}
 	assert.Equal(t, 2, strings.Count(out, "deviation that the digits written allow"), "once for the four, once for the other file")
-	assert.Contains(t, out, "\n  alike    these 4 seem to have one cause; the other formats give the evidence of each\n")
+	assert.Contains(t, out, "\n  alike    these 4 are alike and may have one cause; the other formats give the evidence of each\n")
 	assert.Contains(t, out, "found      7 errors", "all are counted")
 	r := make(4)
 	for _, f := range r.Findings {
