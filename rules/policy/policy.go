@@ -163,7 +163,10 @@ func Parse(name string, text []byte, known []string) (*Policy, error) {
 // parseText decodes a text and hands its top table to read. It returns nil or all
 // that is wrong.
 func parseText(name string, text []byte, known []string, read func(*table)) error {
-	source := strings.TrimPrefix(string(text), "\ufeff") // a byte order mark takes no column
+	source := strings.TrimPrefix(string(text), "\ufeff")                                // a byte order mark takes no column
+	if strings.HasPrefix(source, "\xff\xfe") || strings.HasPrefix(source, "\xfe\xff") { // which the library takes for white space
+		return Errors{{rules.Place{Path: name, Line: 1, Column: 1}, "is not TOML: it is UTF-16; save it as UTF-8"}}
+	}
 	r := &reader{lines: newLines(name, source), known: known}
 	var vals map[string]any
 	if _, err := toml.Decode(source, &vals); err != nil {

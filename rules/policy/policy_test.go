@@ -93,7 +93,7 @@ func TestSyntaxErrors(t *testing.T) {
 		"gate = ":                       "dextral.toml:1:7:",
 		"gate = 'error'\ngate = 'note'": "dextral.toml:2:1:",
 		"exclude = ['é', x]":            "dextral.toml:1:17:",
-		"\xff\xfeg\x00":                 "dextral.toml:1:2:",
+		"\xff\xfeg\x00":                 "dextral.toml:1:1:",
 		"[a\nb = 1":                     "dextral.toml:1:",
 	} {
 		_, err := Parse("dextral.toml", []byte(text), nil)

@@ -39,7 +39,7 @@ func FuzzBeside(f *testing.F) {
 // says so.
 func FuzzWrite(f *testing.F) {
 	for _, text := range []string{"", "gate = 'note'", twoWaivers, "# a\n\n[defaults]\nunit = 'deg'", "waiver_files = [\n'a.toml', # x\n]\n", "defaults = {unit = 'deg'}",
-		"waiver = [{rule='sign-jump', place='a', until=2031-01-01, because='x', owner='y'}]", "'waiver_files' = \"a\"\r\n", "[ defaults ]\nunit='deg'", "defaults . unit = 'deg'\n", "# c\r\n\r\n[[ claim ]]\nfiles='a'\nunit='rad'"} {
+		"waiver = [{rule='sign-jump', place='a', until=2031-01-01, because='x', owner='y'}]", "'waiver_files' = \"a\"\r\n", "[ defaults ]\nunit='deg'", "defaults . unit = 'deg'\n", "\xff\xfe", "# c\r\n\r\n[[ claim ]]\nfiles='a'\nunit='rad'"} {
 		f.Add(text)
 	}
 	w := &rules.Waiver{Rule: "sign-jump", Place: "logs/a.csv", Until: "2031-01-01", Because: "x", Owner: "y"}
