@@ -10,6 +10,7 @@ type trial struct {
 	samples  []Sample // evaluated: unit, wide, tiny, general
 	combos   []combo
 	constant bool // on the manifold
+	offUnit  bool // some sample off it has a result
 }
 
 func newTrial(f *Function) *trial {
@@ -72,6 +73,7 @@ func (t *trial) useless() string {
 		if !s.OK {
 			continue
 		}
+		t.offUnit = t.offUnit || s.Family == General
 		if first == nil {
 			first = s.Out
 		}
@@ -218,7 +220,7 @@ func (t *trial) test(h *hypothesis, c combo, cache []canonical, scratch []float6
 	if len(h.reading.Orders) > 0 && !equalOrders(h.reading.Orders, c.orders(t.f.In, t.f.Out)) {
 		return match{}, false // solved for another storage
 	}
-	m := match{reading: h.reading, general: true, of: h, stored: c}
+	m := match{reading: h.reading, general: t.offUnit, of: h, stored: c}
 	tested := 0
 	tolerance := t.f.Tolerance()
 	for i := range t.samples {

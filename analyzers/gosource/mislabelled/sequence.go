@@ -49,7 +49,7 @@ func (f *function) labels() []label {
 	var all []label
 	roles := rolesOf(f.angles().Names)
 	if f.comment != nil {
-		if l, ok := claims.SequenceIn(f.comment.Text, roles); ok {
+		if l, ok := claims.SequenceIn(strings.Join(strings.Fields(f.comment.Text), " "), roles); ok {
 			all = append(all, label{l, rules.Comment})
 		}
 	}
