@@ -43,6 +43,7 @@ type Written struct {
 	Dropped   int // matched nothing any longer
 	Lapsed    int // findings whose waiver has expired; they are not accepted again
 	Elsewhere int // findings below other sheets; they are left alone
+	Failed    int // inputs that could not be audited
 }
 
 // All writes a waiver for every finding that has none, and drops those of the
@@ -73,6 +74,7 @@ func All(ctx context.Context, b Backlog) (*Written, error) {
 		return nil, err
 	}
 	w := &Written{Sheet: cmp.Or(sheet.Path, policy.Names[0]), Created: sheet.Path == "", Named: !known}
+	w.Failed = len(result.Report.Failed)
 	w.collect(b, sheet, file, result.Report.Findings, governedBy(tree, sheet))
 	return w, b.write(w, sheet, file, known)
 }

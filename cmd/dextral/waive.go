@@ -79,7 +79,7 @@ func printBacklog(w io.Writer, b waive.Backlog, done *waive.Written) {
 	case len(done.Waivers) == 0 && done.Dropped == 0:
 		fmt.Fprintln(w, "nothing is found that is not waived already; nothing was written")
 	default:
-		fmt.Fprintf(w, "%s: %d waivers (%d new, %d dropped because nothing is found there any longer)\n", b.File, len(done.Waivers), done.Added, done.Dropped)
+		fmt.Fprintf(w, "%s: %s (%d new, %d dropped because nothing is found there any longer)\n", b.File, several(len(done.Waivers), "waiver"), done.Added, done.Dropped)
 	}
 	names, counts := done.ByRule()
 	for _, name := range names {
@@ -92,9 +92,20 @@ func printBacklog(w io.Writer, b waive.Backlog, done *waive.Written) {
 		fmt.Fprintf(w, "%s: names that file now\n", done.Sheet)
 	}
 	if done.Lapsed > 0 {
-		fmt.Fprintf(w, "left: %d whose waivers have expired; mend them, or give their waivers a later day by hand\n", done.Lapsed)
+		fmt.Fprintf(w, "left: %s whose waiver has expired; mend it, or give the waiver a later day by hand\n", several(done.Lapsed, "finding"))
+	}
+	if done.Failed > 0 {
+		fmt.Fprintf(w, "left: %s that could not be audited; dextral audit says why\n", several(done.Failed, "input"))
 	}
 	if done.Elsewhere > 0 {
-		fmt.Fprintf(w, "left: %d below another dextral.toml; run the command there\n", done.Elsewhere)
+		fmt.Fprintf(w, "left: %s below another dextral.toml; run the command there\n", several(done.Elsewhere, "finding"))
 	}
+}
+
+// several is "1 waiver" or "3 waivers".
+func several(n int, one string) string {
+	if n == 1 {
+		return "1 " + one
+	}
+	return fmt.Sprintf("%d %ss", n, one)
 }

@@ -59,6 +59,9 @@ func (p *printer) finding(f *rules.Finding) {
 		return
 	}
 	label(levelStyle(f.Level), f.Level.String(), levelText(f))
+	if w := f.Lapsed; w != nil {
+		label(faint, "lapsed", fmt.Sprintf("was accepted until %s by %s: %s (%s)", w.Until, clean(w.Owner), clean(w.Because), clean(w.At.String())))
+	}
 	if f.Place.Row > 0 {
 		label(faint, "at", rowText(f.Place))
 	}
