@@ -131,3 +131,58 @@ func BenchmarkMeasure(b *testing.B) {
 	}
 	b.ReportMetric(float64(b.Elapsed().Microseconds())/float64(b.N*len(r.Funcs)), "us/function")
 }
+
+// Generic functions are measured for float64 and float32, slices of numbers by the
+// length that the function expects, and a list of quaternions is none of them a matrix.
+func TestGenericsAndSlices(t *testing.T) {
+	r := load(t, `package a
+
+type Number interface{ ~float32 | ~float64 }
+
+type Quat[T Number] struct{ W, X, Y, Z T }
+
+func (a Quat[T]) Mul(b Quat[T]) Quat[T] {
+	return Quat[T]{
+		W: a.W*b.W - a.X*b.X - a.Y*b.Y - a.Z*b.Z,
+		X: a.W*b.X + a.X*b.W + a.Y*b.Z - a.Z*b.Y,
+		Y: a.W*b.Y - a.X*b.Z + a.Y*b.W + a.Z*b.X,
+		Z: a.W*b.Z + a.X*b.Y - a.Y*b.X + a.Z*b.W,
+	}
+}
+
+func Conj[T Number](q Quat[T]) Quat[T] { return Quat[T]{q.W, -q.X, -q.Y, -q.Z} }
+
+func Sum(list ...Quat[float64]) (s Quat[float64]) {
+	for _, q := range list {
+		s.W += q.W
+		s.X += q.X
+		s.Y += q.Y
+		s.Z += q.Z
+	}
+	return s
+}
+
+func Matrix(q []float64) []float64 {
+	if len(q) != 4 {
+		return nil
+	}
+	w, x, y, z := q[0], q[1], q[2], q[3]
+	return []float64{
+		1 - 2*(y*y+z*z), 2 * (x*y - w*z), 2 * (x*z + w*y),
+		2 * (x*y + w*z), 1 - 2*(x*x+z*z), 2 * (y*z - w*x),
+		2 * (x*z - w*y), 2 * (y*z + w*x), 1 - 2*(x*x+y*y),
+	}
+}
+`)
+	got := map[string][]operation.Op{}
+	for _, f := range r.Funcs {
+		got[f.Object.Name()] = append(got[f.Object.Name()], f.Cases[0].Identity.Op())
+		if f.Object.Name() == "Sum" {
+			assert.Len(t, f.In, 4)
+		}
+	}
+	assert.Equal(t, map[string][]operation.Op{
+		"Mul": {operation.Product, operation.Product}, "Conj": {operation.Conjugate, operation.Conjugate},
+		"Sum": {""}, "Matrix": {operation.ToMatrix},
+	}, got)
+}

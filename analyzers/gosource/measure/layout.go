@@ -25,7 +25,7 @@ func (f *Function) layouts() []Layout {
 		at := 0
 		for i := range sig.Params {
 			p := &sig.Params[i]
-			for _, part := range pieces(sliceOf(params[i], p.Len), parted) {
+			for _, part := range piecesOf(params[i], p.Len, parted) {
 				o := operandOf(part, sig.ParamName(i), fieldNames(sig.ParamName(i), p.Fields), at)
 				o.Receiver = p.Receiver
 				in = append(in, o)
@@ -38,7 +38,7 @@ func (f *Function) layouts() []Layout {
 			if len(r.Fields) == 0 {
 				continue
 			}
-			for _, part := range pieces(sliceOf(results[i], r.Len), parted) {
+			for _, part := range piecesOf(results[i], r.Len, parted) {
 				out = append(out, operandOf(part, sig.ResultName(i), fieldNames(sig.ResultName(i), r.Fields), at))
 			}
 			at += len(r.Fields)
@@ -48,7 +48,7 @@ func (f *Function) layouts() []Layout {
 			if p.Mode != tape.Pointer && p.Mode != tape.Slice {
 				continue
 			}
-			for _, part := range pieces(sliceOf(params[i], p.Len), parted) {
+			for _, part := range piecesOf(params[i], p.Len, parted) {
 				o := operandOf(part, sig.ParamName(i), fieldNames(sig.ParamName(i), p.Fields), at)
 				o.Receiver, o.Written = p.Receiver, true
 				if f.written(o) && !f.returned(p.Type, p.Mode) {

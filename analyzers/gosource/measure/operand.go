@@ -150,12 +150,26 @@ func pointee(t types.Type) types.Type {
 	return t
 }
 
-// sliceOf is the array that a slice of so many elements is taken for.
-func sliceOf(t types.Type, n int) types.Type {
-	if s, ok := t.Underlying().(*types.Slice); ok {
-		return types.NewArray(s.Elem(), int64(n))
+// piecesOf takes the type of a parameter or result apart. A slice is taken for an array
+// of n numbers, or for n operands if its elements are more than numbers.
+func piecesOf(t types.Type, n int, parted bool) []piece {
+	s, ok := t.Underlying().(*types.Slice)
+	if !ok {
+		return pieces(t, parted)
 	}
-	return t
+	k, _ := words(s.Elem())
+	if k <= 1 {
+		return pieces(types.NewArray(s.Elem(), int64(n)), parted)
+	}
+	var all []piece
+	for i := range n {
+		for _, p := range pieces(s.Elem(), parted) {
+			p.path = "[" + strconv.Itoa(i) + "]" + p.path
+			p.first += i * k
+			all = append(all, p)
+		}
+	}
+	return all
 }
 
 // baseName is the name at the end of a path such as "q.Rot.W".
