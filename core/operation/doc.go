@@ -14,6 +14,13 @@
 // three; General samples then say what it does with a norm other than one, and Singular
 // ones are for those who look for trouble there.
 //
+// # Nearly an operation
+//
+// Explain takes the operations that a function may be meant to compute, and finds the one that
+// it comes nearest to and what stands between them: the factors of the terms, where results are
+// sums of terms; a factor or divisor; one component that was wrong before normalising; one input
+// read in place of another; the samples that differ, if not all do.
+//
 // # Conventions
 //
 // Quaternion numbers in this package are canonical, w x y z of Hamilton's algebra,

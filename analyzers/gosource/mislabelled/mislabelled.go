@@ -37,14 +37,15 @@ type contradiction struct {
 }
 
 // checks compare one setting of a function with what is written about it.
-var checks = []func(*function) *contradiction{(*function).sequence, (*function).roles, (*function).unit, (*function).algebra, (*function).direction}
+var checks = []func(*function) *contradiction{(*function).sequence, (*function).roles, (*function).unit, (*function).algebra, (*function).direction, (*function).other}
 
 // function is a setting of a function that computes a known operation, with what is
 // said of it.
 type function struct {
 	*measure.Function
-	c       *measure.Case
-	comment *claims.Comment // nil if there is none, or it cannot be told which setting it speaks of
+	c        *measure.Case
+	measured *measure.Result
+	comment  *claims.Comment // nil if there is none, or it cannot be told which setting it speaks of
 }
 
 func run(pass *analysis.Pass) (any, error) {
@@ -54,7 +55,7 @@ func run(pass *analysis.Pass) (any, error) {
 		if f.Decl == nil || len(f.Args) > 0 && f != measured.Of(f.Object)[0] || len(f.Unknown) > 0 {
 			continue
 		}
-		if x := examine(f); x != nil {
+		if x := examine(measured, f); x != nil {
 			c.Add(x, f.Decl.Name)
 		}
 	}
@@ -65,12 +66,12 @@ func run(pass *analysis.Pass) (any, error) {
 }
 
 // examine returns the first contradiction of a function.
-func examine(f *measure.Function) *rules.Finding {
+func examine(measured *measure.Result, f *measure.Function) *rules.Finding {
 	for _, c := range f.Cases {
 		if !c.Identity.Known() {
 			continue
 		}
-		x := &function{Function: f, c: c}
+		x := &function{Function: f, c: c, measured: measured}
 		if f.Decl.Doc != nil && len(f.Cases) == 1 {
 			x.comment = claims.ReadComment(f.Decl.Doc.Text())
 		}
@@ -95,7 +96,7 @@ func (x *contradiction) finding(f *function) *rules.Finding {
 	if x.by.Stated() {
 		level = rules.Error
 	}
-	message := fmt.Sprintf("%s computes %s; its %s %s", f.Label(f.c), x.measured, speaks(x.by), x.stated)
+	message := fmt.Sprintf("%s computes %s; its %s %s", f.Label(f.c), x.measured, x.speaks(), x.stated)
 	if x.effect != "" {
 		message += "; " + x.effect
 	}
@@ -109,19 +110,17 @@ func (x *contradiction) finding(f *function) *rules.Finding {
 	}
 }
 
-func speaks(by rules.Source) string {
-	if by == rules.Name {
+func (x *contradiction) speaks() string {
+	if x.subject == "axes of the angles" {
 		return "parameters say"
 	}
-	return said(by) + " says"
+	return said(x.by) + " says"
 }
 
 func said(by rules.Source) string {
 	switch by {
 	case rules.Comment:
 		return "comment"
-	case rules.Name:
-		return "parameters"
 	}
 	return "name"
 }

@@ -97,3 +97,33 @@ func Degrees(rollDeg, pitchDeg, yawDeg float64) Quat { // want `Degrees computes
 
 // AboutX returns a rotation by an angle in degrees.
 func AboutX(a float64) Quat { return about(0, a) } // want `AboutX computes with angles in radians; its comment says degrees`
+
+// Plus adds.
+func (a Quat) Plus(b Quat) Quat { return Quat{a[0] + b[0], a[1] + b[1], a[2] + b[2], a[3] + b[3]} }
+
+// Inverse undoes a rotation.
+func (a Quat) Inverse() Quat { return a.Conj() } // want `Quat.Inverse computes the conjugate; its name says inverse; that is the inverse at norm one only, and Quat.Plus makes`
+
+// Inv undoes the rotation of a unit quaternion.
+func (a Quat) Inv() Quat { return a.Conj() }
+
+// Inverse undoes a rotation; nothing here makes one that is not of unit norm.
+func (a Other) Inverse() Other { return a.Conj() }
+
+// Slerp takes a short cut.
+func Slerp(a, b Quat, t float64) Quat { // want `Slerp computes the normalised linear interpolation; its name says spherical interpolation`
+	d := 1.0
+	if a[0]*b[0]+a[1]*b[1]+a[2]*b[2]+a[3]*b[3] < 0 {
+		d = -1
+	}
+	n := 0.0
+	var r Quat
+	for i := range r {
+		r[i] = (1-t)*a[i] + t*d*b[i]
+		n += r[i] * r[i]
+	}
+	for i := range r {
+		r[i] /= math.Sqrt(n)
+	}
+	return r
+}
