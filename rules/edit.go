@@ -88,11 +88,18 @@ func (v *Value) normalised(numbers map[int]float64, moved float64) *Edit {
 	for i := range numbers {
 		decimals = max(decimals, decimalsOf(v.Numbers[i].Text))
 	}
-	texts := map[int]string{}
-	for i, x := range numbers {
-		texts[i] = restyle(v.Numbers[i].Text, x, decimals)
+	// Each number keeps its digits; but where a writer drops zeros, 0.5 may have as
+	// many as the others, and then all get as many as the longest.
+	for _, least := range []int{1, decimals} {
+		texts := map[int]string{}
+		for i, x := range numbers {
+			texts[i] = restyle(v.Numbers[i].Text, x, least, decimals)
+		}
+		if e := v.edited(why, texts, func(*Value) bool { return true }); e != nil {
+			return e
+		}
 	}
-	return v.edited(why, texts, func(*Value) bool { return true })
+	return nil
 }
 
 // normalisedVector is the edit that gives the first n numbers of the value, which
@@ -166,10 +173,10 @@ func cutExponent(text string) (mantissa, exponent string) {
 	return text, ""
 }
 
-// restyle writes a number as another one is written: with its exponent, its digits
-// behind the point (a whole number: as many as are given), its plus sign and its
-// bare point.
-func restyle(like string, x float64, decimals int) string {
+// restyle writes a number as another one is written: with its exponent, its plus
+// sign, its bare point and its digits behind the point, unless these are fewer than
+// least: then as many as are given.
+func restyle(like string, x float64, least, decimals int) string {
 	mantissa, exponent := cutExponent(like)
 	switch {
 	case x == 0:
@@ -177,7 +184,7 @@ func restyle(like string, x float64, decimals int) string {
 	case strings.ContainsAny(like, "xX_"):
 		return "" // a style of its own: nothing is offered
 	}
-	if d := decimalsOf(like); d > 0 {
+	if d := decimalsOf(like); d >= least {
 		decimals = d
 	}
 	if exponent != "" {

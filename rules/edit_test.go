@@ -184,6 +184,18 @@ func TestNormalisedFromFloat32(t *testing.T) {
 	assert.Equal(t, text, texts(v), "the value itself is not changed")
 }
 
+// Where a writer drops zeros, 0.5 has as many digits as the others, and gets them.
+func TestNormalisedWithDroppedZeros(t *testing.T) {
+	v := placed(value(convention.Rotation, "0.5019999999999999 -0.5 0.7071067811865476 0.7071067811865476 0.7071067811865476 0. -0.5 0.5 0.7071067811865476", convention.RowMajor))
+	v.Uncertainty = 0.01
+	found := CheckValues([]*Value{v})
+	require.Len(t, found, 1)
+	require.NotNil(t, found[0].Edit)
+	now := value(convention.Rotation, strings.Join(found[0].Edit.Now, " "), convention.RowMajor)
+	assert.Empty(t, CheckValues([]*Value{now}))
+	assert.Len(t, strings.TrimPrefix(now.Numbers[1].Text, "-"), 18)
+}
+
 func TestRestyle(t *testing.T) {
 	for _, c := range []struct {
 		like string
@@ -195,6 +207,8 @@ func TestRestyle(t *testing.T) {
 		{"1.250e-3", 0.0012511, "1.251e-3"}, {"-1.25E+02", -125.4, "-1.25E+02"}, {"7.07D-01", 0.708, "7.08D-01"},
 		{"-0.001", -0.0001, "0.000"}, {"0x1p-3", 0.3, ""}, {"1_0.5", 0.3, ""}, {"1e", 0.3, ""},
 	} {
-		assert.Equal(t, c.want, restyle(c.like, c.x, 4), c.like)
+		assert.Equal(t, c.want, restyle(c.like, c.x, 1, 4), c.like)
 	}
+	assert.Equal(t, "0.50049", restyle("0.5", 0.50049, 5, 5))
+	assert.Equal(t, "5.0049e-1", restyle("5e-1", 0.50049, 4, 4))
 }
