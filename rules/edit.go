@@ -88,18 +88,17 @@ func (v *Value) normalised(numbers map[int]float64, moved float64) *Edit {
 	for i := range numbers {
 		decimals = max(decimals, decimalsOf(v.Numbers[i].Text))
 	}
-	// Each number keeps its digits; but where a writer drops zeros, 0.5 may have as
-	// many as the others, and then all get as many as the longest.
-	for _, least := range []int{1, decimals} {
-		texts := map[int]string{}
-		for i, x := range numbers {
-			texts[i] = restyle(v.Numbers[i].Text, x, least, decimals)
+	texts := map[int]string{}
+	for i, x := range numbers {
+		// Each number keeps its digits, unless the group is known better than they
+		// show: where a writer drops zeros, 0.5 has as many digits as the others.
+		least := 1
+		if n, ok := tolerance.Read(v.Numbers[i].Text); !ok || n.Half > allowed.Half*(1+1e-9) {
+			least = decimals
 		}
-		if e := v.edited(why, texts, func(*Value) bool { return true }); e != nil {
-			return e
-		}
+		texts[i] = restyle(v.Numbers[i].Text, x, least, decimals)
 	}
-	return nil
+	return v.edited(why, texts, func(*Value) bool { return true })
 }
 
 // normalisedVector is the edit that gives the first n numbers of the value, which
