@@ -1,6 +1,9 @@
 package rules
 
-import "dextral/core/kinematics"
+import (
+	"dextral/core/identify"
+	"dextral/core/kinematics"
+)
 
 // Series is what one pass over a log found out about one orientation channel.
 //
@@ -24,6 +27,7 @@ type Series struct {
 	Ranges     []Range               // of each number, in the order of Value.Numbers; finite numbers only
 	Continuity kinematics.Continuity // quaternions; its scalar is only that if a claim says where the scalar is
 	Matrices   Matrices              // rotation matrices and rigid transforms
+	Rates      *Rates                // the angular rates beside a quaternion; nil if there are none
 
 	// RowPlace gives the place of a data row. Rows of text files are lines: row
 	// 1 is the first line of data, and comments and blank lines between count.
@@ -31,6 +35,17 @@ type Series struct {
 	// Stamp is the time stamp, as written up to trailing zeros, that a fold
 	// calls T. It is nil if the log has no time stamps.
 	Stamp func(t float64) string
+}
+
+// Rates are the angular rates beside a quaternion and what they say about its
+// conventions.
+type Rates struct {
+	Columns   []string // x, y, z
+	Place     Place    // of their header, if that states the unit
+	Unit      Claim    // of angle; Says is nil if nobody states it
+	Claim     identify.SeriesClaim
+	Result    identify.SeriesResult
+	Stretches []identify.Stretch // more than one if the log changes its convention
 }
 
 // Range is the least and the greatest of some numbers.

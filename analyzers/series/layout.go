@@ -34,6 +34,8 @@ type layout struct {
 	undecided []*rules.Value
 	time      *columns.Time
 	clock     rules.Clock // column, place, unit
+	rates     columns.Rates
+	rateNames []string
 }
 
 // MaxChannels bounds the channels of a log, and so the memory of its fold.
@@ -76,7 +78,8 @@ func plan(h *head, opts Options) *layout {
 	}
 	if len(l.channels) > 0 {
 		l.pair()
-		l.setTime(found.Time, h, header)
+		l.setTime(timeColumn(found.Time, header, opts.Time), h, header)
+		l.setRates(header)
 	}
 	return l
 }

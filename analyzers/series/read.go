@@ -21,6 +21,8 @@ type Options struct {
 	// Workers is the number of blocks that are folded at a time; below 2 there is
 	// one, in the caller's goroutine.
 	Workers int
+	// Time names the column of time stamps; "" leaves that to the names.
+	Time string
 
 	block int // size of blocks in tests
 }
@@ -99,6 +101,10 @@ func (l *layout) result(path, format string, origin int64, total *part) Result {
 			s.Stamp = func(t float64) string { return l.fold.Start.After(t).String() }
 		}
 		r.Channels = append(r.Channels, s)
+	}
+	for i := range l.fold.Rates {
+		s := r.Channels[l.fold.Rates[i].Channel]
+		s.Rates = l.ratesOf(s, &f.Rates[i])
 	}
 	for i, p := range l.fold.Pairs {
 		pair := &rules.SeriesPair{First: r.Channels[p[0]], Second: r.Channels[p[1]]}

@@ -13,9 +13,10 @@ import (
 // Sample is one row of a series: four numbers of an orientation as written and
 // the angular rate beside them.
 type Sample struct {
-	T float64    // s
-	Q [4]float64 // a quaternion
-	W rotor.Vec  // an angular rate, in the unit as written
+	Row int64
+	T   float64    // s
+	Q   [4]float64 // a quaternion
+	W   rotor.Vec  // an angular rate, in the unit as written
 }
 
 // Sense is the direction of the orientations of a series.
@@ -79,6 +80,11 @@ type SeriesClass struct {
 	Readings []SeriesReading // cheapest first
 	Cost     int
 	Residual float64 // RMS of rate minus prediction, as a part of the RMS of the rates
+
+	axes    int // of its first reading by the rotor, scalar first
+	unit    convention.Unit
+	cube    Cube
+	negated bool
 }
 
 // String says how the cheapest readings read the series.
@@ -112,6 +118,30 @@ type SeriesResult struct {
 	Biased  bool          // a constant offset of the rates has been taken out
 	Motion  Motion
 	Reason  string
+
+	// Of the best class, if it is decided and the motion shows them:
+
+	Delay Estimate    // s by which the rates are late
+	Bias  [3]Estimate // rad/s, constant offset of each rate
+}
+
+// Estimate is a number with its standard deviation; Known if it is more than
+// three of these from zero and the motion can show it.
+type Estimate struct {
+	Value, Deviation float64
+	Known            bool
+}
+
+// Certain are the changes that every class makes that the rates do not exclude.
+func (r SeriesResult) Certain() []Change {
+	if len(r.Best.Readings) == 0 {
+		return nil
+	}
+	common := r.Best.Readings[0].changes
+	for _, t := range r.Ties {
+		common &= t.Readings[0].changes
+	}
+	return common.list()
 }
 
 // Tied reports whether another class is as cheap as Best and not excluded.
@@ -126,36 +156,13 @@ type Motion struct {
 	Swings  int     // times that a component of the rate swings over its mean
 }
 
-// SeriesFold takes in a series row by row, in memory that does not grow with
-// its length. The zero fold is ready.
-type SeriesFold struct {
-	predicted [2][]rotor.Vec // rad/s in body and in space axes, if the scalar is first and R maps body to space
-	rate      []rotor.Vec
-	dt        []float64
-
-	first, last Sample // of the window that is open
-	open        bool
-	turned      rotor.Vec // integral of the rate over it
-	stride      int       // one window of so many is kept
-	passed      int       // windows since the last one kept
-}
-
-// maxWindows bounds the windows that are kept: when there are more, every other
-// one is dropped, and from then on every other new one.
-const maxWindows = 1 << 14
-
-// minWindow is the least step, in s, over which rates are predicted: the
-// difference of two orientations a few milliseconds apart is mostly their rounding.
-const minWindow = 0.1
-
 // maxTurn is the largest turn, in rad, of a step. Beyond a right angle the
 // mean rate is not the rate of the shorter turn; what turns faster cannot be
 // judged from these samples.
 const maxTurn = math.Pi / 2
 
 // Series tells in which conventions the rates of a series are those of its
-// orientations. Rows must be in order of time; rows with a repeated stamp or
-// with numbers that are not finite are left out.
+// orientations. Rows with numbers that are not finite are left out.
 //
 // Rates and predictions meet over windows of 0.1 s or one step. For each of two
 // kinds of axes the sums of rate times prediction are a 3x3 matrix, from which
@@ -169,10 +176,18 @@ func Series(samples []Sample, claim SeriesClaim) SeriesResult {
 	return f.Result(claim)
 }
 
-// Result compares what has been taken in with the claim. It ends the fold:
-// outliers are left out of it.
+// Result compares what has been taken in with the claim.
 func (s *SeriesFold) Result(claim SeriesClaim) SeriesResult {
-	s.trim()
+	all := view(s.Windows())
+	all.trim()
+	r := all.result(claim)
+	if r.Decided {
+		all.refine(&r)
+	}
+	return r
+}
+
+func (s *spans) result(claim SeriesClaim) SeriesResult {
 	r := SeriesResult{Motion: s.motion()}
 	if r.Motion.Windows < 3 || r.Motion.Turn == 0 {
 		r.Reason = "there is too little motion: " + r.Motion.String()
@@ -197,60 +212,6 @@ func (m Motion) String() string {
 	return fmt.Sprintf("a turn of %s in %d windows, %.2g about a second axis", degrees(m.Turn), m.Windows, m.Second)
 }
 
-// Add takes in one row.
-func (s *SeriesFold) Add(x Sample) {
-	if !x.usable() || s.open && x.T <= s.last.T {
-		return
-	}
-	if !s.open {
-		s.first, s.last, s.open = x, x, true
-		return
-	}
-	s.turned = s.turned.Add(x.W.Add(s.last.W).Scale((x.T - s.last.T) / 2))
-	s.last = x
-	if dt := x.T - s.first.T; dt >= minWindow*(1-1e-9) {
-		s.close(&x, dt)
-		s.first, s.turned = x, rotor.Vec{}
-	}
-}
-
-func (x *Sample) usable() bool {
-	sum := x.T + x.W.X + x.W.Y + x.W.Z
-	n := 0.0
-	for _, c := range x.Q {
-		sum, n = sum+c, n+c*c
-	}
-	return sum-sum == 0 && n > 0
-}
-
-// close predicts the mean rate of the window that ends with b.
-func (s *SeriesFold) close(b *Sample, dt float64) {
-	if s.passed++; s.passed < s.stride {
-		return
-	}
-	x, okA := s.first.rotor().Unit()
-	y, okB := b.rotor().Unit()
-	if !okA || !okB {
-		return
-	}
-	body := rotor.Relative(x, y).RotationVector()
-	if body.Norm() > maxTurn {
-		return // for every reading: all of them permute and negate components
-	}
-	s.passed = 0
-	s.predicted[0] = append(s.predicted[0], body.Scale(1/dt))
-	s.predicted[1] = append(s.predicted[1], x.Rotate(body).Scale(1/dt))
-	s.rate, s.dt = append(s.rate, s.turned.Scale(1/dt)), append(s.dt, dt)
-	if len(s.rate) == maxWindows {
-		s.stride = max(2, 2*s.stride)
-		half := make([]bool, maxWindows)
-		for i := range half {
-			half[i] = i%2 == 1
-		}
-		s.keep(half)
-	}
-}
-
 func (x *Sample) rotor() rotor.Rotor { return rotor.FromQuaternion(x.Q[0], x.Q[1], x.Q[2], x.Q[3]) }
 
 // trim leaves out windows in which the size of the rate and that of the turn do
@@ -258,7 +219,7 @@ func (x *Sample) rotor() rotor.Rotor { return rotor.FromQuaternion(x.Q[0], x.Q[1
 // reading but the unit, so this favours none. A window is left out if the two
 // differ by more than half of the larger and by ten times what is usual, and no more
 // than a tenth are: more are no outliers but a contradiction.
-func (s *SeriesFold) trim() {
+func (s *spans) trim() {
 	n := len(s.rate)
 	if n < 10 {
 		return
@@ -290,11 +251,11 @@ const outlier = 10
 
 var units = [2]convention.Unit{convention.Radian, convention.Degree}
 
-func (s *SeriesFold) keep(kept []bool) {
+func (s *spans) keep(kept []bool) {
 	for a := range s.predicted {
 		s.predicted[a] = filter(s.predicted[a], kept)
 	}
-	s.rate, s.dt = filter(s.rate, kept), filter(s.dt, kept)
+	s.rate, s.dt, s.window = filter(s.rate, kept), filter(s.dt, kept), filter(s.window, kept)
 }
 
 // filter keeps some elements, in place.

@@ -20,7 +20,7 @@ type sums struct {
 	power [3][3]float64    // sum of prediction_i prediction_j in body axes
 }
 
-func (s *SeriesFold) sums() *sums {
+func (s *spans) sums() *sums {
 	t := &sums{n: float64(len(s.rate))}
 	for i, w := range s.rate {
 		t.rate += w.Dot(w)
@@ -79,7 +79,7 @@ func (t *sums) residual(axes int, unit float64, c Cube, negated bool) float64 {
 }
 
 // motion sums up what the predictions show.
-func (s *SeriesFold) motion() Motion {
+func (s *spans) motion() Motion {
 	m := Motion{Windows: len(s.rate)}
 	if m.Windows == 0 {
 		return m
@@ -102,7 +102,7 @@ func (s *SeriesFold) motion() Motion {
 // swings counts how often a component of the prediction goes from a quarter of its RMS
 // above its mean to as much below, or back. Components of less than a tenth of the
 // rate do not count.
-func (s *SeriesFold) swings(axis rotor.Vec, rate float64) int {
+func (s *spans) swings(axis rotor.Vec, rate float64) int {
 	var sum, square float64
 	for _, v := range s.predicted[0] {
 		x := v.Dot(axis)
@@ -152,19 +152,33 @@ func sq(x float64) float64 { return x * x }
 // axes, units, maps and signs.
 const seriesClasses = 2 * 2 * 24 * 2
 
-// judge forms the classes and weighs them against the claim.
-func (r *SeriesResult) judge(t *sums, claim SeriesClaim) {
-	classes := make([]SeriesClass, 0, seriesClasses)
+// allClasses are the classes under a claim, without residuals.
+func allClasses(claim SeriesClaim) []SeriesClass {
+	all := make([]SeriesClass, 0, seriesClasses)
 	for axes := range 2 {
 		for _, unit := range units {
 			for c := range Cube(24) {
 				for _, negated := range [2]bool{false, true} {
-					class := SeriesClass{Residual: t.residual(axes, unit.InRadians(), c, negated)}
-					class.name(claim, axes, unit, c, negated)
-					classes = append(classes, class)
+					class := SeriesClass{axes: axes, unit: unit, cube: c, negated: negated}
+					class.name(claim)
+					all = append(all, class)
 				}
 			}
 		}
+	}
+	return all
+}
+
+// of is the residual of a class.
+func (t *sums) of(c *SeriesClass) float64 {
+	return t.residual(c.axes, c.unit.InRadians(), c.cube, c.negated)
+}
+
+// judge forms the classes and weighs them against the claim.
+func (r *SeriesResult) judge(t *sums, claim SeriesClaim) {
+	classes := allClasses(claim)
+	for i := range classes {
+		classes[i].Residual = t.of(&classes[i])
 	}
 	slices.SortStableFunc(classes, func(x, y SeriesClass) int {
 		switch {
@@ -224,10 +238,10 @@ func (r *SeriesResult) decide(nearest float64, stated bool) {
 
 // name words the class in its four ways: by the rotor or its reverse, with the
 // scalar first or last.
-func (c *SeriesClass) name(claim SeriesClaim, axes int, unit convention.Unit, m Cube, negated bool) {
+func (c *SeriesClass) name(claim SeriesClaim) {
 	one := SeriesReading{
 		Scalar: convention.ScalarFirst, Sense: BodyToSpace,
-		Axes: convention.BodyRates + convention.RateAxes(axes), Unit: unit, Negated: negated, Map: m,
+		Axes: convention.BodyRates + convention.RateAxes(c.axes), Unit: c.unit, Negated: c.negated, Map: c.cube,
 	}
 	last := one.lastPlace()
 	c.Readings = []SeriesReading{one, one.reverse(), last, last.reverse()}

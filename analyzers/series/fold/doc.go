@@ -13,7 +13,9 @@ import (
 
 	"dextral/analyzers/series/decimal"
 	"dextral/core/convention"
+	"dextral/core/identify"
 	"dextral/core/kinematics"
+	"dextral/core/rotor"
 )
 
 // Cell is one number of a row. The zero value is a gap: nothing was written.
@@ -48,6 +50,7 @@ type Layout struct {
 	Per      int64
 	Start    Stamp    // from which times are counted
 	Pairs    [][2]int // channels that state the same orientation
+	Rates    []Rates  // quaternions with angular rates beside them
 }
 
 // Channel says which cells make an orientation.
@@ -60,19 +63,28 @@ type Channel struct {
 	Rotation []int
 }
 
+// Rates says which cells hold the angular rates beside a quaternion.
+type Rates struct {
+	Channel   int
+	Cells     [3]int
+	PerSecond float64 // units of time in a second
+}
+
 // Fold is the summary of the rows of a log, or of consecutive ones. Make it with New.
 type Fold struct {
 	Rows     int64
 	Channels []Summary
 	Clock    Clock
 	Pairs    []Sample
+	Rates    []identify.SeriesFold
 
 	layout *Layout
 }
 
 // New makes a fold over nothing.
 func New(l *Layout) *Fold {
-	f := &Fold{Channels: make([]Summary, len(l.Channels)), Pairs: make([]Sample, len(l.Pairs)), layout: l}
+	f := &Fold{Channels: make([]Summary, len(l.Channels)), Pairs: make([]Sample, len(l.Pairs)),
+		Rates: make([]identify.SeriesFold, len(l.Rates)), layout: l}
 	for i, c := range l.Channels {
 		f.Channels[i].Ranges = make([]Range, len(c.Cells))
 	}
@@ -89,6 +101,9 @@ func (f *Fold) Reset() {
 	}
 	for i := range f.Pairs {
 		f.Pairs[i].reset()
+	}
+	for i := range f.Rates {
+		f.Rates[i].Reset()
 	}
 }
 
@@ -110,6 +125,9 @@ func (f *Fold) Row(row int64, cells []Cell) {
 		a, b := &f.layout.Channels[f.layout.Pairs[i][0]], &f.layout.Channels[f.layout.Pairs[i][1]]
 		f.Pairs[i].push(row, a, b, cells)
 	}
+	for i := range f.Rates {
+		f.layout.Rates[i].push(&f.Rates[i], f.layout, at, cells)
+	}
 }
 
 // Merge adds the fold over the rows that follow those of f. Both have the same layout.
@@ -122,4 +140,17 @@ func (f *Fold) Merge(next *Fold) {
 	for i := range f.Pairs {
 		f.Pairs[i].merge(&next.Pairs[i])
 	}
+	for i := range f.Rates {
+		f.Rates[i].Merge(&next.Rates[i])
+	}
+}
+
+// push adds the quaternion as written and the rates of a row.
+func (r *Rates) push(f *identify.SeriesFold, l *Layout, at kinematics.Place, cells []Cell) {
+	s := identify.Sample{Row: at.Row, T: at.T / r.PerSecond}
+	for i, c := range l.Channels[r.Channel].Cells {
+		s.Q[i] = cells[c].Value()
+	}
+	s.W = rotor.Vec{X: cells[r.Cells[0]].Value(), Y: cells[r.Cells[1]].Value(), Z: cells[r.Cells[2]].Value()}
+	f.Add(s)
 }
