@@ -34,6 +34,8 @@ const (
 	SignJump              = "sign-jump"
 	NormLoss              = "norm-loss"
 	StampsNotIncreasing   = "stamps-not-increasing"
+	GyroDisagrees         = "gyro-disagrees"
+	ConventionChanges     = "convention-changes"
 	SequenceMislabelled   = "sequence-mislabelled"
 	MovingFixedSwapped    = "moving-fixed-swapped"
 	ScalarMisplaced       = "scalar-misplaced"
@@ -81,6 +83,8 @@ var catalogue = []Rule{
 	{SignJump, "A logged rotor jumps from R to -R while the rotation barely moves.", Warning},
 	{NormLoss, "A logged quaternion loses its unit norm.", Warning},
 	{StampsNotIncreasing, "The time stamps of an attitude log stand still or run backwards.", Warning},
+	{GyroDisagrees, "The angular rates of a log are those of its orientations only in another convention than stated.", Error},
+	{ConventionChanges, "From some row on a log obeys another convention than before.", Error},
 	{SequenceMislabelled, "Angles and a twin value agree only if the turns are taken in another order than stated.", Error},
 	{MovingFixedSwapped, "Angles and a twin value agree only if the turns are about fixed axes instead of moving ones, or the reverse.", Error},
 	{ScalarMisplaced, "A quaternion and a twin value agree only if its scalar stands at the other end.", Error},

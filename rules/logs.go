@@ -6,6 +6,7 @@ import (
 	"strings"
 
 	"dextral/core/convention"
+	"dextral/core/identify"
 	"dextral/core/kinematics"
 	"dextral/core/tolerance"
 )
@@ -20,10 +21,17 @@ func CheckSeries(s *Series) []*Finding {
 	case convention.Quaternion:
 		found = add(found, normLoss(s))
 		found = add(found, signJumps(s))
+		found = add(found, checkRates(s))
 	case convention.Rotation, convention.Transform:
 		found = add(found, matrixRows(s))
 	}
 	return found
+}
+
+// placeOf is where a sample of rates stands; its time is in seconds.
+func (s *Series) placeOf(x *identify.Sample) kinematics.Place {
+	per := map[string]float64{"ms": 1e3, "us": 1e6, "ns": 1e9}[s.Unit]
+	return kinematics.Place{Row: x.Row, T: x.T * max(per, 1)}
 }
 
 // at is the place of a row, with row number and time stamp.

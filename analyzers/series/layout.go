@@ -36,6 +36,7 @@ type layout struct {
 	clock     rules.Clock // column, place, unit
 	rates     columns.Rates
 	rateNames []string
+	timeless  bool // rates without time stamps
 }
 
 // MaxChannels bounds the channels of a log, and so the memory of its fold.

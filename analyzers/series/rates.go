@@ -32,12 +32,16 @@ func timeColumn(found *columns.Time, header []columns.Column, name string) *colu
 // prove nothing.
 func (l *layout) setRates(header []columns.Column) {
 	rates, ok := columns.FindRates(header)
-	if !ok || l.time == nil {
+	if !ok {
 		return
 	}
 	for i, c := range l.channels {
 		if c.Value.Form != convention.Quaternion {
 			continue
+		}
+		if l.time == nil {
+			l.timeless = true
+			return
 		}
 		f := fold.Rates{Channel: i, PerSecond: perSecond[l.clock.Unit]}
 		for k, column := range rates.Columns {

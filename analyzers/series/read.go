@@ -40,6 +40,8 @@ type Result struct {
 	Undecided []*rules.Value // channels that are not read, with Why; numbers of the first row
 	BadRows   int64          // rows that could not be read
 	FirstBad  []BadRow       // the first MaxBadRows of them
+
+	RatesWithoutTime bool // there are quaternions and angular rates, and no time stamps to compare them by
 }
 
 // BadRow is a row that could not be read.
@@ -102,6 +104,7 @@ func (l *layout) result(path, format string, origin int64, total *part) Result {
 		}
 		r.Channels = append(r.Channels, s)
 	}
+	r.RatesWithoutTime = l.timeless
 	for i := range l.fold.Rates {
 		s := r.Channels[l.fold.Rates[i].Channel]
 		s.Rates = l.ratesOf(s, &f.Rates[i])

@@ -4,14 +4,11 @@ import (
 	"errors"
 	"fmt"
 	"maps"
-	"os"
-	"path/filepath"
 	"slices"
 	"strings"
 	"time"
 
 	"dextral/analyzers/audit"
-	"dextral/analyzers/series/rates"
 	"dextral/core/angle"
 	"dextral/core/convention"
 	"dextral/core/identify"
@@ -160,7 +157,7 @@ func statement(flag string, form convention.Form, count int, text string) (*rule
 
 // file compares the values of a file that state one orientation.
 func (g *given) file(c *cobra.Command, s streams, path string) error {
-	if done, err := identifyLog(s, path, g.time); done {
+	if done, err := identifyLog(c.Context(), s, path, g.time); done {
 		return err
 	}
 	r, err := audit.Run(c.Context(), audit.Options{Paths: []string{path}, Today: time.Now()})
@@ -190,36 +187,6 @@ func (g *given) file(c *cobra.Command, s streams, path string) error {
 		}
 	}
 	return worst
-}
-
-// identifyLog reads a file as a log with angular rates. It is not done if the
-// file is none.
-func identifyLog(s streams, path, time string) (done bool, err error) {
-	if ext := strings.ToLower(filepath.Ext(path)); ext != ".csv" && ext != ".txt" && ext != ".log" {
-		return false, nil
-	}
-	f, err := os.Open(path)
-	if err != nil {
-		return false, nil // the audit of the file says why
-	}
-	defer f.Close()
-	l, err := rates.Identify(path, f, time)
-	if errors.Is(err, rates.ErrNone) {
-		return false, nil
-	}
-	if err != nil {
-		return true, err
-	}
-	if err := report.IdentifiedSeries(s.out, path, l.Columns, l.Rows, l.Result); err != nil {
-		return true, err
-	}
-	switch l.Result.Verdict {
-	case identify.Agree:
-		return true, nil
-	case identify.Undecided:
-		return true, status(exitUndecided)
-	}
-	return true, status(exitFindings)
 }
 
 // groupsOf are the values of the given keys, or those that state one orientation.

@@ -84,12 +84,26 @@ const maxTies = 4
 
 // IdentifiedSeries prints which conventions the orientations and rates of a log
 // obey.
-func IdentifiedSeries(w io.Writer, path string, columns []string, rows int64, r identify.SeriesResult) error {
+func IdentifiedSeries(w io.Writer, s *rules.Series) error {
 	p := newPrinter(w, Options{})
-	p.section("given", fmt.Sprintf("%s: %s rows; quaternion %s; rates %s; time %s", path, grouped(int(rows)),
-		strings.Join(columns[:4], ", "), strings.Join(columns[4:7], ", "), columns[7]))
+	r := &s.Rates.Result
+	given := fmt.Sprintf("%s: %s rows; quaternion %s; rates %s", s.Value.Place.Path, grouped(int(s.Rows)), strings.Join(s.Columns, ", "), strings.Join(s.Rates.Columns, ", "))
+	if s.Clock != nil {
+		given += "; time " + s.Clock.Column
+	}
+	p.section("given", given)
 	p.section("motion", r.Motion.String())
-	p.section("verdict", seriesVerdict(r))
+	if len(s.Rates.Stretches) > 1 {
+		p.section("verdict", "the log changes its convention")
+		word := "stretches"
+		for _, t := range s.Rates.Stretches {
+			p.section(word, fmt.Sprintf("rows %d to %d: %s; residual %.3g, by its neighbour's reading %.3g", t.From.Row, t.To.Row, t.Class.Readings[0], t.Residual, t.Other))
+			word = ""
+		}
+		p.line(residualMeans)
+		return p.Flush()
+	}
+	p.section("verdict", seriesVerdict(*r))
 	word := "readings"
 	print := func(c identify.SeriesClass, note string) {
 		if len(c.Readings) > 0 {
@@ -109,15 +123,25 @@ func IdentifiedSeries(w io.Writer, path string, columns []string, rows int64, r 
 	if len(r.Stated.Readings) > 0 && r.Verdict == identify.Contradicted {
 		print(r.Stated, "as stated")
 	}
+	if r.Delay.Known {
+		p.section("delay", fmt.Sprintf("the rates are late by %.3g s, give or take %.1g s", r.Delay.Value, r.Delay.Deviation))
+	}
+	for i, b := range r.Bias {
+		if b.Known {
+			p.section("offset", fmt.Sprintf("%s: %.3g rad/s, give or take %.1g", s.Rates.Columns[i], b.Value, b.Deviation))
+		}
+	}
 	if r.Biased {
-		p.section("bias", "a constant offset of the rates was taken out")
+		p.section("offset", "a constant offset of the rates was taken out")
 	}
 	if r.Reason != "" {
 		p.section("because", r.Reason)
 	}
-	p.line("residual: RMS of rate minus prediction over RMS of the rates")
+	p.line(residualMeans)
 	return p.Flush()
 }
+
+const residualMeans = "residual: RMS of rate minus prediction over RMS of the rates"
 
 func seriesVerdict(r identify.SeriesResult) string {
 	switch r.Verdict {

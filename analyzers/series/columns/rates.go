@@ -59,7 +59,8 @@ func FindRates(columns []Column) (Rates, bool) {
 // rateComponent takes the name of a rate apart.
 func rateComponent(name string) (stem string, axis int, ok bool) {
 	name = strings.TrimSpace(name)
-	if m := bare.FindStringSubmatch(name); m != nil {
+	if text, _ := cutUnit(name); bare.MatchString(text) {
+		m := bare.FindStringSubmatch(text)
 		return "w", axisOf(m[1]), true
 	}
 	if !speaksOfRate.MatchString(name) || notRate.MatchString(name) {
@@ -76,8 +77,8 @@ func rateComponent(name string) (stem string, axis int, ok bool) {
 func axisOf(letter string) int { return strings.Index("xyz", strings.ToLower(letter)) }
 
 var (
-	degreesPerSecond = regexp.MustCompile(`(?i)deg(rees?)?\s*(/|per|_p?)?\s*s|dps|°`)
-	radiansPerSecond = regexp.MustCompile(`(?i)rad(ians?)?\s*(/|per|_p?)?\s*s`)
+	degreesPerSecond = regexp.MustCompile(`(?i)deg(rees?)?[\s_]*(/|per|_p?)?[\s_]*s|dps|°`)
+	radiansPerSecond = regexp.MustCompile(`(?i)rad(ians?)?[\s_]*(/|per|_p?)?[\s_]*s`)
 )
 
 // rateUnit is the unit of angle that the name of a rate states.
