@@ -34,6 +34,9 @@ const (
 	SignJump              = "sign-jump"
 	NormLoss              = "norm-loss"
 	StampsNotIncreasing   = "stamps-not-increasing"
+	OrientationJump       = "orientation-jump"
+	StaleRows             = "stale-rows"
+	GimbalLock            = "gimbal-lock"
 	GyroDisagrees         = "gyro-disagrees"
 	ConventionChanges     = "convention-changes"
 	SequenceMislabelled   = "sequence-mislabelled"
@@ -83,6 +86,9 @@ var catalogue = []Rule{
 	{SignJump, "A logged rotor jumps from R to -R while the rotation barely moves.", Warning},
 	{NormLoss, "A logged quaternion loses its unit norm.", Warning},
 	{StampsNotIncreasing, "The time stamps of an attitude log stand still or run backwards.", Warning},
+	{OrientationJump, "A logged orientation jumps as it turns nowhere else.", Warning},
+	{StaleRows, "A logged orientation stands still for many rows and then catches up at once.", Warning},
+	{GimbalLock, "A logged pitch comes so near a right angle that roll and yaw lose their meaning.", Warning},
 	{GyroDisagrees, "The angular rates of a log are those of its orientations only in another convention than stated.", Error},
 	{ConventionChanges, "From some row on a log obeys another convention than before.", Error},
 	{SequenceMislabelled, "Angles and a twin value agree only if the turns are taken in another order than stated.", Error},

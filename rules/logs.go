@@ -21,9 +21,14 @@ func CheckSeries(s *Series) []*Finding {
 	case convention.Quaternion:
 		found = add(found, normLoss(s))
 		found = add(found, signJumps(s))
+		found = add(found, rowsNotFinite(s, s.Continuity.NonFinite, s.Continuity.Rows))
+		found = append(found, leapsOf(s)...)
 		found = add(found, checkRates(s))
 	case convention.Rotation, convention.Transform:
 		found = add(found, matrixRows(s))
+		found = add(found, rowsNotFinite(s, s.Matrices.NonFinite, s.Matrices.NonFinite.Count+s.Matrices.Zero.Count+s.Matrices.Count))
+	case convention.Angles:
+		found = append(found, checkAngles(s)...)
 	}
 	return found
 }

@@ -27,6 +27,7 @@ type Series struct {
 	Ranges     []Range               // of each number, in the order of Value.Numbers; finite numbers only
 	Continuity kinematics.Continuity // quaternions; its scalar is only that if a claim says where the scalar is
 	Matrices   Matrices              // rotation matrices and rigid transforms
+	Wraps      kinematics.Tally      // angles: steps of one of them by 2 pi, within 5 %
 	Rates      *Rates                // the angular rates beside a quaternion; nil if there are none
 
 	// RowPlace gives the place of a data row. Rows of text files are lines: row

@@ -127,7 +127,7 @@ func (l *layout) series(i int, f *fold.Summary, place func(int64) rules.Place, c
 	s := &rules.Series{
 		Value: l.channels[i].Value, Columns: l.names[i], Clock: clock,
 		Half: f.Digits.Half(), Float32: f.Digits.Single(), Scale: f.Digits.Scale(),
-		Gaps: f.Gaps, Continuity: f.Continuity, Matrices: f.Matrices.Rules(), RowPlace: place,
+		Gaps: f.Gaps, Continuity: f.Continuity, Matrices: f.Matrices.Rules(), Wraps: f.Wraps.Tally, RowPlace: place,
 	}
 	for k := range f.Ranges {
 		s.Ranges = append(s.Ranges, f.Ranges[k].Range)

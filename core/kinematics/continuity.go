@@ -42,6 +42,7 @@ type Continuity struct {
 	Wide       Tally          // steps of more than 90 degrees with a change of sign
 	Largest    Move           // the widest step, signs ignored; zero if nothing moves
 
+	leaps       leaps
 	rotors      int64 // rows that are neither
 	first, last sample
 }
@@ -144,6 +145,7 @@ func (c *Continuity) follow(next Continuity) {
 	c.JumpScalar = max(c.JumpScalar, next.JumpScalar)
 	c.Wide.add(next.Wide)
 	c.move(next.Largest)
+	c.leaps.merge(&next.leaps)
 	c.last = next.last
 	c.rotors += next.rotors
 }
@@ -156,6 +158,7 @@ func (c *Continuity) step(a, b sample) {
 		d = b.r.Add(a.r)
 	}
 	m := Move{Place: b.place, square: d.Dot(d)}
+	c.leaps.step(&a, &b, m.square)
 	if dot < 0 || m.square > c.Largest.square { // else the angle is of no interest
 		m.Angle = rotor.Angle(a.r, b.r)
 		c.move(m)

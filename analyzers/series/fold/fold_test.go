@@ -58,6 +58,7 @@ func layout() *Layout {
 		},
 		Time: 0, Fine: -1, Start: Stamp{known: true, Exact: true},
 		Pairs: [][2]int{{0, 1}, {0, 2}},
+		Rates: []Rates{{0, [3]int{5, 6, 7}, 1}},
 	}
 }
 
@@ -121,7 +122,7 @@ func same(t require.TestingT, want, got *Fold) {
 // print shows all of a fold but its layout; unlike ==, NaN is equal to NaN. What a
 // sample holds beyond its count is left over from before.
 func print(f *Fold) string {
-	s := fmt.Sprintf("%d %+v %+v", f.Rows, f.Clock, f.Channels)
+	s := fmt.Sprintf("%d %+v %+v %+v", f.Rows, f.Clock, f.Channels, f.Rates)
 	for i := range f.Pairs {
 		p := &f.Pairs[i]
 		s += fmt.Sprintf(" level %d %v %v", p.level, p.Rows[:p.Count], p.Numbers[:p.Count])

@@ -60,6 +60,7 @@ type Summary struct {
 	Digits     Digits
 	Continuity kinematics.Continuity // quaternions
 	Matrices   Matrices              // rotation matrices and rigid transforms
+	Wraps      Wraps                 // angles
 }
 
 // push adds the channel's numbers in a row. A row without any number is a gap;
@@ -92,6 +93,8 @@ func (s *Summary) push(c *Channel, at kinematics.Place, cells []Cell) {
 			m[k/3][k%3] = cells[cell].Value()
 		}
 		s.Matrices.push(at, m)
+	case convention.Angles:
+		s.Wraps.push(at, [3]float64{cells[c.Rotation[0]].Value(), cells[c.Rotation[1]].Value(), cells[c.Rotation[2]].Value()})
 	}
 }
 
@@ -107,6 +110,7 @@ func (s *Summary) merge(next *Summary) {
 	s.Digits.merge(&next.Digits)
 	s.Continuity.Merge(next.Continuity)
 	s.Matrices.merge(&next.Matrices)
+	s.Wraps.merge(&next.Wraps)
 }
 
 // Matrices is the fold over rotation matrices.
