@@ -11,6 +11,9 @@
 // anything remembered between. Rows that cannot be read are counted, the first
 // few with place and reason; the rest of the log is judged without them.
 //
+// A binary log may hold several tables, such as the topics of a ULog; each has rows,
+// stamps and channels of its own, and row 1 is its first message.
+//
 // # Blocks
 //
 // The file is cut into blocks of whole records. A block is folded by itself,

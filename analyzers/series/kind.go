@@ -8,6 +8,7 @@ import (
 	"strings"
 
 	"dextral/analyzers/series/text"
+	"dextral/analyzers/series/ulog"
 )
 
 // Kind says what sort of log a file is, if it is one. The zero Kind is none.
@@ -27,7 +28,6 @@ const HeadSize = text.MaxHead
 var magics = []struct{ magic, name string }{
 	{"#ROSBAG V", "ROS bag"},
 	{"\x89MCAP0\r\n", "MCAP"},
-	{"ULog\x01\x12\x35", "ULog"},
 	{"\x89HDF\r\n\x1a\n", "HDF5"},
 	{"MATLAB 7.3 MAT-file", "MAT-file"},
 	{"MATLAB 5.0 MAT-file", "MAT-file"},
@@ -89,6 +89,9 @@ func Recognise(name string, head []byte) Kind {
 
 func recognise(name string, head []byte) Kind {
 	extension := strings.ToLower(path.Ext(name))
+	if bytes.HasPrefix(head, []byte(ulog.Magic)) {
+		return Kind{ulogFormat, true}
+	}
 	for _, m := range magics {
 		if bytes.HasPrefix(head, []byte(m.magic)) {
 			return Kind{Name: cmp.Or(packed[m.name][extension], m.name)}

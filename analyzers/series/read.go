@@ -9,6 +9,7 @@ import (
 
 	"dextral/analyzers/series/fold"
 	"dextral/analyzers/series/text"
+	"dextral/analyzers/series/ulog"
 	"dextral/rules"
 )
 
@@ -60,6 +61,9 @@ func Read(ctx context.Context, path string, r io.Reader, opts Options) (Result, 
 		return Result{}, err
 	}
 	defer file.close()
+	if bytes.HasPrefix(file.start, []byte(ulog.Magic)) {
+		return readULog(ctx, path, io.MultiReader(bytes.NewReader(file.start), file.rest), opts)
+	}
 	t, ok := sniff(path, file.start, len(file.start) < HeadSize)
 	switch {
 	case !ok && headTooLong(file.start):

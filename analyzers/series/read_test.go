@@ -559,7 +559,7 @@ func TestRecognise(t *testing.T) {
 		{"a.csv", "", Kind{}},
 		{"a.bag", "#ROSBAG V2.0\n", Kind{Name: "ROS bag"}},
 		{"a.mcap", "\x89MCAP0\r\n", Kind{Name: "MCAP"}},
-		{"a.ulg", "ULog\x01\x12\x35\x01", Kind{Name: "ULog"}},
+		{"a.ulg", "ULog\x01\x12\x35\x01", Kind{"ULog", true}},
 		{"a.mat", "MATLAB 5.0 MAT-file, Platform", Kind{Name: "MAT-file"}},
 		{"a.h5", "\x89HDF\r\n\x1a\n", Kind{Name: "HDF5"}},
 		{"a.parquet", "PAR1\x15\x04", Kind{Name: "Parquet"}},
