@@ -94,11 +94,30 @@ func TestCorpusParticulars(t *testing.T) {
 	assert.Less(t, max(worst(m.Det.Min), worst(m.Det.Max)), 2.1e-7, "the index says 2e-7")
 }
 
+// Rows and numbers of the first row are those that a dozen lines of Python with its
+// module struct take from the file.
+func TestCorpusULog(t *testing.T) {
+	kind, r := corpusLog(t, "px4_sample_log_small.ulg")
+	assert.Equal(t, Kind{"ULog", true}, kind)
+	assert.Zero(t, r.BadRows)
+	assert.Empty(t, r.Undecided)
+	require.NotEmpty(t, r.Channels)
+	s := r.Channels[0]
+	assert.Equal(t, "vehicle_attitude.q", s.Value.Key)
+	assert.EqualValues(t, 1298, s.Rows)
+	assert.Equal(t, "us", s.Clock.Unit)
+	assert.Equal(t, "20326716", s.Clock.First)
+	assert.True(t, s.Float32)
+	assert.Equal(t, convention.ScalarFirst, s.Value.Claims.Scalar())
+	for i, want := range []float64{0.9926282167434692, 0.00946800597012043, 0.00018696938059292734, 0.12082850188016891} {
+		assert.Equal(t, want, s.Value.Numbers[i].Value)
+	}
+}
+
 func TestCorpusNotReadable(t *testing.T) {
 	for name, want := range map[string]Kind{
-		"px4_sample_log_small.ulg": {Name: "ULog"},
-		"tf_example.bag":           {Name: "ROS bag"},
-		"aem_Example14.kvn":        {Name: "CCSDS attitude ephemeris (KVN)"},
+		"tf_example.bag":    {Name: "ROS bag"},
+		"aem_Example14.kvn": {Name: "CCSDS attitude ephemeris (KVN)"},
 	} {
 		kind, r := corpusLog(t, name)
 		assert.Equal(t, want, kind, name)
