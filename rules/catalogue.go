@@ -62,6 +62,11 @@ const (
 	MirroringFunction     = "mirroring-function"
 	LongWayRound          = "long-way-round"
 	RoundTripBroken       = "round-trip-broken"
+	RoutesDiffer          = "routes-differ"
+	ConventionsMixed      = "conventions-mixed"
+	NormNotKept           = "norm-not-kept"
+	ArgumentIdle          = "argument-idle"
+	ReceiverChanged       = "receiver-changed"
 	WaiverExpired         = "waiver-expired"
 	WaiverUnused          = "waiver-unused"
 	WaiverTooBroad        = "waiver-too-broad"
@@ -114,6 +119,11 @@ var catalogue = []Rule{
 	{MirroringFunction, "A function that is to rotate, or to change between right-handed frames, mirrors.", Error},
 	{LongWayRound, "A function of two rotations gives something else for R and -R.", Warning},
 	{RoundTripBroken, "Two conversions that ought to undo each other do not.", Warning},
+	{RoutesDiffer, "Two ways of a package to the same result lead to different rotations.", Warning},
+	{ConventionsMixed, "A function stores a quaternion otherwise than the rest of its package.", Warning},
+	{NormNotKept, "A function is right for unit quaternions only, or leaves them, and does not say so.", Warning},
+	{ArgumentIdle, "A function on rotations does not depend on one of its arguments.", Note},
+	{ReceiverChanged, "A method that reads like a getter changes the rotation that it is called on.", Warning},
 	{WaiverExpired, "A waiver has passed its last day.", Warning},
 	{WaiverUnused, "A waiver matches no finding.", Warning},
 	{WaiverTooBroad, "A waiver accepts more than somebody can have looked at.", Warning},

@@ -12,11 +12,15 @@ import (
 
 	"golang.org/x/tools/go/analysis"
 
+	"dextral/analyzers/gosource/idle"
 	"dextral/analyzers/gosource/literal"
 	"dextral/analyzers/gosource/longway"
 	"dextral/analyzers/gosource/mirror"
 	"dextral/analyzers/gosource/mislabelled"
+	"dextral/analyzers/gosource/mixed"
+	"dextral/analyzers/gosource/norm"
 	"dextral/analyzers/gosource/roundtrip"
+	"dextral/analyzers/gosource/routes"
 	"dextral/analyzers/gosource/singular"
 	"dextral/analyzers/gosource/wrongterm"
 	"dextral/rules"
@@ -24,7 +28,8 @@ import (
 
 // Passes are the analyzers that judge functions, beside literal, which finds the
 // values that a package states. They can be used by any driver of go/analysis.
-var Passes = []*analysis.Analyzer{longway.Analyzer, roundtrip.Analyzer, singular.Analyzer, wrongterm.Analyzer, mislabelled.Analyzer, mirror.Analyzer}
+var Passes = []*analysis.Analyzer{longway.Analyzer, roundtrip.Analyzer, singular.Analyzer, wrongterm.Analyzer, mislabelled.Analyzer, mirror.Analyzer,
+	routes.Analyzer, mixed.Analyzer, norm.Analyzer, idle.Analyzer}
 
 // File is one Go source file to audit.
 type File struct {

@@ -126,7 +126,7 @@ var defined = map[operation.Op]bool{
 // valid are the singular samples whose inputs are what a caller may hand over: no
 // zero quaternions, matrices or axes, and axes of unit length.
 func valid(q *operation.Function, id *operation.Identity) []operation.Sample {
-	axes := id.Is(operation.FromAxisAngle) || id.Is(operation.TwoVectors) || id.Readings[0].Detail == "about an axis"
+	axes := id.Is(operation.FromAxisAngle) || id.Is(operation.TwoVectors) || id.Readings[0].Detail == "about an axis" || id.Readings[0].Detail == "between vectors"
 	return slices.DeleteFunc(operation.Draw(q.In, operation.Singular, 0, 0), func(s operation.Sample) bool {
 		at := 0
 		for _, o := range q.In {
