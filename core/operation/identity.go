@@ -103,6 +103,9 @@ func (f *Function) Identify() *Identity {
 			found = t.search(solve(t))
 		}
 	}
+	if len(found) > 0 {
+		found = t.confirm(found)
+	}
 	return t.conclude(found)
 }
 

@@ -22,7 +22,6 @@ func newTrial(f *Function) *trial {
 		t.samples = append(t.samples, Draw(f.In, d.family, d.n, 1)...)
 	}
 	f.Eval(t.samples)
-	t.cover(maxIdentified)
 	t.combos = combosOf(f.In, f.Out)
 	return t
 }
@@ -212,6 +211,22 @@ func (t *trial) search(list []hypothesis) []match {
 		}
 	}
 	return found
+}
+
+// confirm holds what was found against the samples of further branches.
+func (t *trial) confirm(found []match) []match {
+	before := len(t.samples)
+	if t.cover(maxIdentified); len(t.samples) == before {
+		return found
+	}
+	scratch := make([]float64, 16)
+	var kept []match
+	for _, m := range found {
+		if again, ok := t.test(m.of, m.stored, make([]canonical, len(t.samples)), scratch); ok {
+			kept = append(kept, again)
+		}
+	}
+	return kept
 }
 
 // test holds a hypothesis against the samples, and stops at the first that
