@@ -145,5 +145,8 @@ func readByHead(ctx context.Context, f walk.File) *found {
 	if config.Recognise(f.Name, head) != "" {
 		return readConfig(ctx, f)
 	}
+	if series.IsParquet(head) {
+		return readParquet(ctx, f, file)
+	}
 	return readLog(ctx, f, head, io.MultiReader(bytes.NewReader(head), file))
 }

@@ -28,11 +28,28 @@ func readLog(ctx context.Context, f walk.File, head []byte, r io.Reader) *found 
 		return &found{kind: other}
 	}
 	read, err := series.Read(ctx, f.Path, r, series.Options{Declare: f.Policy.Declare})
+	result := logged(ctx, f, read, err)
+	if result.kind == logFile {
+		result.waiversInHead(f.Path, head)
+	}
+	return result
+}
+
+// readParquet reads a log of columns, whose directory stands at its end.
+func readParquet(ctx context.Context, f walk.File, file io.ReaderAt) *found {
+	read, err := series.ReadParquet(ctx, f.Path, file, f.Size, series.Options{Declare: f.Policy.Declare})
+	if err != nil && !f.Asked && read.Rows == 0 { // met on the way, and nothing says that it holds orientations
+		limited := failure(rules.Place{Path: f.Path}, err)
+		return &found{kind: other, limited: []report.Failure{limited}}
+	}
+	return logged(ctx, f, read, err)
+}
+
+// logged is what was found in a log.
+func logged(ctx context.Context, f walk.File, read series.Result, err error) *found {
 	result := &found{kind: logFile, series: read.Channels, pairs: read.Pairs, rows: read.Rows, values: read.Undecided}
 	if len(read.Channels) == 0 && len(read.Undecided) == 0 {
 		result.kind = other
-	} else {
-		result.waiversInHead(f.Path, head)
 	}
 	if read.BadRows > 0 {
 		result.limited = append(result.limited, badRows(f.Path, read))

@@ -52,7 +52,7 @@ func TestCorpus(t *testing.T) {
 		{"tum_freiburg1_xyz-rgbdslam_drift_short.txt", "columns 5-8", convention.Quaternion, convention.ScalarLast, 40, 0, 0, 0.5e-6, false, "s"},
 		{"kitti_00_gt.txt", "columns 1-12", convention.Transform, convention.ScalarUnstated, 4541, 0, 0, 0.5e-7, false, ""},
 		{"ros_quadruped_imu.csv", "field.orientation", convention.Quaternion, convention.ScalarFirst, 2635, 0, 248, 0.5e-12, false, "ns"},
-		{"iss_openloop_sc_ck.csv", "hps.bad_quat_iss_eci", convention.Quaternion, convention.ScalarFirst, 300, 0, 0, 0.5e-15, true, ""},
+		{"iss_openloop_sc_ck.csv", "hps.bad_quat_iss_eci", convention.Quaternion, convention.ScalarFirst, 300, 0, 0, 0.5e-15, true, "s"},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			kind, r := corpusLog(t, c.name)

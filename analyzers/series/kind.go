@@ -31,7 +31,7 @@ var magics = []struct{ magic, name string }{
 	{"\x89HDF\r\n\x1a\n", "HDF5"},
 	{"MATLAB 7.3 MAT-file", "MAT-file"},
 	{"MATLAB 5.0 MAT-file", "MAT-file"},
-	{"PAR1", "Parquet"},
+	{parquetMagic, parquetName}, // inside of a packing, where it cannot be read from its end
 	{"ARROW1", "Arrow"},
 	{"FEA1", "Feather"},
 	{"Obj\x01", "Avro"},
@@ -74,7 +74,10 @@ var promised = []string{".csv", ".tsv", ".jsonl", ".ndjson", ".jsonlines"}
 // Recognise says what kind of log a file is by its name and its first bytes.
 func Recognise(name string, head []byte) Kind {
 	p, packed := packingOf(head)
-	if !packed {
+	switch {
+	case bytes.HasPrefix(head, []byte(parquetMagic)):
+		return Kind{parquetName, true}
+	case !packed:
 		return recognise(name, head)
 	}
 	if extension := strings.ToLower(path.Ext(name)); extension == ".gz" || extension == ".zst" {

@@ -562,7 +562,7 @@ func TestRecognise(t *testing.T) {
 		{"a.ulg", "ULog\x01\x12\x35\x01", Kind{"ULog", true}},
 		{"a.mat", "MATLAB 5.0 MAT-file, Platform", Kind{Name: "MAT-file"}},
 		{"a.h5", "\x89HDF\r\n\x1a\n", Kind{Name: "HDF5"}},
-		{"a.parquet", "PAR1\x15\x04", Kind{Name: "Parquet"}},
+		{"a.parquet", "PAR1\x15\x04", Kind{"Parquet", true}},
 		{"a.npz", "PK\x03\x04\x00", Kind{Name: "NumPy archive"}},
 		{"a.zip", "PK\x03\x04\x00", Kind{Name: "zip archive"}},
 		{"a.tlog", "\x00\x05\x99\x00", Kind{Name: "MAVLink telemetry log"}},

@@ -174,6 +174,7 @@ func TestTime(t *testing.T) {
 		"#timestamp,x":                           {0, -1, 0, ""},
 		"timestamp [ns],x":                       {0, -1, 0, "ns"},
 		"x,time_us":                              {1, -1, 0, "us"},
+		"frame,hps.corrected_tms,ert":            {2, -1, 0, ""},
 		"TimeUS,Roll":                            {0, -1, 0, "us"},
 		"frame,time_boot_ms":                     {1, -1, 0, "ms"},
 		"t_s,x":                                  {0, -1, 0, "s"},

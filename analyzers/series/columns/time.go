@@ -6,7 +6,7 @@ import "strings"
 var timeWords = []map[string]bool{
 	set("time timestamp timestamps stamp stamps ts t"),
 	set("sec secs seconds elapsed clock epoch utc datetime"),
-	set("tow itow gpstime systime"),
+	set("tow itow gpstime systime ert scet"), // the last two are of spacecraft: earth received time, spacecraft event time
 }
 
 // notStamps are words beside which the others mean something else.
