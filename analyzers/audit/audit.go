@@ -35,7 +35,10 @@ type Options struct {
 	Today   time.Time   // the day on which waivers are held against
 	Gate    policy.Gate // used if GateSet; else that of the nearest dextral.toml of the first path
 	GateSet bool
-	Workers int // files read at a time; 0: as many as there are processors
+	Workers int // files read at a time, and blocks of a big log; 0: as many as there are processors
+	// Progress is told how many bytes of a big log have been read, of how many, from
+	// several goroutines at a time; nil if nobody wants to know.
+	Progress func(path string, done, of int64)
 }
 
 // Result is an audit with the values it rests on.
@@ -49,8 +52,9 @@ type Result struct {
 	Sums map[string]rewrite.Sum // of the texts of files with edits, as they were read
 }
 
-// Run audits. The error is that of the context; everything else that goes wrong
-// is part of the result.
+// Run audits. Everything that goes wrong is part of the result, but a cancelled
+// context while the tree is listed. If it is cancelled later, the result is what was found so
+// far, and says so.
 func Run(ctx context.Context, o Options) (*Result, error) {
 	if len(o.Paths) == 0 {
 		o.Paths = []string{"."}
@@ -72,7 +76,7 @@ func Tree(ctx context.Context, tree *walk.Tree, o Options) (*Result, error) {
 	for _, f := range tree.Failed {
 		a.fail(f.Place, f.Err)
 	}
-	found, err := a.read(ctx, o.Workers)
+	found, err := a.read(ctx, o)
 	if err != nil {
 		return nil, err
 	}
@@ -105,17 +109,17 @@ type found struct {
 
 // read reads all files. The list is in the order of the tree; Go files, which
 // are read together, come last.
-func (a *audit) read(ctx context.Context, workers int) ([]*found, error) {
-	if workers <= 0 {
-		workers = runtime.GOMAXPROCS(0)
+func (a *audit) read(ctx context.Context, o Options) ([]*found, error) {
+	if o.Workers <= 0 {
+		o.Workers = runtime.GOMAXPROCS(0)
 	}
 	list := make([]*found, len(a.tree.Files)+1)
 	next := make(chan int)
 	var pool sync.WaitGroup
-	for range workers {
+	for range o.Workers {
 		pool.Go(func() {
 			for i := range next {
-				list[i] = readFile(ctx, a.tree.Files[i])
+				list[i] = readFile(ctx, a.tree.Files[i], &o)
 			}
 		})
 	}
@@ -129,24 +133,39 @@ func (a *audit) read(ctx context.Context, workers int) ([]*found, error) {
 	}
 	close(next)
 	pool.Wait()
-	if err := ctx.Err(); err != nil {
-		return nil, err
-	}
 	code, err := a.readGo(ctx, goFiles)
+	if ctx.Err() != nil {
+		code, err = &found{failures: []report.Failure{interrupted(list, len(goFiles))}}, nil
+	}
 	list[len(list)-1] = code
 	return slices.DeleteFunc(list, func(f *found) bool { return f == nil }), err
 }
 
 // readFile reads one file that is not Go. A reader that panics has a mistake
 // of its own; it costs that file, not the audit.
-func readFile(ctx context.Context, f walk.File) (result *found) {
+func readFile(ctx context.Context, f walk.File, o *Options) (result *found) {
+	if ctx.Err() != nil {
+		return nil
+	}
 	defer func() {
 		if p := recover(); p != nil {
 			result = &found{failures: []report.Failure{{Place: rules.Place{Path: f.Path},
 				Message: fmt.Sprintf("the reader failed on this file, which is a mistake in dextral: %v", p)}}}
 		}
 	}()
-	return readerOf(f)(ctx, f)
+	return readerOf(f)(ctx, f, o)
+}
+
+// interrupted says how much was not read.
+func interrupted(list []*found, goFiles int) report.Failure {
+	left := goFiles
+	for _, f := range list[:len(list)-1] {
+		if f == nil {
+			left++
+		}
+	}
+	left -= goFiles // those stand in the list without a reader
+	return report.Failure{Message: fmt.Sprintf("interrupted: %d files and %d Go files were not read; what was read until then was audited", left, goFiles)}
 }
 
 func (a *audit) readGo(ctx context.Context, files []gosource.File) (*found, error) {

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
+	"strings"
 	"testing"
 	"time"
 
@@ -55,6 +56,30 @@ func TestCancelled(t *testing.T) {
 	cancel()
 	_, err := Run(ctx, Options{Paths: []string{"."}})
 	assert.ErrorIs(t, err, context.Canceled)
+}
+
+// TestInterrupted: what was read before an interrupt is audited, and the rest named.
+func TestInterrupted(t *testing.T) {
+	var log strings.Builder
+	log.WriteString("t_s,qw,qx,qy,qz\n0,1,0,0,0\n0.1,-1,0,0,0\n")
+	for i := range 400000 {
+		fmt.Fprintf(&log, "%d.000000,1.000000,0,0,0\n", i+1)
+	}
+	dir := t.TempDir()
+	require.NoError(t, os.WriteFile(filepath.Join(dir, "a.csv"), []byte(log.String()), 0o644))
+	ctx, cancel := context.WithCancel(context.Background())
+	defer cancel()
+	r, err := Run(ctx, Options{Paths: []string{dir}, Progress: func(_ string, done, of int64) {
+		if done > of/2 {
+			cancel()
+		}
+	}})
+	require.NoError(t, err)
+	require.Len(t, r.Report.Failed, 1)
+	assert.Contains(t, r.Report.Failed[0].Message, "interrupted")
+	require.Len(t, r.Report.Limited, 1)
+	assert.Regexp(t, "interrupted after [0-9]+ rows", r.Report.Limited[0].Message)
+	assert.NotEmpty(t, r.Report.Findings, "the jump in the second row was read")
 }
 
 // TestIgnored: what version control ignores is left out and counted, unless it

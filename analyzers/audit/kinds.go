@@ -72,14 +72,14 @@ func unreadConfig(name string, head []byte) string {
 }
 
 // reader reads one file.
-type reader func(context.Context, walk.File) *found
+type reader func(context.Context, walk.File, *Options) *found
 
 func readerOf(f walk.File) reader {
 	switch kindOf(f.Name) {
 	case configFile:
 		return readConfig
 	case sheet:
-		return func(context.Context, walk.File) *found { return &found{kind: sheet} }
+		return func(context.Context, walk.File, *Options) *found { return &found{kind: sheet} }
 	}
 	return readByHead
 }
@@ -93,7 +93,7 @@ func failed(k kind, f walk.File, err error) *found {
 // input, is worth a failed audit only if it says so.
 var speaksOfOrientation = regexp.MustCompile(`(?i)quat|rot(at|or|mat)|euler|roll|pitch|yaw|orient|attitude|rpy|ypr|dcm|extrinsic|transform|ax[ei]s|pose|frame|[RTq]_[a-z]`)
 
-func readConfig(ctx context.Context, f walk.File) *found {
+func readConfig(ctx context.Context, f walk.File, o *Options) *found {
 	if err := source.CheckSize(f.Path, f.Size); err != nil {
 		return failed(configFile, f, err)
 	}
@@ -127,7 +127,7 @@ const headSize = series.HeadSize
 
 // readByHead opens a file whose name does not settle what it is, and looks at
 // its first bytes.
-func readByHead(ctx context.Context, f walk.File) *found {
+func readByHead(ctx context.Context, f walk.File, o *Options) *found {
 	file, err := os.Open(f.Name)
 	if err != nil {
 		return failed(other, f, err)
@@ -143,10 +143,10 @@ func readByHead(ctx context.Context, f walk.File) *found {
 		return readEphemeris(ctx, f, io.MultiReader(bytes.NewReader(head), file))
 	}
 	if config.Recognise(f.Name, head) != "" {
-		return readConfig(ctx, f)
+		return readConfig(ctx, f, o)
 	}
 	if series.IsParquet(head) {
 		return readParquet(ctx, f, file)
 	}
-	return readLog(ctx, f, head, io.MultiReader(bytes.NewReader(head), file))
+	return readLog(ctx, f, head, io.MultiReader(bytes.NewReader(head), o.watched(f, file)), o)
 }

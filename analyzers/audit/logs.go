@@ -15,7 +15,7 @@ import (
 
 // readLog streams a file that may be a log. What its first bytes or its name
 // show to be of another kind is said so.
-func readLog(ctx context.Context, f walk.File, head []byte, r io.Reader) *found {
+func readLog(ctx context.Context, f walk.File, head []byte, r io.Reader, o *Options) *found {
 	switch kind := series.Recognise(f.Path, head); {
 	case !kind.None() && !kind.Readable:
 		return &found{kind: unreadable, skipped: []report.Skipped{{Path: f.Path, Why: kind.Name}}}
@@ -27,7 +27,7 @@ func readLog(ctx context.Context, f walk.File, head []byte, r io.Reader) *found 
 		}
 		return &found{kind: other}
 	}
-	read, err := series.Read(ctx, f.Path, r, series.Options{Declare: f.Policy.Declare})
+	read, err := series.Read(ctx, f.Path, r, o.series(f))
 	result := logged(ctx, f, read, err)
 	if result.kind == logFile {
 		result.waiversInHead(f.Path, head)
@@ -54,10 +54,54 @@ func logged(ctx context.Context, f walk.File, read series.Result, err error) *fo
 	if read.BadRows > 0 {
 		result.limited = append(result.limited, badRows(f.Path, read))
 	}
-	if err != nil && ctx.Err() == nil {
-		result.failures = append(result.failures, failure(rules.Place{Path: f.Path}, err))
-	}
+	result.broken(ctx, f, err)
 	return result
+}
+
+// broken says why a log was not read to its end.
+func (r *found) broken(ctx context.Context, f walk.File, err error) {
+	switch {
+	case err == nil:
+	case ctx.Err() == nil:
+		r.failures = append(r.failures, failure(rules.Place{Path: f.Path}, err))
+	case r.kind == logFile:
+		r.limited = append(r.limited, report.Failure{Place: rules.Place{Path: f.Path}, Message: fmt.Sprintf("interrupted after %d rows, which were audited", r.rows)})
+	}
+}
+
+// bigLog is the size from which on a log is worth several workers of its own and
+// news of its progress.
+const bigLog = 8 << 20
+
+// series are the options for reading a log.
+func (o *Options) series(f walk.File) series.Options {
+	s := series.Options{Declare: f.Policy.Declare}
+	if f.Size >= bigLog {
+		s.Workers = o.Workers
+	}
+	return s
+}
+
+// watched tells Progress what is read from a big file.
+func (o *Options) watched(f walk.File, r io.Reader) io.Reader {
+	if o.Progress == nil || f.Size < bigLog {
+		return r
+	}
+	return &watched{r: r, file: f, tell: o.Progress}
+}
+
+type watched struct {
+	r    io.Reader
+	file walk.File
+	done int64
+	tell func(path string, done, of int64)
+}
+
+func (w *watched) Read(p []byte) (int, error) {
+	n, err := w.r.Read(p)
+	w.done += int64(n)
+	w.tell(w.file.Path, w.done, w.file.Size)
+	return n, err
 }
 
 // readEphemeris streams an attitude ephemeris message.

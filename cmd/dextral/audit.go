@@ -57,7 +57,12 @@ be audited could not be.`,
 				}
 				return err
 			}
+			news := newProgress(s.err)
+			if news != nil {
+				o.Progress = news.tell
+			}
 			r, err := audit.Run(c.Context(), o)
+			news.done()
 			if err != nil {
 				return err
 			}

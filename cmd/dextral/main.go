@@ -18,5 +18,6 @@ func run() int {
 	}
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt)
 	defer stop()
+	context.AfterFunc(ctx, stop) // a second interrupt ends the program at once
 	return execute(ctx, os.Args[1:], os.Stdin, os.Stdout, os.Stderr)
 }
