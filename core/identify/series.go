@@ -153,6 +153,8 @@ type Motion struct {
 	Turn    float64 // rad: sum of their turns
 	Rate    float64 // rad/s: RMS
 	Second  float64 // RMS rate about the second axis, as a part of that about the first
+	Third   float64 // and about the third, of body or space axes whichever is less
+	Wander  float64 // rad: RMS turn away from the first orientation
 	Swings  int     // times that a component of the rate swings over its mean
 }
 

@@ -17,7 +17,7 @@ type sums struct {
 	cross [2][3][3]float64 // sum of rate_i prediction_j, by axes
 	mean  rotor.Vec        // sum of the rates
 	means [2]rotor.Vec     // sums of the predictions
-	power [3][3]float64    // sum of prediction_i prediction_j in body axes
+	power [2][3][3]float64 // sum of prediction_i prediction_j, by axes
 }
 
 func (s *spans) sums() *sums {
@@ -30,8 +30,8 @@ func (s *spans) sums() *sums {
 			addOuter(&t.cross[a], w, v)
 			t.means[a] = t.means[a].Add(v)
 			t.turn[a] += v.Dot(v)
+			addOuter(&t.power[a], v, v)
 		}
-		addOuter(&t.power, s.predicted[0][i], s.predicted[0][i])
 	}
 	return t
 }
@@ -89,9 +89,17 @@ func (s *spans) motion() Motion {
 		m.Turn += v.Norm() * s.dt[i]
 	}
 	m.Rate = math.Sqrt(t.turn[0] / t.n)
-	e := eigenvalues(t.power)
+	first, _ := s.window[0].From.rotor().Unit()
+	for i := range s.window {
+		r, _ := s.window[i].To.rotor().Unit()
+		m.Wander += sq(rotor.Angle(first, r))
+	}
+	m.Wander = math.Sqrt(m.Wander / t.n)
+	e := eigenvalues(t.power[0])
 	if e[2] > 0 {
 		m.Second = math.Sqrt(math.Max(e[1], 0) / e[2])
+		space := eigenvalues(t.power[1])
+		m.Third = math.Sqrt(math.Max(min(e[0]/e[2], space[0]/space[2]), 0))
 	}
 	for _, axis := range [3]rotor.Vec{{X: 1}, {Y: 1}, {Z: 1}} {
 		m.Swings += s.swings(axis, m.Rate)
