@@ -4,6 +4,7 @@ import (
 	_ "embed" // of the package's essay
 	"go/types"
 	"reflect"
+	"slices"
 	"sync"
 
 	"golang.org/x/tools/go/analysis"
@@ -81,7 +82,7 @@ type Function struct {
 	Layout             // of the first case
 	Layouts []Layout   // all ways to see its numbers, likeliest first
 	Cases   []*Case    // at least one
-	Flow    *tape.Flow // which input may influence which output
+	Flow    *tape.Flow // which input may influence which output; not Exact where it was not asked for
 	Single  bool       // it computes in float32
 
 	library tape.Library
@@ -132,12 +133,18 @@ func newFunction(lowered *lower.Result, l *lower.Func) *Function {
 	if l.Program == nil || !l.Program.Sig.Runnable() {
 		return nil
 	}
+	if instructions(l.Program, lowered.Library) > maxInstructions {
+		return nil
+	}
 	machine, err := lowered.Link(l)
 	if err != nil {
 		return nil
 	}
-	f := &Function{Func: l, library: lowered.Library, machine: machine, batch: machine.NewBatch(tape.Lanes), Flow: tape.Analyze(l.Program, lowered.Library)}
-	f.Layouts = f.layouts()
+	f := &Function{Func: l, library: lowered.Library, machine: machine, batch: machine.NewBatch(tape.Lanes), Flow: &tape.Flow{}}
+	if f.Layouts = f.layouts(); f.flows() {
+		f.Flow = tape.Analyze(l.Program, lowered.Library)
+		f.Layouts = f.layouts()
+	}
 	if len(f.Layouts) == 0 {
 		return nil
 	}
@@ -150,4 +157,45 @@ func newFunction(lowered *lower.Result, l *lower.Func) *Function {
 	}
 	f.Cases = f.cases()
 	return f
+}
+
+// flows reports whether it is worth the time to find out which input influences which
+// output: a parameter may be a result, some operand may be a quaternion or a matrix, or the
+// operands are those of a known operation.
+func (f *Function) flows() bool {
+	for _, p := range f.machine.Sig.Params {
+		if p.Mode != tape.Value {
+			return true
+		}
+	}
+	for _, l := range f.Layouts {
+		if slices.ContainsFunc(slices.Concat(l.In, l.Out), func(o Operand) bool { return o.Kind >= operation.Quaternion }) ||
+			f.Question(&Case{Layout: l}).Shape().Known() {
+			return true
+		}
+	}
+	return false
+}
+
+// maxInstructions is the size of a function, with all that it calls, beyond which nobody
+// asks what it computes: the inverse of a 4x4 matrix, written out, has some 300.
+const maxInstructions = 2000
+
+// instructions counts those of a program and of all that it calls.
+func instructions(p *tape.Program, library tape.Library) int {
+	seen := map[*tape.Program]bool{}
+	n := 0
+	var visit func(*tape.Program)
+	visit = func(p *tape.Program) {
+		if p == nil || seen[p] || n > maxInstructions {
+			return
+		}
+		seen[p] = true
+		n += len(p.Code)
+		for i := range p.Calls {
+			visit(library[p.Calls[i].Callee])
+		}
+	}
+	visit(p)
+	return n
 }
