@@ -20,12 +20,13 @@ const (
 func leapsOf(s *Series) []*Finding {
 	var jumps, stale []kinematics.Leap
 	for _, l := range s.Continuity.StandingOut() {
-		switch {
-		case l.Angle < leastLeap:
-		case l.Same >= staleRows:
-			stale = append(stale, l)
-		case !changesAt(s, l.Row):
+		if l.Angle >= leastLeap && l.Same < staleRows && !changesAt(s, l.Row) {
 			jumps = append(jumps, l)
+		}
+	}
+	for _, l := range s.Continuity.Stale(staleRows) {
+		if l.Angle >= leastLeap {
+			stale = append(stale, l)
 		}
 	}
 	var found []*Finding

@@ -105,19 +105,47 @@ const (
 // any other of the series, in order of rows. A turn that is real takes several
 // rows, of which the fastest are alike.
 func (c *Continuity) StandingOut() []Leap {
+	l := c.fastest()
+	for n := min(maxOut, len(l)-1); n > 0; n-- {
+		if l[n-1].speed >= standsOut*standsOut*l[n].speed {
+			return inOrder(l[:n])
+		}
+	}
+	return nil
+}
+
+// Stale are the steps, no more than eight, after rows that stood still, at least so many, that
+// are twice as fast as any step after fewer: what is at rest begins to move no
+// faster than it moves then.
+func (c *Continuity) Stale(rows int64) []Leap {
+	l := c.fastest()
+	n := 0
+	for n < len(l) && l[n].Same >= rows {
+		n++
+	}
+	if n > maxOut {
+		return nil
+	}
+	for n > 0 && l[n-1].speed < 4*l[n].speed {
+		n--
+	}
+	return inOrder(l[:n])
+}
+
+// fastest are the fastest steps, fastest first, if there are enough to compare.
+func (c *Continuity) fastest() []Leap {
 	l := c.leaps
 	if l.moves > 0 {
 		l.insert(l.head)
 	}
-	if l.moves < 3*maxOut || l.count < MaxLeaps {
+	if l.count < MaxLeaps {
 		return nil
 	}
-	for n := maxOut; n > 0; n-- {
-		if l.top[n-1].speed >= standsOut*standsOut*l.top[n].speed {
-			out := slices.Clone(l.top[:n])
-			slices.SortFunc(out, func(a, b Leap) int { return int(a.Row - b.Row) })
-			return out
-		}
-	}
-	return nil
+	return l.top[:]
+}
+
+func inOrder(l []Leap) []Leap {
+	out := slices.Clone(l)
+	slices.SortFunc(out, func(a, b Leap) int { return int(a.Row - b.Row) })
+	return out
 }
