@@ -52,9 +52,22 @@ func ReadParquet(ctx context.Context, path string, in io.ReaderAt, size int64, o
 		return Result{}, err
 	}
 	r.Format = parquetName
+	for _, where := range f.Schema().Columns() {
+		found, ok := f.Schema().Lookup(where...)
+		if ok && found.MaxRepetitionLevel == 1 { // its first row is looked at to know its length
+			if err := checkPages(in, size, f, found.ColumnIndex); err != nil {
+				return r, err
+			}
+		}
+	}
 	t, err := newParquetTable(f, path, opts)
 	if err != nil || t == nil {
 		return r, err
+	}
+	for _, l := range t.leaves {
+		if err := checkPages(in, size, f, l.index); err != nil {
+			return r, err
+		}
 	}
 	err = t.read(ctx, f)
 	t.collector.finish(&r)
@@ -75,6 +88,9 @@ func openParquet(in io.ReaderAt, size int64) (*parquet.File, error) {
 		return nil, errors.New("does not end as a Parquet file does: it is cut off, and what says where its columns are stands at its end")
 	case footer > min(maxFooter, size-12):
 		return nil, fmt.Errorf("has a footer of %d bytes; its length is damaged", footer)
+	}
+	if err := checkFooter(in, size, footer); err != nil {
+		return nil, err
 	}
 	f, err := parquet.OpenFile(in, size, parquet.SkipPageIndex(true), parquet.SkipBloomFilters(true), parquet.ReadBufferSize(1<<16))
 	if err != nil {

@@ -120,6 +120,23 @@ func TestParquetDamaged(t *testing.T) {
 	}
 }
 
+// A list that claims two thousand million items, in the footer and in a page header,
+// is refused before memory is asked for.
+func TestParquetClaims(t *testing.T) {
+	huge := []byte{0x29, 0xfc, 0xff, 0xff, 0xff, 0xff, 0x07, 0x00} // field 2: list of structs
+	file := append([]byte("PAR1"), huge...)
+	file = append(file, byte(len(huge)), 0, 0, 0)
+	file = append(file, "PAR1"...)
+	_, err := ReadParquet(context.Background(), "p", bytes.NewReader(file), int64(len(file)), Options{})
+	assert.ErrorIs(t, err, errThrift)
+
+	file = parquetFile(t, states(3))
+	damaged := bytes.Clone(file)
+	copy(damaged[4:], huge) // the first page header
+	_, err = ReadParquet(context.Background(), "p", bytes.NewReader(damaged), int64(len(damaged)), Options{})
+	assert.Error(t, err)
+}
+
 func FuzzParquet(f *testing.F) {
 	f.Add(parquetFile(f, states(3)))
 	f.Add([]byte("PAR1\x00\x00\x00\x00PAR1"))
