@@ -107,6 +107,7 @@ func (s *scanned) review(ctx context.Context, o Options) (*report.Review, error)
 			r.Downstream = append(r.Downstream, report.Downstream{Title: report.ChainTitle(pair[1]), Moves: moves, Loops: loops})
 		}
 	}
+	r.Functions = s.functions(ctx)
 	r.Compare(before.Report.Findings, s.renamed)
 	return r, nil
 }

@@ -14,12 +14,33 @@ type Review struct {
 	Base, Head string // commits, shortened; Head "" is the working tree
 	Files      int    // that differ
 	Changes    []rules.Change
+	Functions  []FunctionChange
 	Downstream []Downstream
 	New        []*rules.Finding // not in the base
 	Fixed      []*rules.Finding // not any longer, at their old places
 	Same       []*rules.Finding
 	LeftOut    []Skipped // files that differ and were not compared
 	Audit      Report    // of the new version of what was read
+}
+
+// FunctionChange is a function whose text differs, with what it computes, as
+// measured; "" where that is not known.
+type FunctionChange struct {
+	Name, At string
+	Was, Is  string
+}
+
+// String says what became of the function.
+func (c FunctionChange) String() string {
+	switch {
+	case c.Was == c.Is:
+		return "still computes the " + c.Is
+	case c.Was == "":
+		return "computes now the " + c.Is + "; what it computed is not known"
+	case c.Is == "":
+		return "computed the " + c.Was + "; what it computes now is not known"
+	}
+	return "computed the " + c.Was + " and computes now the " + c.Is
 }
 
 // Downstream is what moves in one graph of frames.
@@ -110,6 +131,17 @@ func (r *Review) counts() string {
 	return strings.Join(parts, ", ")
 }
 
+// functionCounts is "1 computes something else, 2 still compute the same".
+func (r *Review) functionCounts() string {
+	other := 0
+	for _, c := range r.Functions {
+		if c.Was != c.Is {
+			other++
+		}
+	}
+	return fmt.Sprintf("%s changed: %d computing something else, %d the same", plural(len(r.Functions), "function"), other, len(r.Functions)-other)
+}
+
 // ReviewText writes a review for people.
 func ReviewText(w io.Writer, r *Review, o Options) error {
 	p := newPrinter(w, o)
@@ -117,6 +149,15 @@ func ReviewText(w io.Writer, r *Review, o Options) error {
 	p.line("")
 	for i := range r.Changes {
 		p.change(&r.Changes[i])
+	}
+	for _, c := range r.Functions {
+		style := faint
+		if c.Was != c.Is {
+			style = yellow
+		}
+		p.line(p.styled(bold, clean(c.At)+":") + " " + p.styled(style, "function") + ": " + clean(c.Name))
+		p.labelled("  ", faint, "what", clean(c.String()), len("what")+2)
+		p.line("")
 	}
 	for _, d := range r.Downstream {
 		p.downstream(d)
@@ -230,6 +271,9 @@ func loopText(l rules.LoopChange) string {
 
 func (p *printer) reviewSummary(r *Review) {
 	p.section("changes", r.counts())
+	if len(r.Functions) > 0 {
+		p.section("functions", r.functionCounts())
+	}
 	fresh := Report{Findings: r.New}
 	p.section("new", levelCounts(fresh.Tally())+waivedText(fresh.Tally()))
 	fixed := Report{Findings: r.Fixed}

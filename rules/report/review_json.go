@@ -20,19 +20,29 @@ const reviewVersion = 1
 
 // reviewDoc is a review in JSON. Numbers are at full precision, angles in degrees.
 type reviewDoc struct {
-	Format   string      `json:"format"`
-	Version  int         `json:"version"`
-	Base     string      `json:"base"`
-	Head     string      `json:"head"` // "" is the working tree
-	Files    int         `json:"files"`
-	Changes  []changeRow `json:"changes"`
-	Moves    []moveRow   `json:"moves"`
-	Loops    []loopRow   `json:"loops"`
-	Findings findingSets `json:"findings"`
-	Gate     string      `json:"gate"`
-	Failing  int         `json:"failing"`
-	LeftOut  []Skipped   `json:"leftOut"`
-	Failed   []Failure   `json:"failed"`
+	Format    string        `json:"format"`
+	Version   int           `json:"version"`
+	Base      string        `json:"base"`
+	Head      string        `json:"head"` // "" is the working tree
+	Files     int           `json:"files"`
+	Changes   []changeRow   `json:"changes"`
+	Functions []functionRow `json:"functions"`
+	Moves     []moveRow     `json:"moves"`
+	Loops     []loopRow     `json:"loops"`
+	Findings  findingSets   `json:"findings"`
+	Gate      string        `json:"gate"`
+	Failing   int           `json:"failing"`
+	LeftOut   []Skipped     `json:"leftOut"`
+	Failed    []Failure     `json:"failed"`
+}
+
+// functionRow is a function whose text differs; was and is are "" where what it
+// computes is not known.
+type functionRow struct {
+	Name  string `json:"name"`
+	Place string `json:"place"`
+	Was   string `json:"was"`
+	Is    string `json:"is"`
 }
 
 type findingSets struct {
@@ -85,10 +95,13 @@ type loopRow struct {
 func ReviewJSON(w io.Writer, r *Review) error {
 	doc := reviewDoc{
 		Format: "dextral review", Version: reviewVersion, Base: r.Base, Head: r.Head, Files: r.Files,
-		Changes: changeRows(r.Changes), Moves: []moveRow{}, Loops: []loopRow{},
+		Changes: changeRows(r.Changes), Functions: []functionRow{}, Moves: []moveRow{}, Loops: []loopRow{},
 		Findings: findingSets{findingRows(r.New), findingRows(r.Fixed), findingRows(r.Same)},
 		Gate:     r.Audit.Gate.String(), Failing: r.Failing(),
 		LeftOut: append([]Skipped{}, r.LeftOut...), Failed: append([]Failure{}, r.Audit.Failed...),
+	}
+	for _, c := range r.Functions {
+		doc.Functions = append(doc.Functions, functionRow{c.Name, c.At, c.Was, c.Is})
 	}
 	const degrees = 180 / math.Pi
 	for _, d := range r.Downstream {

@@ -32,6 +32,12 @@ func ReviewMarkdown(w io.Writer, r *Review) error {
 		}
 		p.line("")
 	}
+	for _, c := range r.Functions {
+		p.line(fmt.Sprintf("- %s %s %s", code(c.At), code(c.Name), markdown(c.String())))
+	}
+	if len(r.Functions) > 0 {
+		p.line("")
+	}
 	p.findingLines(r.New)
 	p.movesMarkdown(r)
 	p.folded(len(r.Changes)-real, "change", " that left its orientation as it was, or was added or removed", func() {
