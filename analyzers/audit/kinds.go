@@ -51,7 +51,7 @@ func kindOf(name string) kind {
 // unreadConfigs names formats that often hold orientations and have no reader
 // yet, by extension.
 var unreadConfigs = map[string]string{
-	".acm": "CCSDS attitude comprehensive message", ".bvh": "motion capture (BVH)", ".glb": "binary glTF",
+	".bvh": "motion capture (BVH)", ".glb": "binary glTF",
 	".usd": "USD", ".usda": "USD", ".fbx": "FBX", ".dae": "COLLADA",
 }
 

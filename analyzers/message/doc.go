@@ -1,7 +1,8 @@
 // Package message reads CCSDS attitude messages as far as they are more than a
 // configuration file: it holds the text of parameter messages (APM) and of ephemeris
-// messages (AEM) against the standard, and hands the data lines of an ephemeris to
-// package series, segment by segment.
+// messages (AEM) against the standard, and hands the data lines of an ephemeris, and the
+// attitude histories of a comprehensive message (ACM), to package series, segment by
+// segment.
 //
 // The standard is CCSDS 504.0-B-2 (2024), "Attitude Data Messages": tables 3-3, 4-3
 // and 4-4, chapter 6, annexes F and J. The first issue (2008) means other things by the

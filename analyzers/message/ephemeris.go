@@ -3,6 +3,7 @@ package message
 import (
 	"bufio"
 	"bytes"
+	"cmp"
 	"context"
 	"errors"
 	"io"
@@ -25,13 +26,14 @@ type Ephemeris struct {
 	Undecided []*rules.Value
 }
 
-// IsEphemeris reports whether a text begins as an AEM does, in either notation.
+// IsEphemeris reports whether a text begins as an AEM does, in either notation, or as
+// a comprehensive message (ACM) in key-value notation.
 func IsEphemeris(head []byte) bool {
 	text := bytes.TrimLeft(bytes.TrimPrefix(head, []byte("\xef\xbb\xbf")), " \t\r\n")
-	return bytes.HasPrefix(text, []byte("CCSDS_AEM_VERS")) || isXML(text)
+	return bytes.HasPrefix(text, []byte("CCSDS_AEM_VERS")) || bytes.HasPrefix(text, []byte("CCSDS_ACM_VERS")) || isXML(text)
 }
 
-// ReadEphemeris reads an AEM to its end, in memory that does not grow with it (in XML
+// ReadEphemeris reads an AEM, or the attitude histories of an ACM, to its end, in memory that does not grow with it (in XML
 // notation, by some bytes for each state). The path is the one to be printed.
 func ReadEphemeris(ctx context.Context, path string, r io.Reader, o series.Options) (Ephemeris, error) {
 	var e Ephemeris
@@ -55,8 +57,14 @@ func ReadEphemeris(ctx context.Context, path string, r io.Reader, o series.Optio
 		}
 		switch word := n.word(); {
 		case word == "COMMENT":
-		case n.key == "CCSDS_AEM_VERS":
+		case n.key == "CCSDS_AEM_VERS", n.key == "CCSDS_ACM_VERS":
 			c.version(n)
+		case word == "ATT_START":
+			if err := e.history(ctx, &segment{meta: map[string]string{}, index: s.index, second: c.second}, c, o); err != nil {
+				e.Findings = c.found
+				return e, err
+			}
+			s.index++
 		case word == "META_START":
 			s = &segment{meta: map[string]string{}, index: s.index, second: c.second}
 			inMeta = true
@@ -78,9 +86,39 @@ func ReadEphemeris(ctx context.Context, path string, r io.Reader, o series.Optio
 	}
 }
 
+// history reads one attitude history of a comprehensive message: keywords, then lines of
+// numbers (table 5-4). Its lines are not held against the standard, and its times may be
+// seconds from an epoch.
+func (e *Ephemeris) history(ctx context.Context, s *segment, c *checker, o series.Options) error {
+	for {
+		n, err := c.lines.next()
+		if errors.Is(err, io.EOF) || n.word() == "ATT_STOP" {
+			return nil
+		}
+		if err != nil {
+			return err
+		}
+		switch {
+		case n.word() == "COMMENT" || strings.TrimSpace(n.text) == "":
+		case n.key != "":
+			s.meta[n.key] = n.value
+		default:
+			s.meta["ATTITUDE_TYPE"] = s.meta["ATT_TYPE"]
+			if k, ok := s.kind(); ok {
+				s.extra = max(0, len(strings.Fields(n.text))-1-len(strings.Fields(k.columns)))
+			}
+			d := &data{lines: c.lines, checker: &checker{lines: c.lines}, segment: s, stop: "ATT_STOP", first: &n}
+			return e.segment(ctx, s, d, o)
+		}
+	}
+}
+
 // segment reads the data lines of one segment.
 func (e *Ephemeris) segment(ctx context.Context, s *segment, d *data, o series.Options) error {
 	start := d.lines.number
+	if d.first != nil {
+		start-- // that line has been read already
+	}
 	at := rules.Place{Path: d.lines.path, Line: start, Column: 1, EndLine: start, EndColumn: len("DATA_START") + 1}
 	k, known := s.kind()
 	if !known || k.form == convention.NoForm {
@@ -152,6 +190,8 @@ type data struct {
 	buffer  bytes.Buffer
 	begun   bool
 	latest  time.Time // epoch so far
+	stop    string    // the word that ends them; "": DATA_STOP
+	first   *line     // the first of them, if it has been read
 	done    bool
 }
 
@@ -163,7 +203,7 @@ func (d *data) Read(p []byte) (int, error) {
 		if d.done {
 			return 0, io.EOF
 		}
-		n, err := d.lines.next()
+		n, err := d.line()
 		if err != nil {
 			d.done = true
 			if errors.Is(err, io.EOF) {
@@ -171,7 +211,7 @@ func (d *data) Read(p []byte) (int, error) {
 			}
 			return 0, err
 		}
-		if n.word() == "DATA_STOP" {
+		if n.word() == cmp.Or(d.stop, "DATA_STOP") {
 			d.done = true
 			return 0, io.EOF
 		}
@@ -182,6 +222,14 @@ func (d *data) Read(p []byte) (int, error) {
 		d.buffer.WriteString(n.text + "\n")
 	}
 	return d.buffer.Read(p)
+}
+
+func (d *data) line() (line, error) {
+	if n := d.first; n != nil {
+		d.first = nil
+		return *n, nil
+	}
+	return d.lines.next()
 }
 
 // check holds a data line against the standard.

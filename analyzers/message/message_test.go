@@ -127,6 +127,50 @@ func TestPlaces(t *testing.T) {
 	}
 }
 
+// A comprehensive message in our numbers; keywords by table 5-4, from memory.
+const comprehensive = `CCSDS_ACM_VERS = 2.0
+CREATION_DATE = 2031-03-04T13:00:00
+ORIGINATOR = SALTMARSH
+META_START
+OBJECT_NAME = TERN
+TIME_SYSTEM = UTC
+EPOCH_TZERO = 2031-03-04T12:00:00
+META_STOP
+ATT_START
+REF_FRAME_A = ICRF
+REF_FRAME_B = SC_BODY_1
+NUMBER_STATES = 7
+ATT_TYPE = QUATERNION
+RATE_TYPE = ANGVEL
+0.0 0.038134576475 0.189307857412 0.239298337745 0.951548524644 0.3 -0.2 0.5
+10.0 0.075409540342 0.177033024173 0.274832356220 0.942040278094 0.3 -0.2 0.5
+20.0 0.112466331765 0.164246004710 0.309571238604 0.929806551055 0.3 -0.2 0.5
+ATT_STOP
+ATT_START
+REF_FRAME_A = ICRF
+REF_FRAME_B = SC_BODY_1
+NUMBER_STATES = 9
+ATT_TYPE = DCM
+0.0 0.8137976814 -0.4409696105 0.3785223064 0.4698463104 0.8825641193 0.0180283112 -0.3420201433 0.1631759112 0.9254165784
+10.0 0.7862529687 -0.4911063407 0.3749944420 0.5445062565 0.8375611544 -0.0447688424 -0.2920945315 0.2393864550 0.9259454192
+ATT_STOP
+`
+
+func TestComprehensive(t *testing.T) {
+	assert.Empty(t, judge(t, comprehensive))
+	assert.Equal(t, "tern.kvn:16:1 sign-jump", judge(t, strings.Replace(comprehensive, "0.075409540342 0.177033024173 0.274832356220 0.942040278094", "-0.075409540342 -0.177033024173 -0.274832356220 -0.942040278094", 1)))
+	assert.Contains(t, judge(t, strings.Replace(comprehensive, "0.038134576475 0.189307857412 0.239298337745", "-0.038134576475 -0.189307857412 -0.239298337745", 1)), "direction-reversed")
+	e, err := ReadEphemeris(context.Background(), "tern.kvn", strings.NewReader(comprehensive), series.Options{})
+	require.NoError(t, err)
+	assert.Len(t, e.Series, 2)
+	lines := strings.Split(comprehensive, "\n")
+	for _, v := range e.Values {
+		for _, n := range v.Numbers {
+			assert.Equal(t, n.Text, lines[n.Place.Line-1][n.Place.Column-1:n.Place.EndColumn-1])
+		}
+	}
+}
+
 const inXML = `<?xml version="1.0"?>
 <aem id="CCSDS_AEM_VERS" version="2.0">
 <header><ORIGINATOR>SALTMARSH</ORIGINATOR></header>
@@ -173,6 +217,7 @@ func TestOutsideMessages(t *testing.T) {
 func FuzzReadEphemeris(f *testing.F) {
 	f.Add([]byte(ephemeris))
 	f.Add([]byte(inXML))
+	f.Add([]byte(comprehensive))
 	f.Add([]byte("CCSDS_AEM_VERS = 2.0\nMETA_START\nATTITUDE_TYPE = QUATERNION\nMETA_STOP\nDATA_START\n"))
 	f.Fuzz(func(t *testing.T, text []byte) {
 		if !IsEphemeris(text) {

@@ -15,6 +15,7 @@ import (
 type segment struct {
 	meta   map[string]string
 	index  int
+	extra  int            // numbers of a line behind the attitude, of a comprehensive message
 	second bool           // of the second issue
 	epochs map[int]string // of the first lines, by number
 }
@@ -35,6 +36,8 @@ var kinds = map[string]kind{
 	"EULER_ANGLE/DERIVATIVE": {convention.Angles, "roll pitch yaw u1 u2 u3"},
 	"EULER_ANGLE/ANGVEL":     {convention.Angles, "roll pitch yaw u1 u2 u3"},
 	"EULER_ANGLE/RATE":       {convention.Angles, "roll pitch yaw u1 u2 u3"},
+	"EULER_ANGLES":           {convention.Angles, "roll pitch yaw"},                        // of a comprehensive message
+	"DCM":                    {convention.Rotation, "r11 r21 r31 r12 r22 r32 r13 r23 r33"}, // the same; column by column (annex B4)
 	"SPIN":                   {convention.NoForm, "u1 u2 u3 u4"},
 	"SPIN/NUTATION":          {convention.NoForm, "u1 u2 u3 u4 u5 u6 u7"},
 	"SPIN/NUTATION_MOM":      {convention.NoForm, "u1 u2 u3 u4 u5 u6 u7"},
@@ -45,6 +48,9 @@ func (s *segment) kind() (kind, bool) {
 	k, ok := kinds[strings.ReplaceAll(s.meta["ATTITUDE_TYPE"], " ", "_")]
 	if s.meta["QUATERNION_TYPE"] == "FIRST" && !s.second {
 		k.columns = strings.Replace(k.columns, "qx qy qz qw", "qw qx qy qz", 1)
+	}
+	for i := range s.extra {
+		k.columns += fmt.Sprintf(" u%d", i+1)
 	}
 	return k, ok
 }
@@ -67,9 +73,12 @@ func (s *segment) describe(v *rules.Value, at rules.Place) {
 	v.Form, v.Why, v.KeyAt = k.form, "", at
 	v.Key = fmt.Sprintf("segment[%d].%s", s.index, s.meta["ATTITUDE_TYPE"])
 	says := []convention.Term{k.form}
-	if k.form == convention.Quaternion {
+	switch k.form {
+	case convention.Quaternion:
 		v.Claims = rules.Claims{{Says: convention.ScalarFirst, Source: rules.Format, Text: "components Q1, Q2, Q3, QC", Place: at}} // Numbers come as w, x, y, z
-	} else {
+	case convention.Rotation:
+		v.Claims = nil
+	default:
 		v.Claims = nil
 		v.Roles = [3]angle.Role{angle.RoleFirst, angle.RoleSecond, angle.RoleThird}
 		says = append(says, convention.Degree)
@@ -81,7 +90,11 @@ func (s *segment) describe(v *rules.Value, at rules.Place) {
 		}
 	}
 	from, to := s.frames()
-	if s.second && from != "" && to != "" {
+	switch {
+	case !s.second || from == "" || to == "":
+	case k.form == convention.Rotation: // M_BA: X_B = M_BA X_A
+		says = append(says, convention.Direction{To: to, From: from})
+	default:
 		says = append(says, convention.Direction{To: from, From: to})
 	}
 	for _, t := range says {
