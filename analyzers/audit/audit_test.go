@@ -14,7 +14,6 @@ import (
 
 	"github.com/stretchr/testify/assert"
 	"github.com/stretchr/testify/require"
-	"go.yaml.in/yaml/v3"
 )
 
 // in runs f in a directory, whose name the command would print paths against.
@@ -134,8 +133,6 @@ func TestNestedSheets(t *testing.T) {
 	})
 }
 
-// BenchmarkManyFiles compares the audit of many small files with reading and
-// parsing them and doing nothing else. Report the ratio of the two.
 // Formats that hold orientations and have no reader are named; what only shares an
 // ending with one is not.
 func TestUnread(t *testing.T) {
@@ -148,42 +145,4 @@ func TestUnread(t *testing.T) {
 	} {
 		assert.Equal(t, c.want, unreadConfig(name, []byte(c.head)), name)
 	}
-}
-
-func BenchmarkManyFiles(b *testing.B) {
-	dir := b.TempDir()
-	var files []string
-	for i := range 2000 {
-		name := filepath.Join(dir, fmt.Sprintf("d%d", i%50), fmt.Sprintf("mount%d.yaml", i))
-		_ = os.MkdirAll(filepath.Dir(name), 0o755)
-		var text bytes.Buffer
-		for k := range 20 {
-			fmt.Fprintf(&text, "sensor%d:\n  # scalar first\n  mount_quaternion: [0.72, 0.48, -0.44, 0.24]\n  serial: %d\n  gains: [1.0, 2.0, 3.0, 4.0, 5.0]\n  T_a_b: [[0, -1, 0, 1.5], [1, 0, 0, 0.25], [0, 0, 1, 0]]\n", k, k)
-		}
-		if err := os.WriteFile(name, text.Bytes(), 0o644); err != nil {
-			b.Fatal(err)
-		}
-		files = append(files, name)
-	}
-	b.Run("audit", func(b *testing.B) {
-		for range b.N {
-			if _, err := Run(context.Background(), Options{Paths: []string{dir}, Workers: 1}); err != nil {
-				b.Fatal(err)
-			}
-		}
-	})
-	b.Run("parse", func(b *testing.B) {
-		for range b.N {
-			for _, f := range files {
-				text, err := os.ReadFile(f)
-				if err != nil {
-					b.Fatal(err)
-				}
-				var node yaml.Node
-				if err := yaml.Unmarshal(text, &node); err != nil {
-					b.Fatal(err)
-				}
-			}
-		}
-	})
 }
