@@ -127,7 +127,7 @@ func (s *segment) twin(v *rules.Value) *rules.Value {
 	}
 	t.Place = t.Numbers[0].Place.To(t.Numbers[len(t.Numbers)-1].Place)
 	if at := s.epochs[t.Place.Line]; t.Why == "" && from != "" && to != "" && at != "" {
-		t.Of, t.Moment = from+"_to_"+to+" at "+at, at
+		t.Of, t.Moment = s.meta["OBJECT_ID"]+" "+from+"_to_"+to+" at "+at, at
 	}
 	return &t
 }
