@@ -7,6 +7,7 @@ import (
 
 	"dextral/core/angle"
 	"dextral/core/convention"
+	"dextral/core/rotor"
 )
 
 // largeAngle judges three angles of a fixed orientation that are stated in radians:
@@ -74,11 +75,33 @@ func locked(v *Value) *Finding {
 	same := seq.Numbers(seq.Rotor(n)) // what the rotation gives back
 	return &Finding{
 		Rule: GimbalLocked, Level: Note, Place: v.Place, Key: v.Key,
-		Message: fmt.Sprintf("%s is at gimbal lock: its %s angle is %s, where the two others turn about one axis, so that only their sum or difference is determined",
-			v.name(), ordinal(middle), degrees(n[middle])),
+		Message: fmt.Sprintf("%s is at gimbal lock: its %s angle is %s, where the two others turn about one axis, so that only %s is determined",
+			v.name(), ordinal(middle), degrees(n[middle]), kept(label.Readings, n, min(a, b), max(a, b))),
 		Evidence: []Evidence{{What: "angles that the rotation gives back", Stated: Words(triple(n)), Computed: Words(triple(same.Numbers()))}},
 		Remedy:   "state the orientation as a quaternion or a matrix, or set one of the two others to zero",
 	}
+}
+
+// kept says what of the numbers a and b is determined at gimbal lock: the sum, if
+// moving both by opposite amounts changes no rotation, else the difference. Readings
+// about moving and about fixed axes may part here.
+func kept(readings []angle.Reading, n [3]float64, a, b int) string {
+	sums := 0
+	for _, r := range readings {
+		moved := n
+		moved[a]++
+		moved[b]--
+		if rotor.Angle(r.Rotor(n), r.Rotor(moved)) < 1 { // 2 where the difference is kept
+			sums++
+		}
+	}
+	switch sums {
+	case len(readings):
+		return "their sum, " + degrees(angle.Wrap(n[a]+n[b])) + ","
+	case 0:
+		return "their difference, " + degrees(angle.Wrap(n[a]-n[b])) + ","
+	}
+	return "their sum or difference"
 }
 
 func triple(n [3]float64) string { return degrees(n[0]) + ", " + degrees(n[1]) + ", " + degrees(n[2]) }

@@ -26,8 +26,11 @@ func bottomRow(v *Value) *Finding {
 		slack = math.Max(slack, precisionOf([]Number{n}).Half)
 	}
 	slack += 8 * 0x1p-24 // what float32 makes of a one, see package tolerance
-	if isLast(row, slack) || isLast(column, slack) {
+	if isLast(row, slack) {
 		return nil
+	}
+	if isLast(column, slack) {
+		return forRowVectors(v, row, texts)
 	}
 	f := finding(BottomRowWrong, v, claim, "%s claims a rigid transform, but its last row is %s instead of 0 0 0 1", v.name(), strings.Join(texts, " "))
 	f.Evidence = []Evidence{{What: "last row", Stated: Words("0 0 0 1"), Computed: Words(strings.Join(texts, " "))}}
@@ -45,32 +48,24 @@ func bottomRow(v *Value) *Finding {
 	return f
 }
 
+// forRowVectors notes a rigid transform whose translation stands in the last row. A
+// flat list without a stated storage may as well be filled column by column, and
+// claims nothing.
+func forRowVectors(v *Value, row [4]float64, texts []string) *Finding {
+	if c, stated := v.Claims.On(convention.OfStorage); stated && c.Says == convention.ColumnMajor {
+		return nil // see storedByRows
+	} else if !stated && !v.Nested {
+		return nil
+	}
+	return &Finding{
+		Rule: BottomRowWrong, Level: Note, Place: v.Place, Key: v.Key,
+		Message: fmt.Sprintf("%s has its translation in the last row: it is the transpose of a rigid transform (R, t) over 0 0 0 1, as matrices for row vectors are written; taken for one of column vectors, its rotation is reversed and its translation lost", v.name()),
+		Evidence: []Evidence{{What: "last row", Stated: Words("0 0 0 1"), Computed: Words(strings.Join(texts, " "))},
+			{What: "last column", Stated: Words("t over 1"), Computed: Words("0 0 0 1")}},
+		Remedy: "transpose it, or say beside it that it multiplies row vectors",
+	}
+}
+
 func isLast(row [4]float64, slack float64) bool {
 	return math.Abs(row[0]) <= slack && math.Abs(row[1]) <= slack && math.Abs(row[2]) <= slack && math.Abs(row[3]-1) <= slack
 }
-
-// quantum is the scale of a quaternion that is written in whole numbers, as
-// recorders and firmware do to save room: 32767 for 16 bits with sign, and so on; 0 for
-// any other. Its numbers stand for q/scale, each rounded to a whole one, which moves
-// the norm by at most one.
-func (v *Value) quantum() float64 {
-	if v.Form != convention.Quaternion || len(v.Numbers) != 4 {
-		return 0
-	}
-	for _, n := range v.Numbers {
-		if n.Value != math.Trunc(n.Value) || strings.ContainsAny(n.Text, ".eE") {
-			return 0
-		}
-	}
-	length := norm(v.Floats())
-	for _, scale := range scales {
-		if math.Abs(length-scale) <= 1 {
-			return scale
-		}
-	}
-	return 0
-}
-
-// scales are those in use: the largest numbers of 8, 16 and 32 bits with sign and
-// powers of two below, and powers of ten; common practice, no source.
-var scales = []float64{127, 128, 1000, 10000, 16384, 32767, 32768, 100000, 1e6, 1e7, 1e8, 1e9, 1 << 30, 1<<31 - 1, 1 << 31}

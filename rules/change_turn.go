@@ -65,7 +65,7 @@ type axisMap struct {
 }
 
 // triads are those whose names people exchange: common practice, no source.
-var triads = [][2]string{{"ENU", "NED"}, {"FLU", "FRD"}, {"RDF", "FLU"}, {"FLU", "RDF"}, {"RDF", "FRD"}, {"FRD", "RDF"}, {"NWU", "NED"}, {"NWU", "ENU"}, {"ENU", "NWU"}}
+var triads = [][2]string{{"ENU", "NED"}, {"FLU", "FRD"}, {"RDF", "FLU"}, {"FLU", "RDF"}, {"RDF", "FRD"}, {"FRD", "RDF"}, {"NWU", "NED"}, {"NWU", "ENU"}, {"ENU", "NWU"}, {"RUB", "FLU"}, {"FLU", "RUB"}}
 
 // axisMaps are the 23 rotations that exchange axes, those with well-known names
 // first; half turns about one axis and the like have none.

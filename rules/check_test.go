@@ -300,7 +300,7 @@ func TestBottomRow(t *testing.T) {
 	const upper = "1.0 0.0 0.0 0.2 0.0 1.0 0.0 0.3 0.0 0.0 1.0 0.4 "
 	for text, want := range map[string]string{
 		upper + "0 0 0 1": "", upper + "0.0 0.0 0.0 1.0": "", upper + "1e-9 0 0 0.9999999": "",
-		"1 0 0 0 0 1 0 0 0 0 1 0 0.2 0.3 0.4 1": "", // for row vectors
+		"1 0 0 0 0 1 0 0 0 0 1 0 0.2 0.3 0.4 1": "", // a flat list may be filled column by column
 		upper + "0 0 0 2":                       "error bottom-row-wrong",
 		upper + "0 0 0 0":                       "error bottom-row-wrong",
 		upper + "0 0 1 0":                       "error bottom-row-wrong",
@@ -308,6 +308,35 @@ func TestBottomRow(t *testing.T) {
 		assert.Equal(t, want, rules(CheckValues([]*Value{value(convention.Transform, text)})), text)
 	}
 	assert.Equal(t, "warning bottom-row-wrong", rules(CheckValues([]*Value{inferred(value(convention.Transform, upper+"0 0 0 2"))})))
+	nested := value(convention.Transform, "1 0 0 0 0 1 0 0 0 0 1 0 0.2 0.3 0.4 1")
+	nested.Nested = true
+	assert.Equal(t, "note bottom-row-wrong", rules(CheckValues([]*Value{nested})))
+}
+
+// What gimbal lock leaves determined, by algebra: Rz(a) Ry(90 deg) Rx(b) = Ry(90 deg) Rx(b-a),
+// and at -90 deg the sum; a label that fits both kinds of axes names neither.
+func TestKeptAtGimbalLock(t *testing.T) {
+	message := func(text, numbers string) string {
+		found := CheckValues([]*Value{value(convention.Angles, numbers, label(t, text), convention.Degree)})
+		require.Len(t, found, 1)
+		return found[0].Message
+	}
+	assert.Contains(t, message("z-y'-x''", "50.0 90.0 20.0"), "only their difference, 30 deg, is determined")
+	assert.Contains(t, message("z-y'-x''", "50.0 -90.0 20.0"), "only their sum, 70 deg, is determined")
+	assert.Contains(t, message("z-y-x about fixed axes", "50.0 90.0 20.0"), "only their sum, 70 deg, is determined")
+	assert.Contains(t, message("zyx", "50.0 90.0 20.0"), "their sum or difference is")
+}
+
+// Whole numbers near a scale are judged as parts of it, far from all scales as they are.
+func TestNearlyQuantised(t *testing.T) {
+	message := func(numbers string) string {
+		found := CheckValues([]*Value{value(convention.Quaternion, numbers, convention.ScalarFirst)})
+		require.Len(t, found, 1, numbers)
+		return found[0].Message
+	}
+	assert.Contains(t, message("14190 3000 2000 7300"), "as parts of 16384 its norm is 0.99853")
+	assert.Contains(t, message("32600 0 0 0"), "as parts of 32767 its norm is 0.9949")
+	assert.Contains(t, message("20000 0 0 0"), "but its norm is 20000")
 }
 
 // Gimbal lock is noted where both outer angles say something, whatever the unit.

@@ -120,6 +120,9 @@ func (c *Chain) openLoop(l Loop) *Finding {
 			f.Related = append(f.Related, Related{c.link(s).Value.Place, c.link(s).Value.name() + ": " + c.direction(c.link(s)).String()})
 		}
 	}
+	if named, beside := opticalFrame(l.Frames); named != "" && optical(f.Message) {
+		f.Remedy = fmt.Sprintf("%s is named optical: by custom its axes point right, down, forward, those of %s forward, left, up; see which value leaves out the turn between them", named, beside)
+	}
 	if c.Sense == ToFrom || c.Sense == FromTo {
 		f.Evidence = append(f.Evidence, Evidence{What: "keys of the kind T_a_b", Computed: Words(c.Sense.String() + ", by the loops that close")})
 	}
@@ -179,11 +182,11 @@ func (c *Chain) verdictText(steps []frame.Step, r identify.LoopResult) string {
 		return "no single change of convention explains it"
 	case len(r.Repairs) == 1:
 		repair := r.Repairs[0]
-		return fmt.Sprintf("with %s %s it closes to %s", c.link(steps[repair.Edge]).Value.name(), repair.Words(), degrees(repair.Angle))
+		return fmt.Sprintf("with %s %s it closes to %s", c.link(steps[repair.Edge]).Value.name(), withMapNames(repair.Words()), degrees(repair.Angle))
 	}
 	var texts []string
 	for _, repair := range r.Repairs {
-		texts = append(texts, c.link(steps[repair.Edge]).Value.name()+" "+repair.Words())
+		texts = append(texts, c.link(steps[repair.Edge]).Value.name()+" "+withMapNames(repair.Words()))
 	}
 	return fmt.Sprintf("it closes with %s", strings.Join(texts, ", or with "))
 }

@@ -133,7 +133,7 @@ func reconciled(first, second, odd *Value, r identify.Result) *Finding {
 		odd = second
 	}
 	f := twinFinding(ruleOf[worst], first, second, odd, r, "%s and %s state one orientation; they agree, to %s, only if taken %s; as stated they differ by %s",
-		first.name(), second.name(), degrees(r.Best.Residual), r.Best, degrees(r.Stated.Residual))
+		first.name(), second.name(), degrees(r.Best.Residual), withMapNames(r.Best.String()), degrees(r.Stated.Residual))
 	other := first
 	if odd == first {
 		other = second

@@ -34,6 +34,9 @@ func rotorUnit(v *Value) *Finding {
 	if math.Abs(n-1) <= allowed {
 		return nil
 	}
+	if f := quantisedNorm(v, claim); f != nil {
+		return f
+	}
 	f := finding(RotorNotUnit, v, claim, "%s claims a unit quaternion, but its norm is %s", v.name(), digits(n))
 	f.Evidence = []Evidence{
 		{What: "norm", Stated: Plain(1), Computed: Plain(n), Residual: Plain(n - 1)},

@@ -30,6 +30,7 @@ type Value struct {
 	Numbers   []Number      // see above
 	Rows      int           // matrices: 3 or 4
 	Cols      int           // matrices: 3 or 4
+	Nested    bool          // matrices: each row has brackets of its own, or the format fills row by row
 	Roles     [3]angle.Role // angles: what the numbers are called, in written order
 	Claims    Claims
 	Why       string // why it is undecided; "" if it is read

@@ -101,7 +101,7 @@ func (w *walker) matrix(s *spot, numbers []rules.Number, rows, cols int) bool {
 	}
 	v := &rules.Value{Numbers: numbers}
 	if !flat {
-		v.Rows, v.Cols = rows, cols
+		v.Rows, v.Cols, v.Nested = rows, cols, true
 	}
 	w.describe(s, m, v)
 	return true

@@ -20,6 +20,11 @@ type Number struct {
 // "1", "1.", "1.0" and "1e0" are the same to a writer that drops zeros.
 func (n Number) Integer() bool { return n.Value == math.Trunc(n.Value) }
 
+// binary64 is how many significant digits a float64 has at best: 17 tell any two of
+// them apart. The eighteenth and later ones of a number are those of the binary
+// fraction that its writer held, and say nothing of how well that was known.
+const binary64 = 17
+
 // Digits is the precision of one printed number: half a unit of its last
 // digit, and whether the value is a whole number, which says nothing about
 // rounding. It is false for text that is no finite number.
@@ -62,8 +67,11 @@ func Read(text string) (Number, bool) {
 		Padded: len(fraction) > 1 && strings.HasSuffix(fraction, "0"),
 	}
 	if digits := strings.TrimLeft(whole+fraction, "0"); digits != "" {
-		n.Significant = len(digits)
+		n.Significant = min(len(digits), binary64)
 		n.Lead = exponent - len(fraction) + len(digits) - 1
+		if len(digits) > binary64 {
+			n.Half = math.Max(n.Half, math.Abs(value)*unit64)
+		}
 	}
 	return n, true
 }

@@ -158,3 +158,13 @@ func TestOfFormats(t *testing.T) {
 		}
 	}
 }
+
+// A float64 printed with 19 digits is known to 17 at best: its place in binary.
+func TestMoreDigitsThanBinary(t *testing.T) {
+	n, ok := tolerance.Read("7.071067811865475727e-01")
+	assert.True(t, ok)
+	assert.Equal(t, 17, n.Significant)
+	assert.Equal(t, 0.7071067811865475727/(1<<53), n.Half)
+	n, _ = tolerance.Read("0.70710678118654757")
+	assert.Equal(t, 0.5e-17, n.Half) // 17 digits stand as they are
+}
