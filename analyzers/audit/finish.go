@@ -50,7 +50,7 @@ func (a *audit) frames() []report.Axes {
 	var list []report.Axes
 	for _, p := range a.tree.Policies {
 		for name, f := range p.Frames() {
-			list = append(list, report.Axes{Name: name, Axes: f.Triad.String(), Hand: f.Triad.Handedness(), Place: f.Place})
+			list = append(list, report.Axes{Name: name, Axes: f.Triad.String(), Hand: f.Triad.Handedness(), Place: f.Place, Declared: true})
 		}
 	}
 	for _, v := range a.result.Values {

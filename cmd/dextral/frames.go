@@ -23,7 +23,7 @@ func framesCommand(s streams) *cobra.Command {
 between, each edge with its place and equation, and every loop with its closure
 error. Frames that only a key such as T_cam_imu names are joined within the mapping
 that holds the key. Frames whose axes are declared in dextral.toml, or stated by a
-triad in a file, come first, with their handedness.`,
+triad in a file, come first, with their handedness; in DOT they stand in the nodes.`,
 		Example: `  dextral frames calib/
   dextral frames --format dot calib/ | dot -Tsvg > frames.svg`,
 		RunE: func(c *cobra.Command, paths []string) error {
@@ -40,7 +40,7 @@ triad in a file, come first, with their handedness.`,
 					return err
 				}
 			}
-			if err := write(s.out, report.FrameGraphs(r.Chains)); err != nil {
+			if err := write(s.out, report.FrameGraphs(r.Chains, r.Frames)); err != nil {
 				return err
 			}
 			if len(r.Report.Failed) > 0 {

@@ -3,7 +3,10 @@ package report
 import (
 	"fmt"
 	"io"
+	"maps"
 	"math"
+	"path"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -17,6 +20,7 @@ type FrameGraph struct {
 	Title string // the file, or the files of a rig
 	Sense string // what keys such as T_a_b mean here; "" if there are none
 	Parts [][]string
+	Axes  []Axes // of those frames of the graph whose axes are known
 	Edges []FrameEdge
 	Loops []FrameLoop
 }
@@ -39,11 +43,16 @@ type FrameLoop struct {
 	Verdict string
 }
 
-// FrameGraphs draws up chains.
-func FrameGraphs(chains []*rules.Chain) []FrameGraph {
+// FrameGraphs draws up chains, with the axes of frames that are known.
+func FrameGraphs(chains []*rules.Chain, axes []Axes) []FrameGraph {
 	var graphs []FrameGraph
 	for _, c := range chains {
 		g := FrameGraph{Title: ChainTitle(c), Parts: c.Graph.Parts()}
+		for _, a := range axes {
+			if a.about(g.Parts, chainFiles(c)) {
+				g.Axes = append(g.Axes, a)
+			}
+		}
 		if c.Sense != rules.NoSubscripts {
 			g.Sense = c.Sense.String()
 		}
@@ -60,14 +69,32 @@ func FrameGraphs(chains []*rules.Chain) []FrameGraph {
 	return graphs
 }
 
-// ChainTitle names a chain by its file, or the files of a rig.
-func ChainTitle(c *rules.Chain) string {
+// about reports whether axes are those of a frame of a graph: declared for a directory
+// that holds its files, or stated in one of them.
+func (a Axes) about(parts [][]string, files []string) bool {
+	if !slices.ContainsFunc(parts, func(part []string) bool { return slices.Contains(part, a.Name) }) {
+		return false
+	}
+	return slices.ContainsFunc(files, func(file string) bool {
+		dir := path.Dir(a.Place.Path)
+		return file == a.Place.Path || a.Declared && (dir == "." && !strings.HasPrefix(file, "..") || strings.HasPrefix(file, dir+"/"))
+	})
+}
+
+// chainFiles are the files of a chain, in order.
+func chainFiles(c *rules.Chain) []string {
 	var paths []string
 	for _, l := range c.Links {
 		if p := l.Value.Place.Path; len(paths) == 0 || paths[len(paths)-1] != p {
 			paths = append(paths, p)
 		}
 	}
+	return paths
+}
+
+// ChainTitle names a chain by its file, or the files of a rig.
+func ChainTitle(c *rules.Chain) string {
+	paths := chainFiles(c)
 	if c.Rig {
 		return "rig of " + strings.Join(paths, ", ")
 	}
@@ -92,6 +119,8 @@ type Axes struct {
 	Axes  string // in words, or the key that states them
 	Hand  convention.Hand
 	Place rules.Place
+
+	Declared bool // in dextral.toml, for all files below it
 }
 
 // FrameAxes prints the axes of frames for people.
@@ -125,11 +154,7 @@ func FramesText(w io.Writer, graphs []FrameGraph) error {
 			p.line(fmt.Sprintf("  edge    v_%s = R v_%s  %s %s%s", e.To, e.From, e.Place, e.Key, note))
 		}
 		for _, l := range g.Loops {
-			text := fmt.Sprintf("  loop    %s: %s; rotation off by %s", strings.Join(append(l.Frames, l.Frames[0]), " -> "), l.Verdict, loopNumber(l.Degrees))
-			if l.Gap > l.OpenGap {
-				text += ", translation by " + strconv.FormatFloat(l.Gap, 'g', 3, 64)
-			}
-			p.line(text)
+			p.line("  loop    " + l.text())
 		}
 		p.line("")
 	}
@@ -137,16 +162,37 @@ func FramesText(w io.Writer, graphs []FrameGraph) error {
 	return p.Flush()
 }
 
+// text says what the loop leaves open.
+func (l FrameLoop) text() string {
+	text := fmt.Sprintf("%s: %s; rotation off by %s", strings.Join(append(slices.Clone(l.Frames), l.Frames[0]), " -> "), l.Verdict, loopNumber(l.Degrees))
+	if l.Gap > l.OpenGap {
+		text += ", translation by " + strconv.FormatFloat(l.Gap, 'g', 3, 64)
+	}
+	return text
+}
+
 func loopNumber(deg float64) string {
 	return residualText(rules.Quantity{Value: deg, Unit: "deg", Known: true}) + " deg"
 }
 
 // FramesDOT prints frame graphs in the DOT language, one digraph each, an arrow
-// from the frame whose coordinates go in to the one whose come out.
+// from the frame whose coordinates go in to the one whose come out. Nodes carry the
+// axes that are known, and the label of the graph its loops.
 func FramesDOT(w io.Writer, graphs []FrameGraph) error {
 	p := newPrinter(w, Options{})
 	for _, g := range graphs {
 		p.line("digraph " + strconv.Quote(g.Title) + " {")
+		labels, loops := map[string]string{}, []string{g.Title}
+		for _, a := range g.Axes {
+			labels[a.Name] += fmt.Sprintf("\n%s, %s", a.Axes, a.Hand)
+		}
+		for _, l := range g.Loops {
+			loops = append(loops, "loop "+l.text())
+		}
+		p.line(fmt.Sprintf("  label=%s;", strconv.Quote(strings.Join(loops, "\n"))))
+		for _, name := range slices.Sorted(maps.Keys(labels)) {
+			p.line(fmt.Sprintf("  %s [label=%s];", strconv.Quote(name), strconv.Quote(name+labels[name])))
+		}
 		for _, e := range g.Edges {
 			style := ""
 			if e.Assumed {
