@@ -41,6 +41,37 @@ func largeAngle(v *Value) *Finding {
 	return f
 }
 
+// outOfRange judges angles whose range somebody states. Without such a statement angles
+// may run on as they like.
+func outOfRange(v *Value) *Finding {
+	claim, claimed := v.Claims.On(convention.OfRange)
+	unit, limits := v.Claims.Unit(), v.Claims.Range()
+	if !claimed || unit == convention.UnitUnstated || v.Form != convention.Angles {
+		return nil
+	}
+	worst, beyond := -1, v.precision().Angle(unit)
+	for i, n := range v.Numbers {
+		x := n.Value * unit.InRadians()
+		if by := math.Max(limits.Low-x, x-limits.High); by > beyond {
+			worst, beyond = i, by
+		}
+	}
+	if worst < 0 {
+		return nil
+	}
+	x := v.Numbers[worst].Value * unit.InRadians()
+	f := finding(AngleOutOfRange, v, claim, "%s states angles from %s, but the %s one is %s, which is %s outside; clamped to the range it turns by that much less",
+		v.name(), limits, ordinal(worst), degrees(x), degrees(beyond))
+	f.Evidence = []Evidence{{What: ordinal(worst) + " angle, at the end of the range", Stated: Degrees(math.Min(math.Max(x, limits.Low), limits.High)), Computed: Degrees(x), Residual: Degrees(math.Max(x-limits.High, limits.Low-x))}}
+	f.Remedy = "correct the angle, or the range that is stated"
+	if turned := x - 2*math.Pi*math.Ceil((x-limits.High)/(2*math.Pi)); x > limits.High && turned >= limits.Low {
+		f.Remedy = "within the range the same turn is " + degrees(turned)
+	} else if turned := x + 2*math.Pi*math.Ceil((limits.Low-x)/(2*math.Pi)); x < limits.Low && turned <= limits.High {
+		f.Remedy = "within the range the same turn is " + degrees(turned)
+	}
+	return f
+}
+
 // locked notes three angles at gimbal lock: only the sum or the difference of the
 // outer two is determined, so that whoever computes angles from the rotation gets
 // others. It speaks only where both outer angles say something.

@@ -27,6 +27,7 @@ const (
 	FrameOfTwoHands       = "frame-of-two-hands"
 	BottomRowWrong        = "bottom-row-wrong"
 	AngleBeyondTurn       = "angle-beyond-turn"
+	AngleOutOfRange       = "angle-out-of-range"
 	GimbalLocked          = "gimbal-locked"
 	MessageMalformed      = "message-malformed"
 	RatesDiffer           = "rates-differ"
@@ -84,6 +85,7 @@ var catalogue = []Rule{
 	{FrameOfTwoHands, "The axes of one frame are stated twice, once right-handed and once left-handed.", Error},
 	{BottomRowWrong, "The last row of a 4x4 that claims to be a rigid transform is not 0 0 0 1.", Error},
 	{AngleBeyondTurn, "An angle stated in radians is several turns, and a round number of degrees.", Warning},
+	{AngleOutOfRange, "An angle lies outside the range that is stated for it.", Error},
 	{GimbalLocked, "Three angles are at gimbal lock, where only a sum or difference of two is determined.", Note},
 	{MessageMalformed, "An attitude message breaks a rule of the standard that its version names.", Error},
 	{RatesDiffer, "Two statements of one angular rate differ.", Error},

@@ -40,7 +40,7 @@ func checkOne(v *Value) []*Finding {
 	case convention.Transform:
 		found = add(add(add(found, properRotation(v)), storedByRows(v)), bottomRow(v))
 	case convention.Angles:
-		found = add(add(found, largeAngle(v)), locked(v))
+		found = add(add(add(found, largeAngle(v)), outOfRange(v)), locked(v))
 	case convention.Triad:
 		found = add(found, triadHand(v))
 	case convention.AxisMap:

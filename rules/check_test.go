@@ -313,20 +313,6 @@ func TestBottomRow(t *testing.T) {
 	assert.Equal(t, "note bottom-row-wrong", rules(CheckValues([]*Value{nested})))
 }
 
-// What gimbal lock leaves determined, by algebra: Rz(a) Ry(90 deg) Rx(b) = Ry(90 deg) Rx(b-a),
-// and at -90 deg the sum; a label that fits both kinds of axes names neither.
-func TestKeptAtGimbalLock(t *testing.T) {
-	message := func(text, numbers string) string {
-		found := CheckValues([]*Value{value(convention.Angles, numbers, label(t, text), convention.Degree)})
-		require.Len(t, found, 1)
-		return found[0].Message
-	}
-	assert.Contains(t, message("z-y'-x''", "50.0 90.0 20.0"), "only their difference, 30 deg, is determined")
-	assert.Contains(t, message("z-y'-x''", "50.0 -90.0 20.0"), "only their sum, 70 deg, is determined")
-	assert.Contains(t, message("z-y-x about fixed axes", "50.0 90.0 20.0"), "only their sum, 70 deg, is determined")
-	assert.Contains(t, message("zyx", "50.0 90.0 20.0"), "their sum or difference is")
-}
-
 // Whole numbers near a scale are judged as parts of it, far from all scales as they are.
 func TestNearlyQuantised(t *testing.T) {
 	message := func(numbers string) string {
@@ -337,26 +323,6 @@ func TestNearlyQuantised(t *testing.T) {
 	assert.Contains(t, message("14190 3000 2000 7300"), "as parts of 16384 its norm is 0.99853")
 	assert.Contains(t, message("32600 0 0 0"), "as parts of 32767 its norm is 0.9949")
 	assert.Contains(t, message("20000 0 0 0"), "but its norm is 20000")
-}
-
-// Gimbal lock is noted where both outer angles say something, whatever the unit.
-func TestGimbalLock(t *testing.T) {
-	zyx := label(t, "z-y'-x''")
-	for text, want := range map[string]string{"30.0 90.0 20.0": "note gimbal-locked", "30.0 -90.0 20.0": "note gimbal-locked", "30.0 89.9 20.0": "", "30.0 90.0 0.0": "", "90.0 30.0 90.0": ""} {
-		assert.Equal(t, want, rules(CheckValues([]*Value{value(convention.Angles, text, zyx, convention.Degree)})), text)
-	}
-	assert.Equal(t, "note gimbal-locked", rules(CheckValues([]*Value{value(convention.Angles, "0.3 1.570796 0.2", zyx, convention.Radian)})))
-	assert.Empty(t, CheckValues([]*Value{value(convention.Angles, "30.0 90.0 20.0", label(t, "z-x'-z''"), convention.Degree)}))
-}
-
-// Degrees where radians are stated show by their size and by being round; angles that
-// ran on do not.
-func TestLargeAngle(t *testing.T) {
-	xyz := label(t, "x-y-z about fixed axes")
-	for text, want := range map[string]string{"0 90 0": "warning angle-beyond-turn", "0 -45 180": "warning angle-beyond-turn", "0 1.5708 0": "", "0 7.1 0": "", "0 0 5": "", "0 3600 0": "", "10 1.5 0": ""} {
-		assert.Equal(t, want, rules(CheckValues([]*Value{value(convention.Angles, text, xyz, convention.Radian)})), text)
-	}
-	assert.Empty(t, CheckValues([]*Value{value(convention.Angles, "0 720 0", xyz, convention.Degree)}))
 }
 
 // A map between a right-handed and a left-handed frame, as declared, must mirror.

@@ -72,11 +72,12 @@ func (cs Claims) Conflicts(s convention.Subject) []Claim {
 }
 
 // exclude reports whether two terms on one subject cannot both be true. Angle
-// labels that share a reading can; so can directions between other frames, and
-// forms, since a key may name both the thing and its container.
+// labels that share a reading can; so can directions between other frames, ranges, one
+// of which may be the wider one, and forms, since a key may name both the thing and its
+// container.
 func exclude(a, b convention.Term) bool {
 	switch a := a.(type) {
-	case convention.Form:
+	case convention.Form, convention.Range:
 		return false
 	case convention.Direction:
 		d, ok := b.(convention.Direction)
@@ -113,3 +114,6 @@ func (cs Claims) Direction() convention.Direction { return term[convention.Direc
 
 // Product is the claimed quaternion algebra.
 func (cs Claims) Product() convention.Product { return term[convention.Product](cs) }
+
+// Range is the claimed range of angles.
+func (cs Claims) Range() convention.Range { return term[convention.Range](cs) }

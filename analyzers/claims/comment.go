@@ -20,6 +20,7 @@ type Comment struct {
 	Storage   convention.Storage
 	Product   convention.Product
 	Hand      convention.Hand
+	Range     convention.Range
 	Direction convention.Direction
 	Equation  bool          // Direction comes from an equation, not from "a to b"
 	Roles     [3]angle.Role // roll pitch yaw
@@ -53,6 +54,7 @@ func ReadComment(text string) *Comment {
 	c.Form = one(c.words, formPhrases)
 	c.Unit = UnitIn(text)
 	c.Roles, _ = rolesIn(c.words)
+	c.Range = rangeIn(text, c.words)
 	c.Angular = c.Roles[0] != angle.RoleNone || c.Form == convention.Angles || one(c.words, phrases[bool]{"angle": true, "angles": true})
 	c.readDirection()
 	return c

@@ -55,7 +55,7 @@ func wants(f convention.Form, s convention.Subject) bool {
 	case convention.Rotation, convention.Transform:
 		return s == convention.OfStorage || s == convention.OfDirection
 	case convention.Angles:
-		return s == convention.OfUnit || s == convention.OfDirection
+		return s == convention.OfUnit || s == convention.OfDirection || s == convention.OfRange
 	case convention.RotationVector, convention.AxisAngle:
 		return s == convention.OfUnit || s == convention.OfDirection
 	case convention.Triad, convention.AxisMap:
@@ -79,6 +79,8 @@ func stated(t convention.Term) bool {
 		return t != convention.ProductUnstated
 	case convention.Hand:
 		return t != convention.HandUnstated
+	case convention.Range:
+		return t.Stated()
 	case convention.Direction:
 		return t.Stated()
 	}
@@ -133,6 +135,7 @@ func (w *walker) remarkTerms(f convention.Form, v *rules.Value, r []remark) {
 		}
 		if c.beside || c.Angular || f == convention.RotationVector || f == convention.AxisAngle {
 			w.addTerm(f, v, c.claim(c.Unit, rules.Comment))
+			w.addTerm(f, v, c.claim(c.Range, rules.Comment))
 		}
 		source := rules.Name // "a to b" leaves room
 		if c.Equation {

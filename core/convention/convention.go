@@ -18,7 +18,11 @@
 // coordinate map (CCSDS 504.0-B-2, annex F).
 package convention
 
-import "strings"
+import (
+	"math"
+	"strconv"
+	"strings"
+)
 
 // A Term is one stated choice: a value of one of this package's types, or an
 // angle label. Subject names the question that it answers.
@@ -42,10 +46,11 @@ const (
 	OfDirection         // which coordinates go in and come out
 	OfHand              // handedness of a triad
 	OfRates             // axes in which angular rates are resolved
+	OfRange             // range that angles keep to
 	subjects
 )
 
-var subjectNames = [...]string{"", "form", "scalar place", "product", "storage", "unit", "sequence", "direction", "hand", "rate axes"}
+var subjectNames = [...]string{"", "form", "scalar place", "product", "storage", "unit", "sequence", "direction", "hand", "rate axes", "range"}
 
 // String names the subject in lower case; "" for OfNothing.
 func (s Subject) String() string { return subjectNames[s] }
@@ -194,6 +199,25 @@ func (RateAxes) Subject() Subject { return OfRates }
 
 func (a RateAxes) String() string {
 	return [...]string{"rate axes unstated", "rates in body axes", "rates in space axes"}[a]
+}
+
+// Range is the range that angles keep to, in radians, both ends included. The zero
+// value is unstated.
+type Range struct{ Low, High float64 }
+
+// Subject is OfRange.
+func (Range) Subject() Subject { return OfRange }
+
+// Stated reports whether the range has any width.
+func (r Range) Stated() bool { return r.Low < r.High }
+
+// String prints the range in degrees.
+func (r Range) String() string {
+	if !r.Stated() {
+		return "range unstated"
+	}
+	deg := func(rad float64) string { return strconv.FormatFloat(rad*180/math.Pi, 'g', 6, 64) }
+	return deg(r.Low) + " to " + deg(r.High) + " deg"
 }
 
 // Direction is the equation v_To = R v_From. Empty names are unstated.

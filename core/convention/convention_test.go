@@ -32,12 +32,13 @@ func TestDirection(t *testing.T) {
 
 // TestTerms: zero values say that nothing is stated, and every subject has a name.
 func TestTerms(t *testing.T) {
-	for _, term := range []Term{ScalarUnstated, ProductUnstated, StorageUnstated, UnitUnstated, HandUnstated, RateAxesUnstated, Direction{}} {
+	for _, term := range []Term{ScalarUnstated, ProductUnstated, StorageUnstated, UnitUnstated, HandUnstated, RateAxesUnstated, Direction{}, Range{}} {
 		assert.Contains(t, term.String(), "unstated")
 	}
 	for _, s := range Subjects() {
 		assert.NotEmpty(t, s.String())
 	}
+	assert.Equal(t, "-180 to 180 deg", Range{-math.Pi, math.Pi}.String())
 	assert.Equal(t, math.Pi/180, Degree.InRadians())
 	assert.Equal(t, 1.0, Radian.InRadians())
 }

@@ -148,7 +148,7 @@ func concerns(s convention.Subject, f convention.Form) bool {
 		return isMatrix(f) || f == convention.NoForm
 	case convention.OfUnit:
 		return f == convention.Angles || f == convention.RotationVector || f == convention.AxisAngle || f == convention.NoForm
-	case convention.OfSequence:
+	case convention.OfSequence, convention.OfRange:
 		return f == convention.Angles || f == convention.NoForm
 	}
 	return true

@@ -158,6 +158,9 @@ func (t *table) claim() claim {
 		}
 	}
 	t.form(&c)
+	if low, high, ok := t.interval("range_deg"); ok {
+		c.said = append(c.said, t.declares("range_deg", convention.Range{Low: low * math.Pi / 180, High: high * math.Pi / 180}))
+	}
 	if u, ok := t.number("uncertainty_deg"); ok {
 		if !(u > 0 && u <= 180) {
 			t.r.fail(t.valueAt("uncertainty_deg"), "uncertainty_deg%s must be above 0 and at most 180 degrees", t.within())

@@ -3,6 +3,7 @@ package policy
 import (
 	"fmt"
 	"maps"
+	"math"
 	"slices"
 	"strings"
 	"time"
@@ -122,6 +123,34 @@ func (t *table) number(key string) (float64, bool) {
 	}
 	t.wrong(key, "a number")
 	return 0, false
+}
+
+// interval reads an array of two numbers, the lower one first.
+func (t *table) interval(key string) (low, high float64, ok bool) {
+	v, ok := t.get(key)
+	if !ok {
+		return 0, 0, false
+	}
+	const want = "an array of two numbers, the lower one first, such as [-180, 180]"
+	list, ok := v.([]any)
+	if !ok {
+		t.wrong(key, want)
+		return 0, 0, false
+	}
+	var ends []float64
+	for _, v := range list {
+		switch x := v.(type) {
+		case int64:
+			ends = append(ends, float64(x))
+		case float64:
+			ends = append(ends, x)
+		}
+	}
+	if len(list) != 2 || len(ends) != 2 || !(ends[0] < ends[1]) || math.IsInf(ends[1]-ends[0], 0) {
+		t.r.fail(t.valueAt(key), "%s%s must be %s", key, t.within(), want)
+		return 0, 0, false
+	}
+	return ends[0], ends[1], true
 }
 
 // truth reads a boolean.
