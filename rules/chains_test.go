@@ -75,6 +75,8 @@ func TestChains(t *testing.T) {
 			{"stated twice, half a degree apart", []*Value{stated("mount.T", "a", "b", ab), stated("check.T", "a", "b", trimmed(ab, 0.009))}, "note stated-twice", NoSubscripts},
 			{"one edge of three reversed", []*Value{stated("x.T", "a", "b", ab), stated("y.T", "b", "c", bc.Inverse()), stated("z.T", "a", "c", ac)}, "error loop-open", NoSubscripts},
 			{"a loop no change closes", []*Value{stated("x.T", "a", "b", ab), stated("y.T", "b", "c", trimmed(bc, 0.006)), stated("z.T", "a", "c", ac)}, "note loop-open", NoSubscripts},
+			{"one key reversed, whatever they mean", []*Value{subscripted("T_a_b", ab), subscripted("T_b_c", bc), subscripted("T_a_c", ac.Inverse())}, "warning loop-open", SenseOpen},
+			{"keys that no change reconciles", []*Value{subscripted("T_a_b", ab), subscripted("T_b_c", trimmed(bc, 0.006)), subscripted("T_a_c", ac)}, "note loop-open", SenseOpen},
 			{"two cameras", []*Value{subscripted("cam0.T_cam_imu", ab), subscripted("cam1.T_cam_imu", bc)}, "", SenseOpen},
 			{"two unrelated edges", []*Value{subscripted("T_a_b", ab), subscripted("T_c_d", bc)}, "", SenseOpen},
 		} {

@@ -20,6 +20,8 @@ func CheckChain(c *Chain) []*Finding {
 	for _, l := range c.Loops() {
 		if l.Decidable {
 			found = add(found, c.openLoop(l))
+		} else {
+			found = add(found, c.openEitherWay(l))
 		}
 	}
 	return found
@@ -30,8 +32,10 @@ type Loop struct {
 	frame.Loop
 	Result identify.LoopResult
 	// Decidable: the result does not hang on the meaning of keys such as
-	// T_a_b, or that meaning is known.
+	// T_a_b, or that meaning is known. Where it does, Result is that of ToFrom and
+	// Turned that of FromTo.
 	Decidable bool
+	Turned    identify.LoopResult
 }
 
 // Loops are the independent loops of the chain that are not settled elsewhere:
@@ -43,7 +47,11 @@ func (c *Chain) Loops() []Loop {
 		if c.twins(l) || c.Rig && c.oneFile(l) {
 			continue
 		}
-		loops = append(loops, Loop{Loop: l, Result: identify.Loop(c.edges(l)), Decidable: c.decidable(l)})
+		loop := Loop{Loop: l, Result: identify.Loop(c.edges(l)), Decidable: c.decidable(l)}
+		if !loop.Decidable {
+			loop.Turned = identify.Loop(c.turned(l))
+		}
+		loops = append(loops, loop)
 	}
 	return loops
 }

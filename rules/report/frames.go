@@ -103,6 +103,8 @@ func ChainTitle(c *rules.Chain) string {
 
 func verdict(l rules.Loop) string {
 	switch {
+	case l.OpenEitherWay():
+		return "does not close, whatever keys such as T_a_b mean"
 	case !l.Decidable:
 		return "cannot be decided: it hangs on the meaning of keys such as T_a_b"
 	case l.Result.Verdict == identify.Agree:
