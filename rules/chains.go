@@ -184,8 +184,8 @@ func (c *Chain) edges(l frame.Loop) []identify.Edge {
 	return edges
 }
 
-// translation is that of a rigid transform, and how far its digits leave it
-// open as a length.
+// translation is that of a rigid transform, and how far its digits, or a declaration,
+// leave it open as a length.
 func (v *Value) translation() (t rotor.Vec, slack float64, ok bool) {
 	if v.Form != convention.Transform {
 		return t, 0, false
@@ -195,5 +195,8 @@ func (v *Value) translation() (t rotor.Vec, slack float64, ok bool) {
 		three = append(three, v.Numbers[v.entry(i, 3)])
 	}
 	t = rotor.Vec{X: three[0].Value, Y: three[1].Value, Z: three[2].Value}
+	if v.Offset > 0 {
+		return t, v.Offset, true
+	}
 	return t, precisionOf(three).Norm(3, t.Norm()), true
 }

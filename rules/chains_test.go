@@ -137,6 +137,24 @@ func TestDeclaredUncertainty(t *testing.T) {
 	}
 }
 
+// TestDeclaredOffset: translations that miss by more than they are declared to be
+// uncertain are an error, and within the declaration the loop closes. The
+// digits of the rotations add less than a ten-thousandth.
+func TestDeclaredOffset(t *testing.T) {
+	rnd := rand.New(rand.NewPCG(2, 7))
+	ab, bc := randomRigid(rnd), randomRigid(rnd)
+	ac := ab.Mul(bc)
+	ac.T.Y += 0.01
+	values := []*Value{stated("x.T", "a", "b", ab), stated("y.T", "b", "c", bc), stated("z.T", "a", "c", ac)}
+	assert.Equal(t, "note loop-open", rules(CheckChain(NewChain(values))))
+	for offset, want := range map[float64]string{0.001: "error loop-open", 0.003: "error loop-open", 0.004: ""} {
+		for _, v := range values {
+			v.Offset = offset
+		}
+		assert.Equal(t, want, rules(CheckChain(NewChain(values))), offset)
+	}
+}
+
 // TestParents: a tree is silent, a frame with two parents and a cycle are not.
 func TestParents(t *testing.T) {
 	edge := func(parent, child string) *Value {

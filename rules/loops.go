@@ -148,15 +148,16 @@ func (c *Chain) ruleOfLoop(l frame.Loop) string {
 }
 
 func (c *Chain) levelOfLoop(l Loop) Level {
-	stated, declared, uncertainty := true, true, 0.0
+	stated, declared, uncertainty, offsets := true, true, 0.0, true
 	for _, s := range l.Steps {
 		link := c.link(s)
 		stated = stated && !link.Subscript && link.Claim.Source.Stated()
 		declared = declared && link.Value.Uncertainty > 0
 		uncertainty += link.Value.Uncertainty
+		offsets = offsets && link.Value.Offset > 0
 	}
 	switch {
-	case declared && l.Result.Angle > uncertainty:
+	case declared && l.Result.Angle > uncertainty, offsets && l.Result.Gap > l.Result.OpenGap:
 		return Error
 	case l.Result.Verdict != identify.Contradicted:
 		return Note

@@ -36,6 +36,7 @@ type Value struct {
 	Why       string // why it is undecided; "" if it is read
 
 	Uncertainty float64 // declared uncertainty of the orientation in radians; 0 = none declared
+	Offset      float64 // declared uncertainty of the translation, in its unit; 0 = none declared
 	Double      bool    // declared to carry double precision
 
 	trial bool // made up to judge an edit

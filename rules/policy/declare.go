@@ -18,6 +18,7 @@ type claim struct {
 	direction   *rules.Claim    // with names that the key patterns capture; nil if there are none
 	form        convention.Form // NoForm: not declared
 	uncertainty float64         // radians; 0: not declared
+	offset      float64         // of the translation, in the unit of the file; 0: not declared
 	double      bool
 	saysDouble  bool
 }
@@ -71,6 +72,9 @@ func (p *Policy) Declare(v *rules.Value) {
 		}
 		if c.uncertainty > 0 {
 			v.Uncertainty = c.uncertainty
+		}
+		if c.offset > 0 {
+			v.Offset = c.offset
 		}
 		if c.saysDouble {
 			v.Double = c.double

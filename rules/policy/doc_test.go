@@ -106,7 +106,7 @@ zzz = 1
 		asked[name] = tab.keys
 	}
 	require.Len(t, asked["waiver"], 5)
-	require.Len(t, asked["claim"], 13)
+	require.Len(t, asked["claim"], 14)
 	examples := ""
 	for _, b := range blocks(t, Doc) {
 		if b.info == "toml" {

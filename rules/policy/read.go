@@ -167,6 +167,12 @@ func (t *table) claim() claim {
 		}
 		c.uncertainty = u * math.Pi / 180
 	}
+	if u, ok := t.number("uncertainty_length"); ok {
+		if !(u > 0) || math.IsInf(u, 1) {
+			t.r.fail(t.valueAt("uncertainty_length"), "uncertainty_length%s must be above 0, in the unit of the file", t.within())
+		}
+		c.offset = u
+	}
 	c.double, c.saysDouble = t.truth("double")
 	if declared := []string{"files", "keys"}; !slices.ContainsFunc(t.keys, func(k string) bool {
 		_, there := t.vals[k]

@@ -65,6 +65,9 @@ func (p *printer) reading(v *rules.Value) {
 	if v.Uncertainty > 0 {
 		label(faint, "within", fmt.Sprintf("%s deg, declared", residualText(rules.Degrees(v.Uncertainty))))
 	}
+	if v.Offset > 0 {
+		label(faint, "within", fmt.Sprintf("%s in the unit of its translation, declared", residualText(rules.Plain(v.Offset))))
+	}
 }
 
 // sizeText says how large a matrix is.
