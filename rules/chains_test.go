@@ -169,3 +169,41 @@ func TestParents(t *testing.T) {
 	unnamed.Claims[len(unnamed.Claims)-1].Text = "to_frame: base, from_frame: imu"
 	assert.Empty(t, CheckParents(NewChain([]*Value{unnamed, edge("mast", "imu")})), "only keys that speak of parents make a tree")
 }
+
+// TestRigTree: of a rig is reported what its files show together only.
+func TestRigTree(t *testing.T) {
+	edge := func(path, parent, child string) *Value {
+		v := transform(parent+"."+child, matrix.Rigid{R: matrix.Identity, T: rotor.Vec{X: 1}})
+		v.Place.Path = path
+		v.Claims = append(v.Claims, Claim{Says: convention.Direction{To: parent, From: child}, Source: Sibling, Text: "parent: " + parent + ", child: " + child})
+		return v
+	}
+	for _, c := range []struct {
+		name   string
+		values []*Value
+		want   string
+	}{
+		{"a tree over two files", []*Value{edge("a.yaml", "base", "imu"), edge("b.yaml", "imu", "lens")}, ""},
+		{"one edge stated in both", []*Value{edge("a.yaml", "base", "imu"), edge("b.yaml", "base", "imu")}, ""},
+		{"two parents over two files", []*Value{edge("a.yaml", "base", "imu"), edge("b.yaml", "mast", "imu")}, "warning child-of-two"},
+		{"two parents in one file", []*Value{edge("a.yaml", "base", "imu"), edge("a.yaml", "mast", "imu"), edge("b.yaml", "hull", "base")}, ""},
+		{"a cycle over two files", []*Value{edge("a.yaml", "base", "imu"), edge("b.yaml", "imu", "base")}, "warning parent-cycle"},
+	} {
+		assert.Equal(t, c.want, rules(CheckParents(NewRig(c.values))), c.name)
+	}
+}
+
+// TestRigHands: two files of a rig that state axes of one frame with different
+// handedness contradict each other; one file by itself is reported elsewhere.
+func TestRigHands(t *testing.T) {
+	triad := func(path, numbers string) *Value {
+		v := value(convention.Triad, numbers)
+		v.Key, v.Place.Path = "body_axes", path
+		return v
+	}
+	const right, left = "1 0 0 0 1 0 0 0 1", "1 0 0 0 1 0 0 0 -1"
+	assert.Equal(t, "error frame-of-two-hands", rules(CheckRigHands([]*Value{triad("a.yaml", right), triad("b.yaml", left)})))
+	assert.Empty(t, CheckRigHands([]*Value{triad("a.yaml", right), triad("b.yaml", right)}))
+	assert.Empty(t, CheckRigHands([]*Value{triad("a.yaml", right), triad("a.yaml", left)}))
+	assert.Empty(t, CheckValues([]*Value{triad("a.yaml", right), triad("b.yaml", left)}), "without a rig they are two frames")
+}

@@ -16,7 +16,7 @@ func CheckValues(values []*Value) []*Finding {
 	for _, v := range values {
 		found = append(found, checkOne(v)...)
 	}
-	return append(append(found, twoHands(values)...), checkTwins(values)...)
+	return append(append(found, twoHands(values, false)...), checkTwins(values)...)
 }
 
 // checkOne judges a value by itself.

@@ -34,9 +34,15 @@ func (v *Value) Hand() convention.Hand {
 	return convention.LeftHanded
 }
 
-// twoHands reports frames of one file whose axes are stated twice with different
-// handedness.
-func twoHands(values []*Value) []*Finding {
+// CheckRigHands reports frames of a rig whose axes one file states right-handed and
+// another left-handed.
+func CheckRigHands(values []*Value) []*Finding {
+	return slices.DeleteFunc(twoHands(values, true), func(f *Finding) bool { return f.Place.Path == f.Related[0].Place.Path })
+}
+
+// twoHands reports frames of one file, or of one rig, whose axes are stated twice with
+// different handedness.
+func twoHands(values []*Value, rig bool) []*Finding {
 	first := map[string]*Value{}
 	var found []*Finding
 	sorted := slices.Clone(values)
@@ -45,7 +51,10 @@ func twoHands(values []*Value) []*Finding {
 		if v.Hand() == convention.HandUnstated || !v.Decided() || v.FrameName() == "" {
 			continue
 		}
-		key := v.Place.Path + "\x00" + v.FrameName()
+		key := v.FrameName()
+		if !rig {
+			key = v.Place.Path + "\x00" + key
+		}
 		other := first[key]
 		if other == nil {
 			first[key] = v

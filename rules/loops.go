@@ -107,9 +107,9 @@ func (c *Chain) openLoop(l Loop) *Finding {
 	head := c.headline(l.Frames, steps)
 	f.Message = fmt.Sprintf("%s: %s; the rotation is off by %s", head, c.verdictText(steps, r), degrees(r.Angle))
 	if r.Angle <= r.Open && r.Gap > 0 {
-		f.Message = fmt.Sprintf("%s: %s; the rotation is off by %s", head, c.gapText(steps, r), degrees(r.Angle))
+		f.Message = fmt.Sprintf("%s: %s", head, c.gapText(steps, r))
 		if c.keptTranslation(steps) {
-			f.Level = Warning
+			f.Level = max(f.Level, Warning)
 			f.Remedy = "the inverse of (R, t) is (R~, -R~ t): invert the translation with the rotation"
 		}
 	}
@@ -220,7 +220,8 @@ func (c *Chain) keptTranslation(steps []frame.Step) bool {
 	return okA && okB && min(a.Sub(b).Norm(), a.Add(b).Norm()) <= slackA+slackB
 }
 
-// CheckParents judges the frames that neighbouring keys name parent and child.
+// CheckParents judges the frames that neighbouring keys name parent and child. Of a rig
+// it reports what no file shows by itself.
 func CheckParents(c *Chain) []*Finding {
 	if c == nil {
 		return nil
@@ -233,9 +234,15 @@ func CheckParents(c *Chain) []*Finding {
 	}
 	var found []*Finding
 	for _, cycle := range g.ParentCycles() {
+		if c.Rig && c.samePath(cycle) {
+			continue
+		}
 		found = append(found, c.tree(ParentCycle, cycle, fmt.Sprintf("frame %s is its own ancestor", cycle[0].From)))
 	}
 	for _, shared := range g.SharedChildren() {
+		if c.Rig && c.samePath(shared) {
+			continue
+		}
 		var parents []string
 		for _, e := range shared {
 			if !slices.Contains(parents, e.To) {
@@ -245,6 +252,13 @@ func CheckParents(c *Chain) []*Finding {
 		found = append(found, c.tree(ChildOfTwo, shared, fmt.Sprintf("frame %s has %d parents: %s", shared[0].From, len(parents), strings.Join(parents, ", "))))
 	}
 	return found
+}
+
+// samePath reports whether edges are of one file.
+func (c *Chain) samePath(edges []frame.Edge) bool {
+	return !slices.ContainsFunc(edges, func(e frame.Edge) bool {
+		return c.Links[e.ID].Value.Place.Path != c.Links[edges[0].ID].Value.Place.Path
+	})
 }
 
 // namesParent reports whether the keys that give a direction speak of a tree.

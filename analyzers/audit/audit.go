@@ -232,9 +232,11 @@ func (a *audit) judge(list []*found) {
 		a.result.Series = append(a.result.Series, f.series...)
 	}
 	for _, name := range slices.Sorted(maps.Keys(rigs)) {
+		out.Findings = append(out.Findings, rules.CheckRigHands(rigs[name])...)
 		if rig := rules.NewRig(rigs[name]); rig != nil {
 			a.result.Chains = append(a.result.Chains, rig)
 			out.Findings = append(out.Findings, rules.CheckChain(rig)...)
+			out.Findings = append(out.Findings, rules.CheckParents(rig)...)
 		}
 	}
 }

@@ -86,6 +86,7 @@ func TestEveryKeyIsDocumented(t *testing.T) {
 	const everything = `
 [defaults]
 [[claim]]
+[[frame]]
 [[rig]]
 [[waiver]]
 zzz = 1
@@ -98,6 +99,7 @@ zzz = 1
 		"":         func(t *table) { (&Policy{}).read(t) },
 		"defaults": func(t *table) { t.conventions() },
 		"claim":    func(t *table) { t.claim() },
+		"frame":    func(t *table) { t.frame(nil) },
 		"rig":      func(t *table) { t.rig(nil) },
 		"waiver":   func(t *table) { t.waiver() },
 	} {
