@@ -84,7 +84,8 @@ func (c Claim) words() string {
 // name is how messages call a value.
 func (v *Value) name() string { return cmp.Or(v.Key, v.Form.String()) }
 
-// conflicts reports stated claims about one value that contradict each other.
+// conflicts reports stated claims about one value that contradict each other, and notes
+// those that a neighbouring key contradicts.
 func conflicts(v *Value) []*Finding {
 	var found []*Finding
 	for _, s := range convention.Subjects() {
@@ -95,6 +96,9 @@ func conflicts(v *Value) []*Finding {
 		best, _ := v.Claims.On(s)
 		f := finding(ClaimsConflict, v, best, "%s: the %s is stated twice: %s; %s",
 			v.name(), s, best.words(), others[0].words())
+		if !slices.ContainsFunc(others, func(c Claim) bool { return c.Source.Stated() }) {
+			f.Level = Note
+		}
 		f.Remedy = "make the statements agree; the stronger one, by " + best.Source.String() + ", decided how the value was read"
 		f.Related = append(f.Related, Related{best.Place, "states " + best.Says.String()})
 		for _, o := range others {

@@ -340,3 +340,13 @@ func TestDeclaredHands(t *testing.T) {
 		assert.NotEmpty(t, CheckValues([]*Value{declared(form, mirror, convention.RightHanded)}))
 	}
 }
+
+// A neighbouring key that contradicts a comment or label on the unit is noted; beside a
+// declaration, which is there to correct it, it is not.
+func TestNeighbourConflict(t *testing.T) {
+	for source, want := range map[Source]string{Comment: "note claims-conflict", Label: "note claims-conflict", Declaration: "", Name: ""} {
+		v := value(convention.Angles, "0.1 0.2 0.3", label(t, "z-y'-x''"))
+		v.Claims = append(v.Claims, Claim{Says: convention.Degree, Source: source, Text: "degrees"}, Claim{Says: convention.Radian, Source: Sibling, Text: "units: rad"})
+		assert.Equal(t, want, rules(CheckValues([]*Value{v})), source)
+	}
+}

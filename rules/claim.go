@@ -55,8 +55,9 @@ func (cs Claims) On(s convention.Subject) (Claim, bool) {
 	return best, found
 }
 
-// Conflicts returns the stated claims on a subject that cannot be true together
-// with the strongest one.
+// Conflicts returns the claims on a subject that cannot be true together with the
+// strongest one: stated ones, and beside a comment or a label the unit and the scalar
+// place that a neighbouring key gives, which is often an exception on purpose.
 func (cs Claims) Conflicts(s convention.Subject) []Claim {
 	best, ok := cs.On(s)
 	if !ok {
@@ -64,7 +65,8 @@ func (cs Claims) Conflicts(s convention.Subject) []Claim {
 	}
 	var others []Claim
 	for _, c := range cs {
-		if c.Says.Subject() == s && c.Source.Stated() && exclude(best.Says, c.Says) {
+		neighbour := c.Source == Sibling && (s == convention.OfUnit || s == convention.OfScalar) && (best.Source == Label || best.Source == Comment)
+		if c.Says.Subject() == s && (c.Source.Stated() || neighbour) && exclude(best.Says, c.Says) {
 			others = append(others, c)
 		}
 	}
