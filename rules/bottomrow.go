@@ -38,7 +38,7 @@ func bottomRow(v *Value) *Finding {
 	case row[0] == 0 && row[1] == 0 && row[2] == 0 && w != 0:
 		f.Message += fmt.Sprintf(": every point is divided by %s", digits(w))
 		f.Remedy = "divide all sixteen numbers by the last one, if it is a projective matrix; else correct it to 1"
-	case w == 0:
+	case row == [4]float64{}:
 		f.Message += ": its translation is lost, and it has no inverse"
 		f.Remedy = "write 1 as the last number, if the rest is right"
 	default:

@@ -39,6 +39,9 @@ func limitOf(text string) (float64, bool) {
 // from 0 or about 0. A text with two ranges, or one that speaks of one or two angles by
 // name, gives no range to all three; and a half turn, -90 to 90, is that of one of them.
 func rangeIn(text string, words []string) convention.Range {
+	if !strings.Contains(text, "0") && !strings.ContainsAny(text, "iIπ") {
+		return convention.Range{} // no limit is written without one of these
+	}
 	if named := rolesAmong(words); named != 0 && named != 3 {
 		return convention.Range{}
 	}
