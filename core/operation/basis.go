@@ -258,7 +258,7 @@ func (f *Function) weighted(r Reading, names [][]string, at []int) []factorFunc 
 		return func(in []float64) float64 {
 			p, q, f := quat(in[at[ends[0]]:]), quat(in[at[ends[1]]:]), in[at[t]]
 			dot, sign := p.Dot(q), 1.0
-			if r.Way == Shorter && dot < 0 {
+			if r.Way == Shorter && dot < 0 || r.Way == Longer && dot >= 0 {
 				dot, sign = -dot, -1
 			}
 			a, b, n := 1-f, f*sign, 1.0

@@ -20,18 +20,23 @@ func init() {
 func interpolate(a, b, t int) []hypothesis {
 	var all []hypothesis
 	for _, swapped := range [2]bool{false, true} {
-		for _, way := range []Way{Shorter, AsGiven} {
+		for _, way := range []Way{Shorter, AsGiven, Longer} {
 			ends := func(in []float64) (p, q rotor.Rotor, f float64) {
 				p, q, f = quat(in[a:]), quat(in[b:]), in[t]
 				if swapped {
 					p, q = q, p
 				}
-				if way == Shorter && p.Dot(q) < 0 {
+				if dot := p.Dot(q); way == Shorter && dot < 0 || way == Longer && dot >= 0 {
 					q = q.Neg()
 				}
 				return p, q, f
 			}
-			fraction := func(in []float64) bool { return in[t] >= 0 && in[t] <= 1 }
+			// From p the longer way to p is a full turn in no particular plane;
+			// within 1e-3 of it, rounding decides the plane to 1e-13 only.
+			fraction := func(in []float64) bool {
+				p, q, f := ends(in)
+				return f >= 0 && f <= 1 && (way != Longer || p.Dot(q) > -(1-0.5e-6)*p.Norm()*q.Norm())
+			}
 			add := func(op Op, sign bool, slack func([]float64) float64, of func(p, q rotor.Rotor, f float64) rotor.Rotor) {
 				all = append(all, hypothesis{reading: Reading{Op: op, Way: way, Swapped: swapped}, sign: sign, slack: slack, valid: fraction, eval: func(in, out []float64) {
 					p, q, f := ends(in)
@@ -41,7 +46,7 @@ func interpolate(a, b, t int) []hypothesis {
 			// Between ends that are an angle d apart the linear path leaves
 			// the spherical one by less than d^3/16: common practice is to
 			// use it for small d.
-			add(Slerp, way == Shorter, func(in []float64) float64 {
+			add(Slerp, way != AsGiven, func(in []float64) float64 {
 				p, q, _ := ends(in)
 				d := math.Acos(math.Max(-1, math.Min(1, p.Dot(q)/(p.Norm()*q.Norm()))))
 				if d < 0.1 {
@@ -49,7 +54,7 @@ func interpolate(a, b, t int) []hypothesis {
 				}
 				return 0
 			}, slerp)
-			add(Nlerp, way == Shorter, nil, func(p, q rotor.Rotor, f float64) rotor.Rotor {
+			add(Nlerp, way != AsGiven, nil, func(p, q rotor.Rotor, f float64) rotor.Rotor {
 				r := p.Scale(1 - f).Add(q.Scale(f))
 				return r.Scale(1 / r.Norm())
 			})
@@ -59,6 +64,7 @@ func interpolate(a, b, t int) []hypothesis {
 	return all
 }
 
+// slerp takes p and q with the signs they have.
 func slerp(p, q rotor.Rotor, f float64) rotor.Rotor {
 	d := math.Acos(math.Max(-1, math.Min(1, p.Dot(q)/(p.Norm()*q.Norm()))))
 	if s := math.Sin(d); s > 1e-9 {

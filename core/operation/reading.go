@@ -97,9 +97,12 @@ const (
 	NoWay   Way = iota
 	Shorter     // negates one of two whose scalar product is negative
 	AsGiven     // may take the long way round
+	Longer      // negates one of two whose scalar product is positive
 )
 
-func (w Way) String() string { return [...]string{"", "the shorter way", "the way as given"}[w] }
+func (w Way) String() string {
+	return [...]string{"", "the shorter way", "the way as given", "the longer way"}[w]
+}
 
 // Reading is one operation with its conventions. Fields that say nothing of the
 // operation are zero.

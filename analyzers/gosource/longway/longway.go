@@ -80,7 +80,11 @@ func rotations(r *measure.Result, f *measure.Function) bool {
 }
 
 func judge(f *measure.Function, c *measure.Case) *rules.Finding {
-	if !c.Identity.Known() || slices.ContainsFunc(c.Identity.Readings, func(r operation.Reading) bool { return r.Way != operation.AsGiven }) {
+	if !c.Identity.Known() {
+		return nil
+	}
+	way := c.Identity.Readings[0].Way
+	if way != operation.AsGiven && way != operation.Longer || slices.ContainsFunc(c.Identity.Readings, func(r operation.Reading) bool { return r.Way != way }) {
 		return nil
 	}
 	switch op := c.Identity.Op(); op {
@@ -108,15 +112,27 @@ func interpolation(f *measure.Function, c *measure.Case, op operation.Op) *rules
 		}
 		turns[i] = rotor.Angle(start, r)
 	}
+	evidence := []rules.Evidence{
+		{What: "turn at half way, signs alike", Stated: rules.Degrees(small / 2), Computed: rules.Degrees(turns[0]), Residual: rules.Degrees(turns[0] - small/2)},
+		{What: "turn at half way, the second negated", Stated: rules.Degrees(small / 2), Computed: rules.Degrees(turns[1]), Residual: rules.Degrees(turns[1] - small/2)},
+	}
+	if way := c.Identity.Readings[0].Way; way == operation.Longer {
+		if min(turns[0], turns[1]) < small {
+			return nil
+		}
+		out := finding(f, c, "%s computes the %s by %s always: half way between two orientations %.3g deg apart it has turned by %.4g deg instead of %.4g deg",
+			f.Label(c), op, way, deg(small), deg(turns[0]), deg(small/2))
+		out.Evidence = evidence
+		out.Remedy = "reverse the comparison of the scalar product with zero, or say in the comment that the longer way is taken"
+		return out
+	}
 	if math.Abs(turns[1]-turns[0]) < small {
 		return nil // whatever it does, it does not show here
 	}
+	evidence[0].Residual = rules.Quantity{}
 	out := finding(f, c, "%s computes the %s of quaternions as they come: half way between two orientations %.3g deg apart it has turned by %.4g deg if their signs differ, instead of %.4g deg",
 		f.Label(c), op, deg(small), deg(turns[1]), deg(turns[0]))
-	out.Evidence = []rules.Evidence{
-		{What: "turn at half way, signs alike", Stated: rules.Degrees(small / 2), Computed: rules.Degrees(turns[0])},
-		{What: "turn at half way, the second negated", Stated: rules.Degrees(small / 2), Computed: rules.Degrees(turns[1]), Residual: rules.Degrees(turns[1] - small/2)},
-	}
+	out.Evidence = evidence
 	out.Remedy = "negate one of the two where their scalar product is negative, or say in the comment that the longer way may be taken"
 	return out
 }

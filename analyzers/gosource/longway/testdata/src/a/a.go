@@ -60,6 +60,22 @@ func Blend(a, b Quat, t float64) Quat { // want `long-way-round: Blend computes 
 	return norm(mix(a, b, 1-t, t))
 }
 
+// Inverted compares the wrong way round.
+func Inverted(a, b Quat, t float64) Quat { // want `long-way-round: Inverted computes the normalised linear interpolation by the longer way always`
+	if a.dot(b) >= 0 {
+		b = Quat{-b.X, -b.Y, -b.Z, -b.W}
+	}
+	return norm(mix(a, b, 1-t, t))
+}
+
+// NlerpLong takes the other way round.
+func NlerpLong(a, b Quat, t float64) Quat {
+	if a.dot(b) >= 0 {
+		b = Quat{-b.X, -b.Y, -b.Z, -b.W}
+	}
+	return norm(mix(a, b, 1-t, t))
+}
+
 // Angle between two orientations.
 func Angle(a, b Quat) float64 { // want `long-way-round: Angle computes the angle between quaternions as they come`
 	return 2 * math.Acos(math.Min(1, math.Max(-1, a.dot(b))))
