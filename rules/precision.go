@@ -82,7 +82,7 @@ func (v *Value) rotationNumbers() []Number {
 	if v.Form != convention.Transform {
 		return v.Numbers
 	}
-	var part []Number
+	part := make([]Number, 0, 9)
 	for i := range 3 {
 		for j := range 3 {
 			if at := v.entry(i, j); at < len(v.Numbers) {

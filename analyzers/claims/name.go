@@ -2,6 +2,8 @@ package claims
 
 import (
 	"strings"
+	"sync"
+	"sync/atomic"
 
 	"dextral/core/angle"
 	"dextral/core/convention"
@@ -29,8 +31,28 @@ type Name struct {
 	sym   byte // R, T or q: the customary letter; 0 if there is none
 }
 
-// Read takes a name apart.
+// known are names that have been read: a tree uses few of them, in many files. Past
+// mostKnown each further name is read anew.
+var (
+	known    sync.Map // string -> *Name
+	numKnown atomic.Int64
+)
+
+const mostKnown = 1 << 14
+
+// Read takes a name apart. The result is shared; it must not be changed.
 func Read(name string) *Name {
+	if n, ok := known.Load(name); ok {
+		return n.(*Name)
+	}
+	n := read(name)
+	if numKnown.Add(1) <= mostKnown {
+		known.Store(strings.Clone(name), n)
+	}
+	return n
+}
+
+func read(name string) *Name {
 	n := &Name{Text: name, words: split(name)}
 	for _, w := range n.words {
 		n.tags |= lexicon[w.text]
@@ -57,9 +79,9 @@ func ReadIn(outer, name string) *Name {
 			return n
 		}
 	}
-	both := Read(outer + "." + name)
+	both := *Read(outer + "." + name)
 	both.Stem = n.Stem
-	return both
+	return &both
 }
 
 // readSymbol finds a customary letter: R, T or q at the head, or with a frame on

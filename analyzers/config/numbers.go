@@ -72,7 +72,7 @@ func (w *walker) warnCommas(s *spot) {
 // rows reads a list of rows of numbers: 3x3, 3x4, 4x4, or one row or column of
 // three or four.
 func (w *walker) rows(s *spot) bool {
-	var numbers []rules.Number
+	numbers := make([]rules.Number, 0, 16)
 	cols := 0
 	if len(s.node.Items) == 0 || len(s.node.Items) > 4 {
 		return false

@@ -1,6 +1,7 @@
 package config
 
 import (
+	"slices"
 	"strings"
 
 	"dextral/analyzers/claims"
@@ -26,11 +27,11 @@ func (r remark) claim(says convention.Term, from rules.Source) rules.Claim {
 // configuration that is switched off ends them.
 func (w *walker) remarks(s *spot) []remark {
 	var found []remark
-	seen := map[source.Span]bool{}
+	var seen []source.Span
 	for _, span := range s.lines() {
 		for _, c := range w.doc.OnLines(span) {
-			if !seen[c.Span] && !claims.IsCode(c.Text) {
-				seen[c.Span] = true
+			if !slices.Contains(seen, c.Span) && !claims.IsCode(c.Text) {
+				seen = append(seen, c.Span)
 				found = append(found, remark{w.comment(c.Span, c.Text), w.doc.File.Place(c.Span), true})
 			}
 		}

@@ -52,14 +52,15 @@ func isSeparator(c byte) bool { return strings.IndexByte(" \t\n\r,;[]()", c) >= 
 
 // Words splits a scalar at white space, commas, semicolons and brackets. It returns nil
 // for what is no scalar or stands nowhere verbatim.
-func (d *Document) Words(n *Node) []Word {
+func (d *Document) Words(n *Node) []Word { return d.appendWords(nil, n) }
+
+func (d *Document) appendWords(words []Word, n *Node) []Word {
 	if n == nil || n.Kind != Scalar || n.Raw.Empty() {
-		return nil
+		return words
 	}
 	if n.Expression {
-		return []Word{{d.File.Slice(n.Raw), n.Raw, true}}
+		return append(words, Word{d.File.Slice(n.Raw), n.Raw, true})
 	}
-	var words []Word
 	text := d.File.Text
 	for at := n.Raw.From; at < n.Raw.To; {
 		if isSeparator(text[at]) {
@@ -121,13 +122,13 @@ func (d *Document) Numbers(n *Node, limit int) []rules.Number {
 	if len(scalars) > limit {
 		return nil
 	}
-	var words []Word
+	words := make([]Word, 0, max(len(scalars), 4))
 	for _, s := range scalars {
-		w := d.Words(s)
-		if len(w) == 0 || len(words)+len(w) > limit {
+		before := len(words)
+		words = d.appendWords(words, s)
+		if len(words) == before || len(words) > limit {
 			return nil
 		}
-		words = append(words, w...)
 	}
 	// Only now places are worked out: most lists of a file are no numbers.
 	numbers := make([]rules.Number, len(words))

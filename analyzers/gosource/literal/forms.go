@@ -44,9 +44,9 @@ func (w *walker) nameOf(text string) *claims.Name {
 		if exportedQ.MatchString(text) {
 			read = "q" + text[1:]
 		}
-		n := claims.Read(read)
+		n := *claims.Read(read)
 		n.Text = text
-		w.names[text] = n
+		w.names[text] = &n
 	}
 	return w.names[text]
 }
