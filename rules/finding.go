@@ -74,6 +74,7 @@ type Finding struct {
 	Edit     *Edit  // not nil: what to write instead
 	Command  string // reproduces the computation; "" if there is none
 	Related  []Related
+	Turn     *Turn   // not nil: the two orientations held against each other
 	Waiver   *Waiver // not nil: accepted
 	Lapsed   *Waiver // not nil: was accepted until a day that has passed
 }

@@ -113,6 +113,9 @@ func (c *Chain) openLoop(l Loop) *Finding {
 			f.Remedy = "the inverse of (R, t) is (R~, -R~ t): invert the translation with the rotation"
 		}
 	}
+	if r.Angle > r.Open {
+		f.Turn = turnAround(l.Closure.R, r.Angle)
+	}
 	f.Evidence = []Evidence{
 		{What: "rotation around the loop", Stated: Degrees(0), Computed: Degrees(r.Angle), Residual: Degrees(r.Angle)},
 		{What: "what the digits leave open", Computed: Degrees(r.Open)},

@@ -183,6 +183,7 @@ func twinFinding(rule string, first, second, odd *Value, r identify.Result, mess
 	f.Claim = fmt.Sprintf("one orientation with %s", other.Key)
 	f.Related = []Related{{other.Place, fmt.Sprintf("%s: %s", other.name(), other.Reading())}}
 	f.Evidence = []Evidence{{What: "as stated", Stated: Words(odd.Reading()), Residual: Degrees(r.Stated.Residual)}}
+	f.Turn = turnBetween(odd, other, r.Stated.Residual)
 	rows := 1
 	for _, c := range r.Classes {
 		if len(r.Stated.Readings) > 0 && c.String() == r.Stated.String() {

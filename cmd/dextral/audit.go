@@ -1,6 +1,7 @@
 package main
 
 import (
+	"context"
 	"fmt"
 	"io"
 	"strings"
@@ -34,6 +35,7 @@ be audited could not be.`,
   dextral audit --gate warning calib/ logs/
   dextral audit --format sarif > dextral.sarif
   dextral audit --format markdown > audit.md
+  dextral audit --format html > audit.html
   dextral audit --diff
   dextral audit --waive-all-new backlog.toml --owner "M. Okafor"`,
 		RunE: func(c *cobra.Command, paths []string) error {
@@ -72,7 +74,7 @@ be audited could not be.`,
 			case diff:
 				return showEdits(s, r)
 			}
-			if err := write(s.out, &r.Report); err != nil {
+			if err := write(c.Context(), s.out, r, paths); err != nil {
 				return fmt.Errorf("the report could not be written: %w", err)
 			}
 			if format != "text" {
@@ -122,18 +124,27 @@ func acceptAll(c *cobra.Command, b waive.Backlog) (*waive.Written, error) {
 }
 
 // formatNames lists the formats of audit.
-var formatNames = []string{"text", "json", "junit", "markdown", "sarif"}
+var formatNames = []string{"text", "html", "json", "junit", "markdown", "sarif"}
 
-var formats = map[string]func(io.Writer, *report.Report) error{
-	"text": func(w io.Writer, r *report.Report) error { return report.Text(w, r, layout(w)) },
-	"json": func(w io.Writer, r *report.Report) error { return report.JSON(w, r, version()) },
-	"junit": func(w io.Writer, r *report.Report) error {
+// formatWriter writes the audit of some paths.
+type formatWriter func(context.Context, io.Writer, *audit.Result, []string) error
+
+var formats = map[string]formatWriter{
+	"text": plain(func(w io.Writer, r *report.Report) error { return report.Text(w, r, layout(w)) }),
+	"html": writeHTML,
+	"json": plain(func(w io.Writer, r *report.Report) error { return report.JSON(w, r, version()) }),
+	"junit": plain(func(w io.Writer, r *report.Report) error {
 		return report.JUnit(w, r, report.RuleInfos(rules.Catalogue()))
-	},
-	"markdown": report.Markdown,
-	"sarif": func(w io.Writer, r *report.Report) error {
+	}),
+	"sarif": plain(func(w io.Writer, r *report.Report) error {
 		return report.SARIF(w, r, version(), report.RuleInfos(rules.Catalogue()))
-	},
+	}),
+	"markdown": plain(report.Markdown),
+}
+
+// plain is a format that needs the report alone.
+func plain(write func(io.Writer, *report.Report) error) formatWriter {
+	return func(_ context.Context, w io.Writer, r *audit.Result, _ []string) error { return write(w, &r.Report) }
 }
 
 // outcome is the exit status of an audit. What could not be audited outweighs
